@@ -1,0 +1,2 @@
+//! Crestline.
+fn main() {}

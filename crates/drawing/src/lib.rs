@@ -1,0 +1,1 @@
+//! (front page to come)

@@ -1,0 +1,158 @@
+//! What each command does.
+
+use std::ffi::OsString;
+use std::path::{Path, PathBuf};
+
+use clap::Parser;
+use clap::error::ErrorKind;
+use crestline_plan::{Checked, EXAMPLES, Solution};
+
+use crate::arguments::{Arguments, Command, Compare, Example, Solve, is_standard};
+use crate::failure::{STATUS_DONE, STATUS_REFUSED};
+use crate::{Failure, Streams, files, fret_errors, print, solve_table, styles};
+
+/// What the arguments ask for.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub enum Outcome {
+    /// A window, on this plan file or on the example that the window opens with.
+    Window(Option<PathBuf>),
+    /// Nothing more: the command is done, with this exit status.
+    Finished(u8),
+}
+
+/// Reads the arguments, of which the first is the program's name, and does the command among them.
+///
+/// Nothing is printed but through `streams`, and nothing fails but by the exit status.
+pub fn run<I>(arguments: I, streams: &mut Streams<'_>) -> Outcome
+where
+    I: IntoIterator,
+    I::Item: Into<OsString> + Clone,
+{
+    let arguments = match Arguments::try_parse_from(arguments) {
+        Ok(arguments) => arguments,
+        Err(error) => return Outcome::Finished(explained(&error, streams)),
+    };
+    let done = match arguments.command {
+        Some(command) => dispatched(&command, streams),
+        None => match window_plan(arguments.plan) {
+            Ok(plan) => return Outcome::Window(plan),
+            Err(failure) => Err(failure),
+        },
+    };
+    Outcome::Finished(done.map_or_else(|failure| reported(&failure, streams), |()| STATUS_DONE))
+}
+
+/// Prints what the argument reader says: help and version are results, the rest is refused.
+fn explained(error: &clap::Error, streams: &mut Streams<'_>) -> u8 {
+    let text = error.render().to_string();
+    if matches!(error.kind(), ErrorKind::DisplayHelp | ErrorKind::DisplayVersion) {
+        let printed = print::result(streams, text.as_bytes());
+        return printed.map_or_else(|failure| reported(&failure, streams), |()| STATUS_DONE);
+    }
+    print::message(streams.messages, text.trim_end());
+    STATUS_REFUSED
+}
+
+/// Says what went wrong and gives the exit status; a reader that has gone needs no words.
+fn reported(failure: &Failure, streams: &mut Streams<'_>) -> u8 {
+    if !matches!(failure, Failure::ReaderGone) {
+        print::message(streams.messages, &format!("crestline: {failure}"));
+    }
+    failure.status()
+}
+
+/// The plan for the window, which cannot save to a stream and so does not open one.
+fn window_plan(plan: Option<PathBuf>) -> Result<Option<PathBuf>, Failure> {
+    match plan {
+        Some(path) if is_standard(&path) => Err(Failure::Argument(
+            "the window opens a plan file; a command such as `solve -` reads standard input".into(),
+        )),
+        plan => Ok(plan),
+    }
+}
+
+fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    match command {
+        Command::Solve(options) => solve(options, streams),
+        Command::Check(options) => check(&options.plan, streams),
+        Command::Example(options) => example(options, streams),
+        Command::Compare(options) => compare(options, streams),
+    }
+}
+
+fn solve(options: &Solve, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let (checked, solution) = solved(&options.plan.plan, streams)?;
+    if options.json {
+        print::notices(streams, &solution.report.notices);
+        return print::json(streams, &solution.report);
+    }
+    let mut text = solve_table::text(checked.plan(), &solution);
+    if options.frets {
+        text.push_str(&fret_errors::text(&solution.report));
+    }
+    print::result(streams, text.as_bytes())
+}
+
+/// A plan passes where it can be solved, for some faults show only in the computation.
+fn check(path: &Path, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let (_, solution) = solved(path, streams)?;
+    print::notices(streams, &solution.report.notices);
+    print::result(streams, format!("{}: no fault\n", crate::text::safe(&shown_name(path))).as_bytes())
+}
+
+fn example(options: &Example, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let Some(name) = &options.name else {
+        return print::result(streams, example_list().as_bytes());
+    };
+    let found = EXAMPLES.iter().find(|example| example.name == name);
+    let example = found.ok_or_else(|| {
+        let name = crate::text::safe(name);
+        Failure::Argument(format!(
+            "there is no example {name}; the examples are\n{}",
+            example_list().trim_end()
+        ))
+    })?;
+    print::result_to(streams, &options.output, example.text.as_bytes())
+}
+
+fn example_list() -> String {
+    let longest = EXAMPLES.iter().map(|example| example.name.len()).max().unwrap_or(0);
+    EXAMPLES.iter().map(|example| format!("{:longest$}  {}\n", example.name, example.summary)).collect()
+}
+
+fn compare(options: &Compare, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let path = &options.plan.plan;
+    let checked = checked(path, streams)?;
+    let comparison = crestline_plan::compare(&checked).map_err(|faults| refused(path, faults))?;
+    if options.json {
+        return print::json(streams, &comparison);
+    }
+    print::result(streams, styles::text(checked.plan(), &comparison).as_bytes())
+}
+
+/// Reads, checks and solves a plan.
+fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked, Solution), Failure> {
+    let checked = checked(path, streams)?;
+    let solution = crestline_plan::solve(&checked).map_err(|faults| refused(path, faults))?;
+    Ok((checked, solution))
+}
+
+/// Reads and checks a plan.
+fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
+    let text = if is_standard(path) {
+        files::plan_text(&shown_name(path), streams.input)
+    } else {
+        files::read_plan_text(path)
+    };
+    let plan = crestline_plan::read(&text?).map_err(|faults| refused(path, faults))?;
+    crestline_plan::check(&plan).map_err(|faults| refused(path, faults))
+}
+
+fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
+    Failure::Faults { name: shown_name(path), faults }
+}
+
+/// The plan's name in messages.
+fn shown_name(path: &Path) -> String {
+    if is_standard(path) { "standard input".to_owned() } else { path.display().to_string() }
+}

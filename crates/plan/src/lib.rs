@@ -1,55 +1,46 @@
 //! The plan: what a maker enters, what is wrong with it, and what comes of it.
 //!
-//! [`read`] turns a file's text into a [`Plan`]; [`check`] turns a plan into a [`Checked`] one or lists
-//! every fault; [`solve`] turns a checked plan into a [`Solution`]. Nothing here reads a file or a clock.
+//! [`read`] turns a file's text into a [`Plan`], or lists every fault of it; [`write`] turns a plan into a file's
+//! text; [`check`] turns a plan, which may be wrong while someone edits it, into a [`Checked`] one or lists every
+//! fault; [`solve`] turns a checked plan into a [`Solution`]. Nothing here reads a file or a clock, or draws.
+//!
+//! Lengths are millimetres, moduli gigapascals, densities kg/m³, frequencies hertz, unless a name says otherwise.
+//!
+//! ```
+//! use crestline_plan::{check, example, read, write};
+//!
+//! let example = example("steel_six").ok_or("no such example")?;
+//! let mut plan = read(example.text).map_err(|faults| faults[0].to_string())?;
+//! plan.strings[0].core.diameter_mm = 0.27;
+//! assert!(check(&plan).is_ok());
+//! plan.instrument.frets = 8;
+//! let faults = check(&plan).err().ok_or("eight frets are too few")?;
+//! assert_eq!(faults[0].to_string(), "instrument.frets: found 8; allowed: 12 to 36");
+//! assert!(write(&plan).contains("\"frets\": 8"));
+//! # Ok::<(), String>(())
+//! ```
 
+mod check;
+pub mod defaults;
 mod document;
+mod examples;
 mod fault;
+pub mod limits;
+mod pitch;
+mod read;
 mod solution;
+mod words;
+mod write;
 
+pub use check::{Checked, check};
 pub use document::*;
+pub use examples::{EXAMPLES, Example, example};
 pub use fault::Fault;
+pub use pitch::{nearest_note, note_frequency_hz};
+pub use read::{read, read_draft};
 pub use solution::*;
-
-use crestline_physics as _;
-
-/// Reads a plan from its text.
-///
-/// # Errors
-/// All faults of the text: unknown and missing keys, wrong types, and values out of range.
-pub fn read(text: &str) -> Result<Plan, Vec<Fault>> {
-    let _ = text;
-    Err(vec![])
-}
-
-/// The plan as the text of a file, indented, with a line end at its end.
-#[must_use]
-pub fn write(plan: &Plan) -> String {
-    let _ = plan;
-    String::new()
-}
-
-/// A plan that is known to be legal; made by [`check`] only.
-#[derive(Debug, Clone, PartialEq)]
-pub struct Checked {
-    plan: Plan,
-}
-
-impl Checked {
-    /// The plan.
-    #[must_use]
-    pub fn plan(&self) -> &Plan {
-        &self.plan
-    }
-}
-
-/// Checks every value of a plan.
-///
-/// # Errors
-/// All faults, each with its path and the allowed range.
-pub fn check(plan: &Plan) -> Result<Checked, Vec<Fault>> {
-    Ok(Checked { plan: plan.clone() })
-}
+pub use words::Word;
+pub use write::write;
 
 /// Solves a checked plan.
 ///
@@ -68,17 +59,3 @@ pub fn compare(checked: &Checked) -> Result<Comparison, Vec<Fault>> {
     let _ = checked;
     Err(vec![])
 }
-
-/// An example plan that the program carries.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub struct Example {
-    /// The name used on the command line.
-    pub name: &'static str,
-    /// One line on what it is.
-    pub summary: &'static str,
-    /// The plan file's text.
-    pub text: &'static str,
-}
-
-/// The example plans, the one the window opens on first.
-pub const EXAMPLES: &[Example] = &[];

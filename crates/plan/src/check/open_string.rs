@@ -1,0 +1,97 @@
+//! The open string over the crowns: a plan in which it lies on a fret cannot sound.
+
+use crestline_physics::neck::Neck;
+
+use super::checker::Checker;
+use crate::{Plan, PlanString, limits};
+
+/// Checks that every open string clears every fret, and that its nut slot lies above the fingerboard.
+pub(super) fn clearances(checker: &mut Checker, plan: &Plan, neck: &Neck) {
+    for (index, string) in plan.strings.iter().enumerate() {
+        let path = format!("strings[{index}].action_mm");
+        let needed = [&path, "instrument.relief_mm", "instrument.zero_fret", "instrument.fret_height_mm"];
+        let fret_mm = neck.strings.get(index).map(|string| &string.fret_mm);
+        if let Some(fret_mm) = fret_mm
+            && checker.sound(&needed)
+        {
+            clearance(checker, &path, plan, string, fret_mm);
+        }
+    }
+}
+
+fn clearance(checker: &mut Checker, path: &str, plan: &Plan, string: &PlanString, fret_mm: &[f64]) {
+    let crowns = crown_heights_mm(fret_mm, plan.instrument.relief_mm);
+    let Some(line) = OpenLine::new(string, fret_mm, &crowns) else { return };
+    let lowest = std::iter::zip(fret_mm, &crowns)
+        .map(|(&s_mm, &z_mm)| line.height_mm(s_mm) - z_mm)
+        .enumerate()
+        .min_by(|one, other| one.1.total_cmp(&other.1));
+    if let Some((index, gap_mm)) = lowest
+        && gap_mm <= 0.0
+    {
+        let fret = index + 1;
+        let found = if gap_mm == 0.0 {
+            format!("an open string that lies on fret {fret}")
+        } else {
+            format!("an open string that lies on fret {fret}, {:.2} mm below its crown", -gap_mm)
+        };
+        return checker.fault(path, found, "an open string above the crown of every fret");
+    }
+    let nut_mm = line.height_mm(0.0);
+    if nut_mm < -plan.instrument.fret_height_mm {
+        let found =
+            format!("an open string that would leave the nut {:.2} mm below the fret crowns", -nut_mm);
+        let allowed = format!(
+            "a nut slot above the fingerboard, at most the fret height of {} mm below the crowns: more action over \
+             fret 1 or less over fret 12",
+            plan.instrument.fret_height_mm
+        );
+        checker.fault(path, found, allowed);
+    }
+}
+
+/// The underside of the open string.
+struct OpenLine {
+    s_mm: f64,
+    z_mm: f64,
+    slope: f64,
+}
+
+impl OpenLine {
+    /// Through the gaps over fret 1, or the zero fret, and fret 12.
+    fn new(string: &PlanString, fret_mm: &[f64], crowns: &[f64]) -> Option<Self> {
+        let (s_12, z_12) = (fret_mm.get(11)?, crowns.get(11)? + string.action_mm.twelfth);
+        let (s_mm, z_mm) = match string.action_mm.first {
+            Some(gap_mm) => (*fret_mm.first()?, crowns.first()? + gap_mm),
+            None => (0.0, 0.0),
+        };
+        Some(Self { s_mm, z_mm, slope: (z_12 - z_mm) / (s_12 - s_mm) })
+    }
+
+    fn height_mm(&self, s_mm: f64) -> f64 {
+        self.z_mm + self.slope * (s_mm - self.s_mm)
+    }
+}
+
+/// Heights of the crowns: z_n = −4·r·u·(1 − u) with u = (S_n − S_1)/(S_N − S_1).
+fn crown_heights_mm(fret_mm: &[f64], relief_mm: f64) -> Vec<f64> {
+    let (Some(&first), Some(&last)) = (fret_mm.first(), fret_mm.last()) else { return vec![] };
+    let height = |s_mm: &f64| {
+        let u = (s_mm - first) / (last - first);
+        -4.0 * relief_mm * u * (1.0 - u)
+    };
+    fret_mm.iter().map(height).collect()
+}
+
+impl Plan {
+    /// Distance of the finger from the nominal nut line when it presses fret 1 of a string whose fret 1 lies at
+    /// `first_fret_mm`, mm.
+    pub(super) fn finger_at_first_mm(&self, first_fret_mm: f64) -> f64 {
+        first_fret_mm * (1.0 - self.pressing.finger_fraction)
+    }
+
+    /// The furthest that a nut edge may stand from the nominal nut line on such a string, mm.
+    pub(super) fn furthest_nut_mm(&self, first_fret_mm: f64) -> f64 {
+        self.finger_at_first_mm(first_fret_mm) - limits::NUT_TO_FINGER_MM
+    }
+}

@@ -76,6 +76,24 @@ impl Dimension {
         Self { label_at: Some(at), ..self }
     }
 
+    /// The same moved by a step.
+    #[must_use]
+    pub fn moved(self, step: Point) -> Self {
+        let measure = match self.measure {
+            Measure::Linear { from, to, direction_deg, line_at } => {
+                let [from, to, line_at] = [from, to, line_at].map(|p| p.plus(step));
+                Measure::Linear { from, to, direction_deg, line_at }
+            }
+            Measure::Aligned { from, to, offset_mm } => {
+                Measure::Aligned { from: from.plus(step), to: to.plus(step), offset_mm }
+            }
+            Measure::Angular { vertex, start_deg, end_deg, radius_mm } => {
+                Measure::Angular { vertex: vertex.plus(step), start_deg, end_deg, radius_mm }
+            }
+        };
+        Self { measure, label_at: self.label_at.map(|p| p.plus(step)), ..self }
+    }
+
     /// What it measures, mm or degrees.
     #[must_use]
     pub fn value(&self) -> f64 {

@@ -22,18 +22,25 @@
 //! ```
 
 mod dimension;
+mod dxf;
+mod dxf_dimension;
+mod dxf_tags;
 mod flatten;
 mod font;
 mod geometry;
 mod model;
 mod number;
+mod pdf;
+mod pdf_font;
 mod svg;
 mod text;
 
 pub use dimension::{Dimension, Measure};
+pub use dxf::dxf;
 pub use flatten::{Mark, POINT_MARK_MM, Primitive};
 pub use font::{FONT, FONT_FAMILY, SUBSTITUTE, font_size_mm};
 pub use geometry::{Point, Rect, pt};
 pub use model::{Colour, Drawing, Item, Layer, LayerId, LineStyle, Pen, Shape, Sheet, Width, lettering};
+pub use pdf::pdf;
 pub use svg::{svg, svg_sheet};
 pub use text::{Anchor, Text, TextRun, clean, fit, width_mm, wrap};

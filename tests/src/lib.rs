@@ -2,7 +2,11 @@
 //!
 //! There is nothing here for other crates to use: the rooms are compiled for `cargo test` only.
 
+#![cfg_attr(test, allow(clippy::unwrap_used, clippy::expect_used, clippy::panic))]
+
 #[cfg(test)]
 mod places;
+#[cfg(test)]
+mod published;
 #[cfg(test)]
 mod tidy;

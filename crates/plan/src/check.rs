@@ -90,3 +90,6 @@ fn look_through(plan: &Plan, checker: &mut Checker) -> Option<(Neck, Vec<f64>)> 
     making::contacts(checker, plan, &neck);
     Some((neck, frequencies_hz?))
 }
+
+#[cfg(test)]
+mod tests;

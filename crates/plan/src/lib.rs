@@ -21,6 +21,7 @@
 //! ```
 
 mod check;
+mod compare;
 pub mod defaults;
 mod document;
 mod examples;
@@ -29,33 +30,18 @@ pub mod limits;
 mod pitch;
 mod read;
 mod solution;
+mod solve;
 mod words;
 mod write;
 
 pub use check::{Checked, check};
+pub use compare::compare;
 pub use document::*;
 pub use examples::{EXAMPLES, Example, example};
 pub use fault::Fault;
 pub use pitch::{nearest_note, note_frequency_hz};
 pub use read::{read, read_draft};
 pub use solution::*;
+pub use solve::solve;
 pub use words::Word;
 pub use write::write;
-
-/// Solves a checked plan.
-///
-/// # Errors
-/// A fault that only the computation can find, such as a pitch that the string's stiffness alone exceeds.
-pub fn solve(checked: &Checked) -> Result<Solution, Vec<Fault>> {
-    let _ = checked;
-    Err(vec![])
-}
-
-/// Works out every pair of saddle and nut style for a checked plan.
-///
-/// # Errors
-/// As [`solve`].
-pub fn compare(checked: &Checked) -> Result<Comparison, Vec<Fault>> {
-    let _ = checked;
-    Err(vec![])
-}

@@ -69,8 +69,10 @@ pub const FAN_SLANT_DEGREES: f64 = 45.0;
 pub const FRETS: Range = Range::new(12.0, 36.0, "");
 /// Measured position of a fret.
 pub const FRET_POSITION_MM: Range = Range::new(1.0, 1500.0, "mm");
-/// Least distance of neighbouring frets, and of the last fret from the nearest crest, mm.
+/// Least distance of neighbouring frets, mm.
 pub const FRET_GAP_MM: f64 = 0.5;
+/// Least distance of a saddle crest from the last fret, mm: the shortest string that may still sound.
+pub const LAST_FRET_TO_CREST_MM: f64 = 5.0;
 /// Relief of the neck.
 pub const RELIEF_MM: Range = Range::new(0.0, 3.0, "mm");
 /// Centre distance of the outer strings.

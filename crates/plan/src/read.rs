@@ -101,3 +101,6 @@ fn format_and_version(format: &Spot, version: &Spot) {
     // A newer version has been refused and an older one brought up to date by now.
     version.exactly(VERSION as f64, &migrate::version_words());
 }
+
+#[cfg(test)]
+mod tests;

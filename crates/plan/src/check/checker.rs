@@ -45,10 +45,17 @@ impl<'u> Checker<'u> {
 
     /// Whether nothing at these paths, under them or around them is at fault.
     pub(super) fn sound(&self, paths: &[&str]) -> bool {
-        let touches =
-            |bad: &str| paths.iter().any(|path| is_at_or_under(bad, path) || is_at_or_under(path, bad));
-        !self.faults.iter().map(|fault| fault.path.as_str()).any(touches)
-            && !self.unread.iter().map(String::as_str).any(touches)
+        !self.bad().any(|bad| paths.iter().any(|path| is_at_or_under(bad, path) || is_at_or_under(path, bad)))
+    }
+
+    /// Whether nothing at a path or around it is at fault, whatever is under it: a list's length, say, is known.
+    pub(super) fn sound_itself(&self, path: &str) -> bool {
+        !self.bad().any(|bad| is_at_or_under(path, bad))
+    }
+
+    fn bad(&self) -> impl Iterator<Item = &str> {
+        let faults = self.faults.iter().map(|fault| fault.path.as_str());
+        faults.chain(self.unread.iter().map(String::as_str))
     }
 }
 

@@ -55,7 +55,7 @@ pub(super) fn targets(checker: &mut Checker, plan: &Plan) {
 }
 
 fn one_a_string(checker: &mut Checker, path: &str, found: usize, strings: usize) {
-    if checker.sound(&["strings"]) && found != strings {
+    if checker.sound_itself("strings") && found != strings {
         let allowed = format!("one value a string, {strings} of them");
         checker.fault(path, format_args!("{found} values"), allowed);
     }
@@ -77,7 +77,7 @@ pub(super) fn saddle(checker: &mut Checker, plan: &Plan) {
 fn split(checker: &mut Checker, plan: &Plan) {
     const PATH: &str = "saddle.split_after";
     let strings = plan.strings.len();
-    if !checker.sound(&["strings", PATH]) {
+    if !checker.sound_itself("strings") || !checker.sound(&[PATH]) {
         return;
     }
     let pieces = plan.saddle.style == SaddleStyle::TwoPiece;
@@ -133,7 +133,10 @@ pub(super) fn contacts(checker: &mut Checker, plan: &Plan, neck: &Neck) {
         nut_before_finger(checker, plan, &room);
     }
     let behind = |most_mm: f64| {
-        format!("at least {} mm, behind the last fret", number_words((most_mm * 100.0).ceil() / 100.0))
+        format!(
+            "at least {} mm, so that the crest stays behind the last fret",
+            number_words((most_mm * 100.0).ceil() / 100.0)
+        )
     };
     let least_mm = room.least_saddle_mm.iter().copied().fold(f64::NEG_INFINITY, f64::max);
     if checker.sound(&["saddle.travel_mm"]) && plan.saddle.travel_mm[0] < least_mm {
@@ -181,7 +184,7 @@ impl Room {
             least_saddle_mm: neck
                 .strings
                 .iter()
-                .map(|string| last(&string.fret_mm) + limits::FRET_GAP_MM - string.line.scale_mm())
+                .map(|string| last(&string.fret_mm) + limits::LAST_FRET_TO_CREST_MM - string.line.scale_mm())
                 .collect(),
             most_nut_mm: neck
                 .strings

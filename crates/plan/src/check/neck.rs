@@ -64,10 +64,10 @@ fn fret_positions(checker: &mut Checker, instrument: &Instrument, positions_mm: 
         }
     }
     if let Some(&last) = positions_mm.last()
-        && last > scale_mm - limits::FRET_GAP_MM
+        && last > scale_mm - limits::LAST_FRET_TO_CREST_MM
     {
         let path = format!("{PATH}[{}]", positions_mm.len() - 1);
-        let most = scale_mm - limits::FRET_GAP_MM;
+        let most = number_words(scale_mm - limits::LAST_FRET_TO_CREST_MM);
         checker.fault(path, number_words(last), format!("frets before the saddle line, at most {most} mm"));
     }
 }
@@ -105,7 +105,7 @@ fn spacing(checker: &mut Checker, instrument: &Instrument, strings: usize) {
 fn places(checker: &mut Checker, across: &Across, strings: usize) {
     for (end, places_mm) in [("nut", &across.nut), ("saddle", &across.saddle)] {
         let path = format!("instrument.across_mm.{end}");
-        if checker.sound(&["strings"]) && places_mm.len() != strings {
+        if checker.sound_itself("strings") && places_mm.len() != strings {
             let found = format!("{} places", places_mm.len());
             checker.fault(&path, found, format!("one place a string, {strings} of them"));
         }

@@ -22,20 +22,10 @@ pub(super) fn clearances(checker: &mut Checker, plan: &Plan, neck: &Neck) {
 fn clearance(checker: &mut Checker, path: &str, plan: &Plan, string: &PlanString, fret_mm: &[f64]) {
     let crowns = crown_heights_mm(fret_mm, plan.instrument.relief_mm);
     let Some(line) = OpenLine::new(string, fret_mm, &crowns) else { return };
-    let lowest = std::iter::zip(fret_mm, &crowns)
-        .map(|(&s_mm, &z_mm)| line.height_mm(s_mm) - z_mm)
-        .enumerate()
-        .min_by(|one, other| one.1.total_cmp(&other.1));
-    if let Some((index, gap_mm)) = lowest
-        && gap_mm <= 0.0
-    {
-        let fret = index + 1;
-        let found = if gap_mm == 0.0 {
-            format!("an open string that lies on fret {fret}")
-        } else {
-            format!("an open string that lies on fret {fret}, {:.2} mm below its crown", -gap_mm)
-        };
-        return checker.fault(path, found, "an open string above the crown of every fret");
+    let gaps_mm = std::iter::zip(fret_mm, &crowns).map(|(&s_mm, &z_mm)| line.height_mm(s_mm) - z_mm);
+    let touched: Vec<(usize, f64)> = (1..).zip(gaps_mm).filter(|(_, gap_mm)| *gap_mm <= 0.0).collect();
+    if !touched.is_empty() {
+        return checker.fault(path, touched_words(&touched), "an open string above the crown of every fret");
     }
     let nut_mm = line.height_mm(0.0);
     if nut_mm < -plan.instrument.fret_height_mm {
@@ -48,6 +38,22 @@ fn clearance(checker: &mut Checker, path: &str, plan: &Plan, string: &PlanString
         );
         checker.fault(path, found, allowed);
     }
+}
+
+/// What is said of an open string that touches these frets with these gaps, none of them positive.
+fn touched_words(touched: &[(usize, f64)]) -> String {
+    let first = touched.first().map_or(0, |(fret, _)| *fret);
+    let others = match touched.len() {
+        0 | 1 => String::new(),
+        2 => " and one other".to_owned(),
+        more => format!(" and {} others", more - 1),
+    };
+    let deepest = touched.iter().min_by(|one, other| one.1.total_cmp(&other.1));
+    let depth = match deepest {
+        Some((fret, gap_mm)) if *gap_mm < 0.0 => format!(", {:.2} mm too low at fret {fret}", -gap_mm),
+        _ => String::new(),
+    };
+    format!("an open string that lies on fret {first}{others}{depth}")
 }
 
 /// The underside of the open string.

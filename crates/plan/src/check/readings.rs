@@ -15,7 +15,7 @@ pub(super) fn readings(checker: &mut Checker, plan: &Plan) {
 
 fn one(checker: &mut Checker, plan: &Plan, path: &str, reading: &Reading) {
     let strings = plan.strings.len();
-    if checker.sound(&["strings"]) && (reading.string == 0 || reading.string as usize > strings) {
+    if checker.sound_itself("strings") && (reading.string == 0 || reading.string as usize > strings) {
         checker.fault(format_args!("{path}.string"), reading.string, format_args!("1 to {strings}"));
     }
     let fret = format!("{path}.fret");

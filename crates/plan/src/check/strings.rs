@@ -1,6 +1,7 @@
 //! Checks of the key `strings`.
 
 use super::checker::Checker;
+use crate::fault::quoted;
 use crate::limits::{self, number_words, quantity_words};
 use crate::{CoreShape, Pitch, Plan, PlanString, pitch};
 
@@ -32,9 +33,7 @@ fn frequency(checker: &mut Checker, path: &str, pitch: &Pitch, reference_hz: f64
     match pitch {
         Pitch::FrequencyHz(hz) => checker.range(format_args!("{path}.pitch.frequency_hz"), *hz, range),
         Pitch::Note(name) => match pitch::note_frequency_hz(name, reference_hz) {
-            None => {
-                checker.fault(format_args!("{path}.pitch.note"), format_args!("{name:?}"), pitch::NOTE_WORDS)
-            }
+            None => checker.fault(format_args!("{path}.pitch.note"), quoted(name), pitch::NOTE_WORDS),
             Some(hz) if checker.sound(&["reference_hz"]) && !range.contains(hz) => {
                 let found = format!("{name}, which is {hz:.1} Hz");
                 checker.fault(format_args!("{path}.pitch.note"), found, range.words());

@@ -1,5 +1,7 @@
 //! A JSON value as it stands in the text: key order and repeated keys are kept, so that both can be spoken of.
 
+use crate::fault::quoted;
+
 /// A JSON value.
 #[derive(Debug, Clone, PartialEq)]
 pub(super) enum Node {
@@ -34,14 +36,6 @@ pub(super) fn key_path(path: &str, key: &str) -> String {
         !key.is_empty() && key.chars().all(|c| c.is_ascii_alphanumeric() || c == '_') && key.len() <= 60;
     let key = if plain { key.to_owned() } else { quoted(key) };
     if path.is_empty() { key } else { format!("{path}.{key}") }
-}
-
-/// A text in quotes, cut to a length that a message can bear, control characters escaped.
-pub(super) fn quoted(text: &str) -> String {
-    const LONGEST: usize = 60;
-    let short: String = text.chars().take(LONGEST).collect();
-    let more = if short.len() < text.len() { "…" } else { "" };
-    format!("{:?}", format!("{short}{more}"))
 }
 
 impl Node {

@@ -5,7 +5,8 @@
 
 use std::cell::{Cell, RefCell};
 
-use super::node::{Node, key_path, quoted};
+use super::node::{Node, key_path};
+use crate::fault::quoted;
 use crate::limits::{Range, number_words};
 use crate::{Fault, Word};
 
@@ -233,10 +234,12 @@ impl<'n> Spot<'n> {
 
     /// The fields of an object that may have these keys.
     pub(super) fn object(&self, keys: &'static [&'static str]) -> Fields<'n> {
-        let entries = self.pick("an object", None, |node| match node {
-            Node::Object(entries) => Some(Some(&entries[..])),
-            _ => None,
-        });
+        let entries = if let Found::Here(Node::Object(entries)) = self.found {
+            Some(&entries[..])
+        } else {
+            self.wrong(&format!("an object with the keys {}", keys.join(", ")));
+            None
+        };
         let fields = Fields { path: self.path.clone(), entries, log: self.log };
         fields.note_odd_keys(keys);
         fields

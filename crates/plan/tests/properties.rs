@@ -102,7 +102,7 @@ fn strings_rise_in_order(plan: &Plan) {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 300, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(ProptestConfig { cases: 128, failure_persistence: None, ..ProptestConfig::default() })]
 
     #[test]
     fn legal_plans_survive_writing_and_reading(plan in legal_plan()) {

@@ -79,7 +79,8 @@ fn necks_from_a_soprano_ukulele_to_a_long_bass_and_beyond_are_allowed() {
 #[test]
 fn every_single_value_is_held_against_its_range() {
     let nan = f64::NAN;
-    let cases: [(fn(&mut Plan, f64), &str, [f64; 3]); 26] = [
+    type Set = fn(&mut Plan, f64);
+    let cases: [(Set, &str, [f64; 3]); 26] = [
         (|p, v| p.instrument.scale = Scale::Single(v), "instrument.scale_mm", [199.0, 1501.0, nan]),
         (|p, v| p.instrument.relief_mm = v, "instrument.relief_mm", [-0.1, 3.1, nan]),
         (|p, v| p.instrument.fret_height_mm = v, "instrument.fret_height_mm", [0.05, 3.1, nan]),

@@ -178,10 +178,9 @@ fn touch() -> BoxedStrategy<(Pressing, Supports, Slip)> {
         .boxed()
 }
 
-fn rest(
-    strings: usize,
-    frets: u32,
-) -> BoxedStrategy<(Fit, Nut, Option<Targets>, Option<AsBuilt>, Vec<Reading>, Sheet)> {
+type Rest = (Fit, Nut, Option<Targets>, Option<AsBuilt>, Vec<Reading>, Sheet);
+
+fn rest(strings: usize, frets: u32) -> BoxedStrategy<Rest> {
     let fit = (word::<FitRule>(), 1..=frets, 1..=frets)
         .prop_map(|(rule, one, other)| Fit { rule, frets: [one.min(other), one.max(other)] });
     let nut = (word::<NutStyle>(), travel(Range { low: -5.0, high: 2.0, unit: "mm" }))
@@ -218,8 +217,6 @@ pub fn legal_plan() -> BoxedStrategy<Plan> {
     let plan = plan.prop_map(|((title, notes, reference_hz), instrument, touch, strings, saddle, rest)| {
         let (pressing, supports, slip) = touch;
         let (fit, nut, targets, as_built, readings, sheet) = rest;
-        let parts = (instrument, pressing, supports, slip, strings, reference_hz, fit, targets);
-        let (instrument, pressing, supports, slip, strings, reference_hz, fit, targets) = parts;
         Plan {
             title,
             notes,

@@ -1,0 +1,129 @@
+//! Everything that can be done by menu, button or key, in one list.
+
+use std::path::PathBuf;
+
+use eframe::egui::{Key, KeyboardShortcut, Modifiers};
+
+use crate::view::{Group, Page, ThemeChoice};
+
+/// Something to do. Menus, buttons and keys make commands; `shell::obey` carries them out.
+#[derive(Debug, Clone, PartialEq)]
+pub enum Command {
+    /// Start from the example plan of this name.
+    NewFromExample(&'static str),
+    /// Ask for a plan file and open it.
+    Open,
+    /// Open this plan file.
+    OpenFile(PathBuf),
+    /// Save to the plan's file.
+    Save,
+    /// Ask for a file and save to it.
+    SaveAs,
+    /// Ask for a file and write the drawing to it.
+    ExportDrawing,
+    /// Close the window.
+    Quit,
+    /// Take the last step back.
+    Undo,
+    /// Bring the last undone step back.
+    Redo,
+    /// Copy the string (0 first) and put the copy behind it.
+    DuplicateString(usize),
+    /// Remove the string (0 first).
+    RemoveString(usize),
+    /// Exchange the string (0 first) with the one before it.
+    MoveStringUp(usize),
+    /// Exchange the string (0 first) with the one behind it.
+    MoveStringDown(usize),
+    /// Choose the string (0 first) for the detail editor and the plots.
+    ChooseString(usize),
+    /// Show a page.
+    ShowPage(Page),
+    /// Open or fold a group of fields.
+    Fold(Group),
+    /// Go to the field with this path.
+    GoTo(String),
+    /// Light, dark, or as the system has it.
+    Theme(ThemeChoice),
+    /// Larger text.
+    LargerText,
+    /// Smaller text.
+    SmallerText,
+    /// Text at its usual size.
+    UsualText,
+    /// Show the whole layout again.
+    ResetPlots,
+    /// Put the last message away.
+    DismissMessage,
+}
+
+impl Command {
+    /// The words for menus and lists.
+    #[must_use]
+    pub fn name(&self) -> String {
+        match self {
+            Self::NewFromExample(name) => format!("New from example: {name}"),
+            Self::Open => "Open…".into(),
+            Self::OpenFile(path) => format!("Open {}", path.display()),
+            Self::Save => "Save".into(),
+            Self::SaveAs => "Save as…".into(),
+            Self::ExportDrawing => "Export drawing…".into(),
+            Self::Quit => "Quit".into(),
+            Self::Undo => "Undo".into(),
+            Self::Redo => "Redo".into(),
+            Self::DuplicateString(_) => "Add a copy of the string".into(),
+            Self::RemoveString(_) => "Remove the string".into(),
+            Self::MoveStringUp(_) => "Move the string up".into(),
+            Self::MoveStringDown(_) => "Move the string down".into(),
+            Self::ChooseString(index) => format!("Choose string {}", index + 1),
+            Self::ShowPage(page) => page.name().into(),
+            Self::Fold(group) => group.name().into(),
+            Self::GoTo(path) => format!("Go to {path}"),
+            Self::Theme(choice) => choice.name().into(),
+            Self::LargerText => "Larger text".into(),
+            Self::SmallerText => "Smaller text".into(),
+            Self::UsualText => "Usual text size".into(),
+            Self::ResetPlots => "Show the whole layout".into(),
+            Self::DismissMessage => "Put the message away".into(),
+        }
+    }
+
+    /// The key that calls it.
+    #[must_use]
+    pub fn shortcut(&self) -> Option<KeyboardShortcut> {
+        let (modifiers, key) = match self {
+            Self::Open => (Modifiers::COMMAND, Key::O),
+            Self::Save => (Modifiers::COMMAND, Key::S),
+            Self::SaveAs => (Modifiers::COMMAND.plus(Modifiers::SHIFT), Key::S),
+            Self::ExportDrawing => (Modifiers::COMMAND, Key::E),
+            Self::Quit => (Modifiers::COMMAND, Key::Q),
+            Self::Undo => (Modifiers::COMMAND, Key::Z),
+            Self::Redo => (Modifiers::COMMAND.plus(Modifiers::SHIFT), Key::Z),
+            Self::LargerText => (Modifiers::COMMAND, Key::Plus),
+            Self::SmallerText => (Modifiers::COMMAND, Key::Minus),
+            Self::UsualText => (Modifiers::COMMAND, Key::Num0),
+            Self::ResetPlots => (Modifiers::COMMAND, Key::R),
+            _ => return None,
+        };
+        Some(KeyboardShortcut::new(modifiers, key))
+    }
+
+    /// The commands that keys call. The more particular combination stands before the plainer one,
+    /// because a key pressed with more modifiers also matches fewer.
+    #[must_use]
+    pub fn with_keys() -> [Self; 11] {
+        [
+            Self::SaveAs,
+            Self::Redo,
+            Self::Open,
+            Self::Save,
+            Self::ExportDrawing,
+            Self::Quit,
+            Self::Undo,
+            Self::LargerText,
+            Self::SmallerText,
+            Self::UsualText,
+            Self::ResetPlots,
+        ]
+    }
+}

@@ -1,0 +1,114 @@
+//! Adding, removing and moving strings: the lists that run beside `strings` move along with it.
+
+use crestline_plan::{Plan, PlanString, SaddleStyle};
+
+/// The most strings that a plan holds.
+pub const MOST_STRINGS: usize = 16;
+
+/// Puts a copy of string `index` behind it.
+pub fn duplicate(plan: &mut Plan, index: usize) {
+    let Some(string) = plan.strings.get(index).cloned() else { return };
+    insert(plan, index + 1, string);
+}
+
+/// Puts `string` at `index` and makes room in the lists beside it.
+fn insert(plan: &mut Plan, index: usize, string: PlanString) {
+    if plan.strings.len() >= MOST_STRINGS {
+        return;
+    }
+    plan.strings.insert(index, string);
+    for_lists(plan, |list| list.insert(index.min(list.len()), between(list, index)));
+    for reading in &mut plan.readings {
+        if reading.string as usize > index {
+            reading.string += 1;
+        }
+    }
+    renumber(plan);
+}
+
+/// A value for a new entry at `index`: half-way between its neighbours, or one more step past the end.
+fn between(list: &[f64], index: usize) -> f64 {
+    let at = |i: usize| list.get(i).copied();
+    let before = index.checked_sub(1).and_then(at);
+    match (before, at(index)) {
+        (Some(a), Some(b)) => 0.5 * (a + b),
+        (Some(last), None) => index.checked_sub(2).and_then(at).map_or(last, |a| 2.0 * last - a),
+        (None, only) => only.unwrap_or_default(),
+    }
+}
+
+/// Takes string `index` out; the last string stays.
+pub fn remove(plan: &mut Plan, index: usize) {
+    if plan.strings.len() < 2 || index >= plan.strings.len() {
+        return;
+    }
+    plan.strings.remove(index);
+    for_lists(plan, |list| {
+        if index < list.len() {
+            list.remove(index);
+        }
+    });
+    plan.readings.retain(|reading| reading.string as usize != index + 1);
+    for reading in &mut plan.readings {
+        if reading.string as usize > index + 1 {
+            reading.string -= 1;
+        }
+    }
+    renumber(plan);
+}
+
+/// Exchanges the strings `a` and `b`; their places across the neck stay.
+pub fn swap(plan: &mut Plan, a: usize, b: usize) {
+    if a.max(b) >= plan.strings.len() {
+        return;
+    }
+    plan.strings.swap(a, b);
+    for reading in &mut plan.readings {
+        let index = (reading.string as usize).wrapping_sub(1);
+        if index == a {
+            reading.string = number(b);
+        } else if index == b {
+            reading.string = number(a);
+        }
+    }
+    if let Some(targets) = &mut plan.targets {
+        if a.max(b) < targets.open_cents.len() {
+            targets.open_cents.swap(a, b);
+        }
+    }
+    renumber(plan);
+}
+
+/// Names that are mere numbers follow the order; a split stays inside the strings.
+fn renumber(plan: &mut Plan) {
+    for (index, string) in plan.strings.iter_mut().enumerate() {
+        if string.name.parse::<u32>().is_ok() {
+            string.name = (index + 1).to_string();
+        }
+    }
+    let last = number(plan.strings.len().saturating_sub(2)).max(1);
+    match plan.saddle.split_after {
+        Some(after) if after > last => plan.saddle.split_after = Some(last),
+        None if plan.saddle.style == SaddleStyle::TwoPiece => plan.saddle.split_after = Some(last),
+        _ => {}
+    }
+}
+
+fn number(index: usize) -> u32 {
+    u32::try_from(index + 1).unwrap_or(u32::MAX)
+}
+
+/// The lists that hold one value a string.
+fn for_lists(plan: &mut Plan, mut change: impl FnMut(&mut Vec<f64>)) {
+    if let Some(across) = &mut plan.instrument.across_mm {
+        change(&mut across.nut);
+        change(&mut across.saddle);
+    }
+    if let Some(built) = &mut plan.as_built {
+        change(&mut built.saddle_setback_mm);
+        change(&mut built.nut_setback_mm);
+    }
+    if let Some(targets) = &mut plan.targets {
+        change(&mut targets.open_cents);
+    }
+}

@@ -1,0 +1,44 @@
+//! What is being typed in a field, and what is wrong with it.
+
+use std::collections::BTreeMap;
+
+/// The text of a field that cannot be shown from the plan alone.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Draft {
+    /// The text as typed.
+    pub text: String,
+    /// What is wrong with it, where it could not be taken into the plan.
+    pub error: Option<String>,
+}
+
+/// The drafts by path of their field.
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
+pub struct Drafts(BTreeMap<String, Draft>);
+
+impl Drafts {
+    /// The draft of a field.
+    #[must_use]
+    pub fn get(&self, path: &str) -> Option<&Draft> {
+        self.0.get(path)
+    }
+
+    /// Keeps what is typed in a field.
+    pub fn keep(&mut self, path: &str, draft: Draft) {
+        self.0.insert(path.to_owned(), draft);
+    }
+
+    /// Forgets what was typed in a field.
+    pub fn forget(&mut self, path: &str) {
+        self.0.remove(path);
+    }
+
+    /// Forgets everything, because the plan has been changed from elsewhere.
+    pub fn clear(&mut self) {
+        self.0.clear();
+    }
+
+    /// The fields whose text could not be taken into the plan: path and what is wrong.
+    pub fn errors(&self) -> impl Iterator<Item = (&str, &str)> {
+        self.0.iter().filter_map(|(path, draft)| Some((path.as_str(), draft.error.as_deref()?)))
+    }
+}

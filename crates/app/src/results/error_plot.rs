@@ -1,0 +1,214 @@
+//! The error of every fretted note as curves.
+
+use crestline_plan::{FretReport, StringReport};
+use eframe::egui::{Checkbox, Color32, RichText, Ui, Vec2, Vec2b, WidgetInfo, accesskit};
+use egui_plot::{HLine, HoverPosition, Line, LineStyle, Plot, PlotBounds, PlotPoints, PlotUi, Points, Span};
+
+use super::figures;
+use crate::edit::desk::Outcome;
+use crate::theme::{Palette, marker};
+
+/// The least height of the plot's scale, cents to either side.
+const LEAST_CENTS: f64 = 3.0;
+
+/// Which errors are shown.
+#[derive(Debug, Clone, PartialEq)]
+pub struct ErrorChoice {
+    /// With no setback.
+    pub none: bool,
+    /// With the ideal setbacks.
+    pub ideal: bool,
+    /// With the built setbacks.
+    pub built: bool,
+    /// Of the existing instrument.
+    pub as_built: bool,
+    /// The other strings, as built, beside the chosen one.
+    pub others: bool,
+    /// The part of the plot that the user chose to see.
+    pub looking: Option<PlotBounds>,
+}
+
+impl Default for ErrorChoice {
+    fn default() -> Self {
+        Self { none: true, ideal: true, built: true, as_built: true, others: true, looking: None }
+    }
+}
+
+/// A kind of error: its word, its line, and where the report has it.
+struct Kind {
+    word: &'static str,
+    style: LineStyle,
+    of: fn(&FretReport) -> Option<f64>,
+}
+
+const NONE: Kind =
+    Kind { word: "no setback", style: LineStyle::Dotted { spacing: 5.0 }, of: |fret| Some(fret.none_cents) };
+const IDEAL: Kind =
+    Kind { word: "ideal", style: LineStyle::Dashed { length: 9.0 }, of: |fret| Some(fret.ideal_cents) };
+const BUILT: Kind = Kind { word: "as built", style: LineStyle::Solid, of: |fret| Some(fret.built_cents) };
+const AS_IT_IS: Kind =
+    Kind { word: "as it is now", style: LineStyle::Dashed { length: 3.0 }, of: |fret| fret.as_built_cents };
+
+/// The choices above the plot.
+pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize, choice: &mut ErrorChoice) {
+    ui.horizontal_wrapped(|ui| {
+        ui.label(RichText::new(format!("String {}:", chosen + 1)).color(palette.string(chosen)).strong());
+        ui.add(Checkbox::new(&mut choice.none, "no setback ····"));
+        ui.add(Checkbox::new(&mut choice.ideal, "ideal ╌╌"));
+        ui.add(Checkbox::new(&mut choice.built, "as built ──"));
+        if outcome.plan.as_built.is_some() {
+            ui.add(Checkbox::new(&mut choice.as_built, "as it is now ┄┄"));
+        }
+        ui.separator();
+        ui.add(Checkbox::new(&mut choice.others, "other strings as built"));
+    });
+}
+
+/// The plot, as high as given.
+pub fn show(
+    ui: &mut Ui,
+    palette: &'static Palette,
+    outcome: &Outcome,
+    chosen: usize,
+    choice: &mut ErrorChoice,
+    height: f32,
+) {
+    let strings = &outcome.solution.report.strings;
+    let curves = curves(strings, chosen, choice);
+    let whole = whole(outcome, &curves);
+    let bounds = choice.looking.unwrap_or(whole);
+    let plot = fret_plot("errors of the fretted notes").height(height).y_axis_label("cents");
+    let shown = plot.show(ui, |plot| {
+        plot.set_plot_bounds(bounds);
+        frame(plot, palette, outcome.plan.fit.frets, &bounds);
+        for curve in &curves {
+            draw(plot, palette, curve);
+        }
+    });
+    let response = shown.response;
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(strings, chosen)));
+    let zoomed = response.contains_pointer() && ui.input(|i| i.zoom_delta() != 1.0);
+    if response.dragged() || zoomed {
+        choice.looking = Some(*shown.transform.bounds());
+    }
+    if response.double_clicked() {
+        choice.looking = None;
+    }
+}
+
+/// A plot over the frets.
+pub fn fret_plot<'a>(name: &'static str) -> Plot<'a> {
+    Plot::new(name)
+        .allow_scroll(false)
+        .allow_boxed_zoom(false)
+        .allow_double_click_reset(false)
+        .allow_axis_zoom_drag(false)
+        .show_crosshair(false)
+        .show_grid(Vec2b::new(false, true))
+        .x_grid_spacer(every_fret)
+        .min_size(Vec2::new(120.0, 80.0))
+        .y_axis_formatter(|mark, _| figures::fixed(mark.value, usize::from(mark.step_size < 1.0)))
+        .label_formatter(|hover| match hover {
+            HoverPosition::NearDataPoint { plot_name, position, .. } if !plot_name.is_empty() => {
+                Some(format!("{plot_name}, fret {:.0}: {} cents", position.x, figures::cents(position.y)))
+            }
+            _ => None,
+        })
+}
+
+/// A mark at every fret, or at every third where they would crowd.
+fn every_fret(input: egui_plot::GridInput) -> Vec<egui_plot::GridMark> {
+    let step = if input.bounds.1 - input.bounds.0 > 30.0 { 3.0 } else { 1.0 };
+    let first = (input.bounds.0 / step).ceil().max(0.0) as i64;
+    let last = (input.bounds.1 / step).floor() as i64;
+    (first..=last.min(first + 60))
+        .map(|i| egui_plot::GridMark { value: i as f64 * step, step_size: step })
+        .collect()
+}
+
+/// The ground of a plot over the frets: the frets of the fit, and the zero line.
+pub fn frame(plot: &mut PlotUi<'_>, palette: &Palette, fit: [u32; 2], bounds: &PlotBounds) {
+    let range = f64::from(fit[0]) - 0.5..=f64::from(fit[1]) + 0.5;
+    plot.span(Span::new("", range).fill(palette.accent_ground.gamma_multiply(0.35)).border_width(0.0));
+    for octave in [12.0, 24.0] {
+        if bounds.max()[0] > octave {
+            plot.vline(egui_plot::VLine::new("", octave).color(palette.edge).width(1.0).allow_hover(false));
+        }
+    }
+    plot.hline(HLine::new("", 0.0).color(palette.quiet).width(1.2).allow_hover(false));
+}
+
+/// One curve to draw.
+struct Curve {
+    name: String,
+    string: usize,
+    points: Vec<[f64; 2]>,
+    style: LineStyle,
+    is_chosen: bool,
+}
+
+fn curves(strings: &[StringReport], chosen: usize, choice: &ErrorChoice) -> Vec<Curve> {
+    let mut curves = Vec::new();
+    if choice.others {
+        let others = strings.iter().enumerate().filter(|(index, _)| *index != chosen);
+        curves.extend(others.map(|(index, string)| curve(index, string, &BUILT, false)));
+    }
+    let kinds =
+        [(choice.none, NONE), (choice.ideal, IDEAL), (choice.as_built, AS_IT_IS), (choice.built, BUILT)];
+    if let Some(string) = strings.get(chosen) {
+        let wanted = kinds.iter().filter(|(wanted, _)| *wanted);
+        curves.extend(wanted.map(|(_, kind)| curve(chosen, string, kind, true)));
+    }
+    curves.retain(|curve| !curve.points.is_empty());
+    curves
+}
+
+fn curve(index: usize, string: &StringReport, kind: &Kind, is_chosen: bool) -> Curve {
+    let point = |fret: &FretReport| (kind.of)(fret).map(|cents| [f64::from(fret.fret), cents]);
+    Curve {
+        name: format!("String {}, {}", index + 1, kind.word),
+        string: index,
+        points: string.frets.iter().filter_map(point).collect(),
+        style: kind.style,
+        is_chosen,
+    }
+}
+
+fn draw(plot: &mut PlotUi<'_>, palette: &Palette, curve: &Curve) {
+    let colour: Color32 = palette.string(curve.string);
+    let (width, radius) = if curve.is_chosen { (2.4, 4.0) } else { (1.0, 2.8) };
+    let line: PlotPoints<'_> = curve.points.clone().into();
+    plot.line(Line::new("", line).color(colour).width(width).style(curve.style).allow_hover(false));
+    let solid = matches!(curve.style, LineStyle::Solid);
+    let marks: PlotPoints<'_> = curve.points.clone().into();
+    plot.points(
+        Points::new(&curve.name, marks)
+            .shape(marker(curve.string))
+            .color(colour)
+            .filled(solid)
+            .radius(radius),
+    );
+}
+
+/// All curves with some air, and at least a few cents to either side.
+fn whole(outcome: &Outcome, curves: &[Curve]) -> PlotBounds {
+    let frets = f64::from(outcome.plan.instrument.frets);
+    let cents = curves.iter().flat_map(|curve| curve.points.iter().map(|point| point[1]));
+    let (low, high) = cents.fold((-LEAST_CENTS, LEAST_CENTS), |(low, high), v| (low.min(v), high.max(v)));
+    let air = 0.06 * (high - low);
+    PlotBounds::from_min_max([0.4, low - air], [frets + 0.6, high + air])
+}
+
+fn in_words(strings: &[StringReport], chosen: usize) -> String {
+    let Some(string) = strings.get(chosen) else { return "Errors of the fretted notes.".to_owned() };
+    let fret = |f: &FretReport| {
+        format!(
+            " Fret {}: {}, without setback {}.",
+            f.fret,
+            figures::cents(f.built_cents),
+            figures::cents(f.none_cents)
+        )
+    };
+    let frets: String = string.frets.iter().map(fret).collect();
+    format!("Errors of the fretted notes of string {} in cents, as built.{frets}", string.string)
+}

@@ -1,0 +1,98 @@
+//! The page `Saddle`: plan view, errors and their parts, schedule and notices.
+
+use eframe::egui::{Button, Frame, Margin, Panel, RichText, ScrollArea, Stroke, Ui};
+
+use super::{error_plot, layout_plot, notices, nut_plot, schedule, split_plot, table};
+use crate::edit::command::Command;
+use crate::edit::desk::Outcome;
+use crate::theme::{Palette, size};
+use crate::view::View;
+
+/// Height of the notices below the schedule.
+const NOTICES: f32 = 46.0;
+
+/// The page.
+pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) -> Vec<Command> {
+    let mut commands = Vec::new();
+    let rows = outcome.plan.strings.len().min(8) as f32;
+    let table_height = table::HEAD + rows * table::ROW + 44.0 + NOTICES;
+    Panel::bottom("schedule")
+        .resizable(true)
+        .default_size(table_height)
+        .min_size(120.0)
+        .frame(sheet(palette))
+        .show(ui, |ui| {
+            commands.extend(bottom(ui, palette, outcome, view));
+        });
+    let width = (0.36 * ui.available_width()).clamp(260.0, 620.0);
+    Panel::left("plan view").resizable(true).default_size(width).min_size(220.0).frame(sheet(palette)).show(
+        ui,
+        |ui| {
+            commands.extend(plan_view(ui, palette, outcome, view));
+        },
+    );
+    Frame::new().inner_margin(Margin::same(0)).show(ui, |ui| curves(ui, palette, outcome, view));
+    commands
+}
+
+/// The frame of a part of the page.
+fn sheet(palette: &Palette) -> Frame {
+    Frame::new()
+        .fill(palette.sheet)
+        .stroke(Stroke::new(size::EDGE, palette.edge))
+        .inner_margin(Margin::symmetric(8, 6))
+}
+
+fn title(ui: &mut Ui, text: &str) {
+    ui.label(RichText::new(text).strong());
+}
+
+fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) -> Vec<Command> {
+    let mut commands = Vec::new();
+    ui.horizontal(|ui| {
+        title(ui, "Saddle in plan, setbacks in mm");
+        let whole = view.saddle_camera.shows_whole() && view.nut_camera.shows_whole();
+        let reset = Button::new(RichText::new("Whole").small());
+        let response = ui.add_enabled(!whole, reset).on_hover_text("Show the whole layout again");
+        if response.clicked() {
+            commands.push(Command::ResetPlots);
+        }
+    });
+    if layout_plot::nut_is_moved(&outcome.solution.layout) {
+        let width = 0.36 * ui.available_width();
+        Panel::left("nut end").resizable(true).default_size(width).min_size(90.0).frame(Frame::new()).show(
+            ui,
+            |ui| {
+                nut_plot::show(ui, palette, outcome, view.string, &mut view.nut_camera);
+            },
+        );
+    }
+    layout_plot::show(ui, palette, outcome, view.string, &mut view.saddle_camera);
+    commands
+}
+
+fn curves(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) {
+    let height = ui.available_height();
+    let split = (0.38 * height).max(110.0);
+    sheet(palette).show(ui, |ui| {
+        title(ui, "Errors of the fretted notes");
+        error_plot::choices(ui, palette, outcome, view.string, &mut view.errors);
+        let room = (ui.available_height() - split - 66.0).max(90.0);
+        error_plot::show(ui, palette, outcome, view.string, &mut view.errors, room);
+        title(ui, "Where the error comes from");
+        split_plot::legend(ui, palette, view.string);
+        split_plot::show(ui, palette, outcome, view.string, ui.available_height().max(80.0));
+    });
+}
+
+fn bottom(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &View) -> Vec<Command> {
+    let mut commands = Vec::new();
+    ScrollArea::vertical().auto_shrink([false, false]).show(ui, |ui| {
+        if let Some(string) = schedule::show(ui, palette, outcome, view.string) {
+            commands.push(Command::ChooseString(string));
+        }
+        schedule::foot(ui, palette, outcome);
+        commands.extend(notices::show(ui, palette, &outcome.solution.report.notices));
+    });
+    commands
+}

@@ -1,0 +1,204 @@
+//! The saddle in plan: nominal line, strings, crests with their setbacks, and the blank.
+
+use crestline_plan::{Layout, Point, SaddleStyle, StringLine};
+use eframe::egui::{Align2, Ui, Vec2, WidgetInfo, accesskit};
+use egui_plot::{LineStyle, Plot, PlotBounds, PlotUi};
+
+use super::camera::Camera;
+use super::figures;
+use super::plan_items::{at_x, line, mark, outline, text};
+use crate::edit::desk::Outcome;
+use crate::theme::Palette;
+
+/// Room on either side of what is drawn, mm.
+const ROOM_MM: f64 = 3.0;
+/// Room across the neck outside the outer strings, mm.
+const ROOM_ACROSS_MM: f64 = 5.0;
+/// Width kept free for the setbacks written behind the crests, mm at the usual scale.
+const ROOM_FOR_TEXT_MM: f64 = 7.0;
+/// Width of the string lines in points.
+const STRING_WIDTH: f32 = 1.2;
+
+/// The plot, as large as the room that is left.
+pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: usize, camera: &mut Camera) {
+    let layout = &outcome.solution.layout;
+    let whole = whole(outcome);
+    let looking = *camera;
+    let datum_x = layout.datum_x_mm;
+    let plot = plan_plot("saddle in plan", datum_x).height(ui.available_height());
+    let shown = plot.show(ui, |plot| {
+        let rect = plot.response().rect;
+        let bounds = looking.bounds(rect, &whole);
+        plot.set_plot_bounds(bounds);
+        let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
+        draw(plot, &Drawing { palette, outcome, chosen, bounds, mm_per_point });
+    });
+    let response = shown.response;
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome)));
+    camera.follow(ui, &response, &shown.transform, &whole);
+}
+
+/// A plot for a plan view: drag pans, the wheel zooms, and the axis counts from the datum.
+pub fn plan_plot<'a>(name: &'static str, datum_x: f64) -> Plot<'a> {
+    Plot::new(name)
+        .allow_scroll(false)
+        .allow_boxed_zoom(false)
+        .allow_double_click_reset(false)
+        .allow_axis_zoom_drag(false)
+        .show_crosshair(false)
+        .min_size(Vec2::new(60.0, 60.0))
+        .x_axis_formatter(move |mark, _| figures::fixed(mark.value - datum_x, decimals(mark.step_size)))
+        .y_axis_formatter(|mark, _| figures::fixed(mark.value, decimals(mark.step_size)))
+        .label_formatter(move |_| None)
+}
+
+/// Decimals for a grid of this step.
+fn decimals(step: f64) -> usize {
+    if step >= 1.0 {
+        0
+    } else if step >= 0.1 {
+        1
+    } else {
+        2
+    }
+}
+
+struct Drawing<'a> {
+    palette: &'static Palette,
+    outcome: &'a Outcome,
+    chosen: usize,
+    bounds: PlotBounds,
+    mm_per_point: f64,
+}
+
+fn draw(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
+    let layout = &d.outcome.solution.layout;
+    let p = d.palette;
+    for blank in &layout.blanks {
+        outline(plot, blank, p.blank, p.quiet);
+    }
+    for fret in &layout.frets {
+        line(plot, fret, p.edge, 2.0, LineStyle::Solid);
+    }
+    let [treble, bass] = layout.saddle_line;
+    let beyond = beyond(treble, bass, ROOM_ACROSS_MM * 0.6);
+    line(plot, &beyond, p.ink, 1.2, LineStyle::Dashed { length: 9.0 });
+    centre_line(plot, d);
+    for (index, string) in layout.strings.iter().enumerate() {
+        string_line(plot, d, index, string);
+    }
+    if matches!(d.outcome.plan.saddle.style, SaddleStyle::Separate) {
+        for (index, string) in layout.strings.iter().enumerate() {
+            travel(plot, d, index, string);
+        }
+    }
+    for saddle_line in &d.outcome.solution.report.saddle.lines {
+        line(plot, &[saddle_line.treble, saddle_line.bass], p.accent, 2.0, LineStyle::Solid);
+    }
+    for (index, string) in layout.strings.iter().enumerate() {
+        crest(plot, d, index, string);
+    }
+}
+
+fn centre_line(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
+    let (min, max) = (d.bounds.min(), d.bounds.max());
+    let ends = [Point { x: min[0], y: 0.0 }, Point { x: max[0], y: 0.0 }];
+    line(plot, &ends, d.palette.edge, 1.0, LineStyle::Dashed { length: 4.0 });
+}
+
+/// The string from the left edge of the view to its crest, with its number.
+fn string_line(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
+    let left = d.bounds.min()[0];
+    let start =
+        if left > string.nut_edge.x { at_x(string.nut, string.saddle, left) } else { string.nut_edge };
+    let is_chosen = index == d.chosen;
+    let width = if is_chosen { 2.0 * STRING_WIDTH } else { STRING_WIDTH };
+    let colour = d.palette.string(index);
+    line(plot, &[start, string.crest], colour, width, LineStyle::Solid);
+    let place = at_x(string.nut, string.saddle, start.x + 8.0 * d.mm_per_point);
+    let above = Point { x: place.x, y: place.y + 2.0 * d.mm_per_point };
+    text(plot, above, (index + 1).to_string(), colour, Align2::LEFT_BOTTOM);
+}
+
+/// How far a separate piece may go.
+fn travel(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
+    let [least, greatest] = string.travel;
+    let colour = d.palette.string(index).gamma_multiply(0.45);
+    line(plot, &[least, greatest], colour, 5.0, LineStyle::Solid);
+    let tick = 5.0 * d.mm_per_point;
+    for end in [least, greatest] {
+        let ends = [Point { x: end.x, y: end.y - tick }, Point { x: end.x, y: end.y + tick }];
+        line(plot, &ends, d.palette.string(index), 1.0, LineStyle::Solid);
+    }
+}
+
+/// The ideal crest hollow, the existing one as a ring, and the built one filled with its setback beside it.
+fn crest(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
+    let colour = d.palette.string(index);
+    let Some(report) = d.outcome.solution.report.strings.get(index) else { return };
+    let number = index + 1;
+    if let Some(now) = string.as_built {
+        mark(plot, &format!("String {number}, crest as it is"), now, 0, d.palette.quiet, false, 4.0);
+    }
+    mark(plot, &format!("String {number}, ideal crest"), string.ideal_crest, index, colour, false, 4.5);
+    mark(plot, &format!("String {number}, crest"), string.crest, index, colour, true, 4.5);
+    let rightmost =
+        string.crest.x.max(string.ideal_crest.x).max(string.as_built.map_or(f64::MIN, |now| now.x));
+    let beside = Point { x: rightmost + 9.0 * d.mm_per_point, y: string.crest.y };
+    let words = figures::mm(report.built.saddle_setback_mm);
+    text(plot, beside, words, d.palette.ink, Align2::LEFT_CENTER);
+}
+
+/// The line through two points, longer by `by_mm` at either end.
+fn beyond(a: Point, b: Point, by_mm: f64) -> [Point; 2] {
+    let (dx, dy) = (b.x - a.x, b.y - a.y);
+    let length = dx.hypot(dy).max(f64::MIN_POSITIVE);
+    let (ux, uy) = (dx / length * by_mm, dy / length * by_mm);
+    [Point { x: a.x - ux, y: a.y - uy }, Point { x: b.x + ux, y: b.y + uy }]
+}
+
+/// What must be in view.
+fn whole(outcome: &Outcome) -> PlotBounds {
+    let layout = &outcome.solution.layout;
+    let mut points: Vec<Point> = layout.saddle_line.to_vec();
+    points.extend(layout.blanks.iter().flatten());
+    points.extend(layout.strings.iter().flat_map(|s| [s.crest, s.ideal_crest, s.saddle]));
+    points.extend(layout.strings.iter().filter_map(|s| s.as_built));
+    if matches!(outcome.plan.saddle.style, SaddleStyle::Separate) {
+        points.extend(layout.strings.iter().flat_map(|s| s.travel));
+    }
+    around(&points, [ROOM_MM, ROOM_MM + ROOM_FOR_TEXT_MM])
+}
+
+/// The box around points, with room before, behind and across.
+#[must_use]
+pub fn around(points: &[Point], room_mm: [f64; 2]) -> PlotBounds {
+    let fold = |pick: fn(&Point) -> f64| {
+        points.iter().map(pick).fold((f64::INFINITY, f64::NEG_INFINITY), |(lo, hi), v| (lo.min(v), hi.max(v)))
+    };
+    let ((x0, x1), (y0, y1)) = (fold(|p| p.x), fold(|p| p.y));
+    if !(x0.is_finite() && y0.is_finite()) {
+        return PlotBounds::from_min_max([-10.0, -10.0], [10.0, 10.0]);
+    }
+    PlotBounds::from_min_max([x0 - room_mm[0], y0 - ROOM_ACROSS_MM], [x1 + room_mm[1], y1 + ROOM_ACROSS_MM])
+}
+
+/// The plot's figures in words.
+fn in_words(outcome: &Outcome) -> String {
+    let setback = |s: &crestline_plan::StringReport| {
+        format!(
+            " String {}: setback {} mm, ideal {} mm.",
+            s.string,
+            figures::mm(s.built.saddle_setback_mm),
+            figures::mm(s.ideal.saddle_setback_mm)
+        )
+    };
+    let strings: String = outcome.solution.report.strings.iter().map(setback).collect();
+    format!("Saddle in plan.{strings}")
+}
+
+/// Whether the layout has anything to show at the nut.
+#[must_use]
+pub fn nut_is_moved(layout: &Layout) -> bool {
+    layout.strings.iter().any(|s| (s.nut_edge.x - s.nut.x).abs() > 1e-6)
+}

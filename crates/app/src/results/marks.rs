@@ -1,0 +1,42 @@
+//! The strings' markers, painted outside plots.
+
+use eframe::egui::{Color32, Painter, Pos2, Shape, Stroke, Vec2, vec2};
+use egui_plot::MarkerShape;
+
+use crate::theme::{Palette, marker};
+
+/// Paints the marker of string `index` (0 first) about `centre`.
+pub fn paint(painter: &Painter, centre: Pos2, index: usize, palette: &Palette, radius: f32) {
+    painter.extend(shapes(marker(index), centre, radius, palette.string(index)));
+}
+
+fn shapes(marker: MarkerShape, centre: Pos2, r: f32, colour: Color32) -> Vec<Shape> {
+    let polygon = |corners: &[Vec2]| {
+        let points = corners.iter().map(|corner| centre + *corner * r).collect();
+        vec![Shape::convex_polygon(points, colour, Stroke::NONE)]
+    };
+    let strokes = |ends: &[(Vec2, Vec2)]| {
+        let line = |(a, b): &(Vec2, Vec2)| {
+            Shape::line_segment([centre + *a * r, centre + *b * r], Stroke::new(r * 0.45, colour))
+        };
+        ends.iter().map(line).collect::<Vec<_>>()
+    };
+    let cross = [(vec2(-0.8, -0.8), vec2(0.8, 0.8)), (vec2(-0.8, 0.8), vec2(0.8, -0.8))];
+    let plus = [(vec2(-1.0, 0.0), vec2(1.0, 0.0)), (vec2(0.0, -1.0), vec2(0.0, 1.0))];
+    match marker {
+        MarkerShape::Circle => vec![Shape::circle_filled(centre, r, colour)],
+        MarkerShape::Square => polygon(&[vec2(-0.9, -0.9), vec2(0.9, -0.9), vec2(0.9, 0.9), vec2(-0.9, 0.9)]),
+        MarkerShape::Diamond => polygon(&[vec2(0.0, -1.1), vec2(1.1, 0.0), vec2(0.0, 1.1), vec2(-1.1, 0.0)]),
+        MarkerShape::Up => polygon(&[vec2(0.0, -1.1), vec2(1.0, 0.8), vec2(-1.0, 0.8)]),
+        MarkerShape::Down => polygon(&[vec2(-1.0, -0.8), vec2(1.0, -0.8), vec2(0.0, 1.1)]),
+        MarkerShape::Left => polygon(&[vec2(-1.1, 0.0), vec2(0.8, -1.0), vec2(0.8, 1.0)]),
+        MarkerShape::Right => polygon(&[vec2(-0.8, -1.0), vec2(1.1, 0.0), vec2(-0.8, 1.0)]),
+        MarkerShape::Cross => strokes(&cross),
+        MarkerShape::Plus => strokes(&plus),
+        MarkerShape::Asterisk => strokes(&[
+            (vec2(0.0, -1.0), vec2(0.0, 1.0)),
+            (vec2(-0.87, -0.5), vec2(0.87, 0.5)),
+            (vec2(-0.87, 0.5), vec2(0.87, -0.5)),
+        ]),
+    }
+}

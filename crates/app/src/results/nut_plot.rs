@@ -1,0 +1,67 @@
+//! The nut end in plan, where the nut is compensated.
+
+use crestline_plan::{Point, StringLine};
+use eframe::egui::{Align2, Ui, WidgetInfo, accesskit};
+use egui_plot::{LineStyle, PlotUi};
+
+use super::camera::Camera;
+use super::figures;
+use super::layout_plot::{around, plan_plot};
+use super::plan_items::{line, mark, text};
+use crate::edit::desk::Outcome;
+use crate::theme::Palette;
+
+/// Room before the nut edges and behind them, where their setbacks are written, mm.
+const ROOM_MM: [f64; 2] = [3.0, 8.0];
+
+/// The plot, as large as the room that is left.
+pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: usize, camera: &mut Camera) {
+    let layout = &outcome.solution.layout;
+    let points: Vec<Point> = layout.strings.iter().flat_map(|s| [s.nut, s.nut_edge]).collect();
+    let whole = around(&points, ROOM_MM);
+    let looking = *camera;
+    let plot = plan_plot("nut in plan", layout.datum_x_mm).height(ui.available_height());
+    let shown = plot.show(ui, |plot| {
+        let rect = plot.response().rect;
+        let bounds = looking.bounds(rect, &whole);
+        plot.set_plot_bounds(bounds);
+        let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
+        line(plot, &layout.nut_line, palette.ink, 1.2, LineStyle::Dashed { length: 9.0 });
+        for fret in &layout.frets {
+            line(plot, fret, palette.edge, 2.0, LineStyle::Solid);
+        }
+        for (index, string) in layout.strings.iter().enumerate() {
+            one(plot, palette, outcome, index, string, chosen == index, mm_per_point);
+        }
+    });
+    let response = shown.response;
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome)));
+    camera.follow(ui, &response, &shown.transform, &whole);
+}
+
+fn one(
+    plot: &mut PlotUi<'_>,
+    palette: &Palette,
+    outcome: &Outcome,
+    index: usize,
+    string: &StringLine,
+    is_chosen: bool,
+    mm_per_point: f64,
+) {
+    let colour = palette.string(index);
+    let width = if is_chosen { 2.4 } else { 1.2 };
+    line(plot, &[string.nut_edge, string.saddle], colour, width, LineStyle::Solid);
+    mark(plot, &format!("String {}, nut edge", index + 1), string.nut_edge, index, colour, true, 4.5);
+    let Some(report) = outcome.solution.report.strings.get(index) else { return };
+    let beside =
+        Point { x: string.nut_edge.x + 9.0 * mm_per_point, y: string.nut_edge.y + 1.0 * mm_per_point };
+    text(plot, beside, figures::mm(report.built.nut_setback_mm), palette.ink, Align2::LEFT_BOTTOM);
+}
+
+fn in_words(outcome: &Outcome) -> String {
+    let setback = |s: &crestline_plan::StringReport| {
+        format!(" String {}: nut setback {} mm.", s.string, figures::mm(s.built.nut_setback_mm))
+    };
+    let strings: String = outcome.solution.report.strings.iter().map(setback).collect();
+    format!("Nut in plan.{strings}")
+}

@@ -1,0 +1,146 @@
+//! The bar at the top: menus, pages, and the plan's name.
+
+use crestline_plan::EXAMPLES;
+use eframe::egui::{
+    Button, CornerRadius, Frame, Margin, MenuBar, Panel, RichText, Stroke, Ui, Vec2, accesskit,
+};
+
+use crate::edit::command::Command;
+use crate::edit::desk::Desk;
+use crate::theme::{Palette, size};
+use crate::view::{Page, ThemeChoice, View};
+
+/// The bar.
+pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View) -> Vec<Command> {
+    let mut commands = Vec::new();
+    let frame = Frame::new().fill(palette.band).inner_margin(Margin::symmetric(10, 4));
+    Panel::top("bar").frame(frame).resizable(false).show(ui, |ui| {
+        MenuBar::new().ui(ui, |ui| {
+            ui.label(RichText::new("Crestline").heading().strong().color(palette.accent));
+            ui.add_space(size::GAP);
+            file_menu(ui, &mut commands);
+            edit_menu(ui, desk, view, &mut commands);
+            view_menu(ui, view, &mut commands);
+            ui.add_space(size::WIDE_GAP);
+            pages(ui, palette, view, &mut commands);
+            name(ui, palette, desk);
+        });
+    });
+    commands
+}
+
+fn file_menu(ui: &mut Ui, commands: &mut Vec<Command>) {
+    ui.menu_button("File", |ui| {
+        ui.menu_button("New from example", |ui| {
+            for example in EXAMPLES {
+                let words = format!("{}: {}", example.name.replace('_', " "), example.summary);
+                if ui.button(words).clicked() {
+                    commands.push(Command::NewFromExample(example.name));
+                }
+            }
+        });
+        item(ui, commands, Command::Open, true);
+        ui.separator();
+        item(ui, commands, Command::Save, true);
+        item(ui, commands, Command::SaveAs, true);
+        item(ui, commands, Command::ExportDrawing, true);
+        ui.separator();
+        item(ui, commands, Command::Quit, true);
+    });
+}
+
+fn edit_menu(ui: &mut Ui, desk: &Desk, view: &View, commands: &mut Vec<Command>) {
+    ui.menu_button("Edit", |ui| {
+        let history = desk.history();
+        named_item(ui, commands, Command::Undo, history.undo_name());
+        named_item(ui, commands, Command::Redo, history.redo_name());
+        ui.separator();
+        let (string, count) = (view.string, desk.plan.strings.len());
+        let most = crate::edit::strings::MOST_STRINGS;
+        item(ui, commands, Command::DuplicateString(string), count < most);
+        item(ui, commands, Command::RemoveString(string), count > 1);
+        item(ui, commands, Command::MoveStringUp(string), string > 0);
+        item(ui, commands, Command::MoveStringDown(string), string + 1 < count);
+    });
+}
+
+fn view_menu(ui: &mut Ui, view: &View, commands: &mut Vec<Command>) {
+    ui.menu_button("View", |ui| {
+        for choice in ThemeChoice::ALL {
+            if ui.radio(view.theme == choice, choice.name()).clicked() {
+                commands.push(Command::Theme(choice));
+            }
+        }
+        ui.separator();
+        item(ui, commands, Command::LargerText, true);
+        item(ui, commands, Command::SmallerText, true);
+        item(ui, commands, Command::UsualText, true);
+        ui.separator();
+        item(ui, commands, Command::ResetPlots, true);
+    });
+}
+
+fn named_item(ui: &mut Ui, commands: &mut Vec<Command>, command: Command, what: Option<&str>) {
+    let words = what.map_or_else(|| command.name(), |what| format!("{}: {what}", command.name()));
+    entry(ui, commands, command, words, what.is_some());
+}
+
+fn item(ui: &mut Ui, commands: &mut Vec<Command>, command: Command, enabled: bool) {
+    let words = command.name();
+    entry(ui, commands, command, words, enabled);
+}
+
+fn entry(ui: &mut Ui, commands: &mut Vec<Command>, command: Command, words: String, enabled: bool) {
+    let mut button = Button::new(&words);
+    if let Some(shortcut) = command.shortcut() {
+        button = button.shortcut_text(ui.ctx().format_shortcut(&shortcut));
+    }
+    let response = ui.add_enabled(enabled, button);
+    response.ctx.accesskit_node_builder(response.id, |node| node.set_label(words));
+    if response.clicked() {
+        commands.push(command);
+        ui.close();
+    }
+}
+
+fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command>) {
+    for page in Page::ALL {
+        let is_shown = view.page == page;
+        let colour = if is_shown { palette.ink } else { palette.quiet };
+        let mut text = RichText::new(page.name()).color(colour);
+        if is_shown {
+            text = text.strong();
+        }
+        let fill = if is_shown { palette.sheet } else { palette.band };
+        let button = Button::new(text)
+            .fill(fill)
+            .stroke(Stroke::NONE)
+            .corner_radius(CornerRadius::same(3))
+            .min_size(Vec2::new(76.0, 24.0));
+        let response = ui.add(button);
+        response.ctx.accesskit_node_builder(response.id, |node| {
+            node.set_role(accesskit::Role::Tab);
+            node.set_label(page.name());
+            node.set_selected(is_shown);
+        });
+        if is_shown {
+            let line = response.rect.bottom() + 1.0;
+            ui.painter().hline(response.rect.x_range(), line, Stroke::new(2.5, palette.accent));
+        }
+        if response.clicked() {
+            commands.push(Command::ShowPage(page));
+        }
+    }
+}
+
+/// The plan's title, its file, and a mark where it has changes that are not saved.
+fn name(ui: &mut Ui, palette: &Palette, desk: &Desk) {
+    let layout = eframe::egui::Layout::right_to_left(eframe::egui::Align::Center);
+    ui.with_layout(layout, |ui| {
+        let mark = if desk.is_changed() { "● unsaved changes" } else { "" };
+        ui.label(RichText::new(mark).small().color(palette.caution));
+        let title = if desk.plan.title.is_empty() { "Untitled plan" } else { &desk.plan.title };
+        let words = format!("{title}  ·  {}", desk.file_name());
+        ui.add(eframe::egui::Label::new(RichText::new(words).color(palette.ink)).truncate());
+    });
+}

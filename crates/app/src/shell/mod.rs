@@ -1,0 +1,12 @@
+//! The window around the pages: bars, questions, files, and the one place where commands are carried out.
+
+pub mod ask;
+pub mod bar;
+pub mod files;
+pub mod foot;
+pub mod launch;
+pub mod obey;
+pub mod options;
+pub mod path_box;
+pub mod picker;
+pub mod window;

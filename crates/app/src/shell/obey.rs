@@ -1,0 +1,280 @@
+//! The one place where commands are carried out.
+
+use std::path::{Path, PathBuf};
+
+use crestline_plan::{example, read_draft};
+use eframe::egui::{Context, ViewportCommand};
+
+use super::ask::{Question, Reply};
+use super::files::{self, with_ending};
+use super::path_box::PathBox;
+use super::picker::{Answer, Picker, Purpose};
+use super::window::Window;
+use crate::edit::command::Command;
+use crate::edit::history::Edit;
+use crate::edit::strings;
+use crate::theme;
+use crate::view::Group;
+
+/// The least and greatest scale of all text.
+const ZOOM: [f32; 2] = [0.8, 2.0];
+/// One step of it.
+const ZOOM_STEP: f32 = 0.1;
+
+/// Does what a command says.
+pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
+    match command {
+        Command::NewFromExample(_) | Command::Open | Command::OpenFile(_) | Command::Quit
+            if window.desk.is_changed() =>
+        {
+            window.question = Some(Question::Unsaved(command));
+        }
+        Command::NewFromExample(name) => new_from_example(window, name),
+        Command::Open => pick(window, ctx, Purpose::Open),
+        Command::OpenFile(path) => open(window, &path),
+        Command::Save => save(window, ctx),
+        Command::SaveAs => pick(window, ctx, Purpose::Save),
+        Command::ExportDrawing => export(window, ctx),
+        Command::Quit => ctx.send_viewport_cmd(ViewportCommand::Close),
+        Command::Undo => step(window, true),
+        Command::Redo => step(window, false),
+        Command::Theme(choice) => {
+            window.view.theme = choice;
+            theme::choose(ctx, choice);
+        }
+        Command::LargerText => zoom(ctx, ZOOM_STEP),
+        Command::SmallerText => zoom(ctx, -ZOOM_STEP),
+        Command::UsualText => ctx.set_zoom_factor(1.0),
+        other => arrange(window, other),
+    }
+}
+
+/// Commands that change strings or the view only.
+fn arrange(window: &mut Window, command: Command) {
+    let view = &mut window.view;
+    match command {
+        Command::DuplicateString(index) => {
+            change_strings(window, index + 1, "Add string", |plan| strings::duplicate(plan, index));
+        }
+        Command::RemoveString(index) => {
+            change_strings(window, index, "Remove string", |plan| strings::remove(plan, index));
+        }
+        Command::MoveStringUp(index) if index > 0 => {
+            change_strings(window, index - 1, "Move string", |plan| strings::swap(plan, index - 1, index));
+        }
+        Command::MoveStringDown(index) => {
+            change_strings(window, index + 1, "Move string", |plan| strings::swap(plan, index, index + 1));
+        }
+        Command::ChooseString(index) => view.string = index,
+        Command::ShowPage(page) => view.page = page,
+        Command::Fold(group) => {
+            if !view.folded.remove(&group) {
+                view.folded.insert(group);
+            }
+        }
+        Command::GoTo(path) => go_to(window, path),
+        Command::ResetPlots => {
+            view.saddle_camera.reset();
+            view.nut_camera.reset();
+            view.errors.looking = None;
+        }
+        Command::DismissMessage => view.message = None,
+        _ => {}
+    }
+}
+
+fn change_strings(
+    window: &mut Window,
+    choose: usize,
+    name: &str,
+    change: impl FnOnce(&mut crestline_plan::Plan),
+) {
+    change(&mut window.desk.plan);
+    window.desk.settle(&Edit::whole(name));
+    window.view.drafts.clear();
+    choose_string(window, choose);
+}
+
+fn choose_string(window: &mut Window, index: usize) {
+    window.view.string = index.min(window.desk.plan.strings.len().saturating_sub(1));
+}
+
+fn go_to(window: &mut Window, path: String) {
+    window.view.folded.remove(&Group::of_path(&path));
+    let index = path.strip_prefix("strings[").and_then(|rest| rest.split(']').next()?.parse().ok());
+    if let Some(index) = index {
+        choose_string(window, index);
+    }
+    window.view.going_to = Some(path);
+}
+
+fn step(window: &mut Window, back: bool) {
+    let name = if back { window.desk.history().undo_name() } else { window.desk.history().redo_name() };
+    let said = name.map(|name| format!("{}: {name}", if back { "Undone" } else { "Done again" }));
+    let stepped = if back { window.desk.undo() } else { window.desk.redo() };
+    window.view.drafts.clear();
+    choose_string(window, window.view.string);
+    if let (true, Some(said)) = (stepped, said) {
+        window.view.say(said);
+    }
+}
+
+fn zoom(ctx: &Context, by: f32) {
+    ctx.set_zoom_factor((ctx.zoom_factor() + by).clamp(ZOOM[0], ZOOM[1]));
+}
+
+fn new_from_example(window: &mut Window, name: &str) {
+    let Some(example) = example(name) else { return };
+    match read_draft(example.text) {
+        Ok(plan) => {
+            window.desk.replace(plan, None);
+            fresh(window);
+        }
+        Err(faults) => {
+            window.view.complain(faults.iter().map(ToString::to_string).collect::<Vec<_>>().join("; "))
+        }
+    }
+}
+
+fn open(window: &mut Window, path: &Path) {
+    match files::open(path) {
+        Ok(plan) => {
+            window.desk.replace(plan, Some(path.to_owned()));
+            fresh(window);
+            window.view.say(format!("Opened {}", path.display()));
+        }
+        Err(words) => window.view.complain(words),
+    }
+}
+
+/// Forgets what belonged to the plan before.
+fn fresh(window: &mut Window) {
+    window.view.drafts.clear();
+    window.view.string = 0;
+    window.view.saddle_camera.reset();
+    window.view.nut_camera.reset();
+    window.view.errors.looking = None;
+    window.view.message = None;
+}
+
+fn save(window: &mut Window, ctx: &Context) {
+    match window.desk.path().map(Path::to_owned) {
+        Some(path) => {
+            save_to(window, path);
+        }
+        None => pick(window, ctx, Purpose::Save),
+    }
+}
+
+/// Saves the plan; false where that failed.
+fn save_to(window: &mut Window, path: PathBuf) -> bool {
+    match files::save(&path, &window.desk.plan) {
+        Ok(()) => {
+            let open_fields = window.view.drafts.errors().count();
+            let remark = match (open_fields, window.desk.faults().len()) {
+                (0, 0) => String::new(),
+                (0, n) => format!(". It still has {n} to mend, and is saved as it is"),
+                (n, _) => format!(". The file has the last good value of {n} marked fields"),
+            };
+            window.view.say(format!("Saved {}{remark}", path.display()));
+            window.desk.saved_as(path);
+            true
+        }
+        Err(words) => {
+            window.view.complain(words);
+            false
+        }
+    }
+}
+
+fn export(window: &mut Window, ctx: &Context) {
+    let is_current = window.desk.faults().is_empty() && window.view.drafts.errors().next().is_none();
+    if is_current && window.desk.outcome().is_some() {
+        pick(window, ctx, Purpose::Drawing);
+    } else {
+        window.view.complain("The drawing is not written while fields are to be mended.");
+    }
+}
+
+/// Asks for a path: by the system's dialog, or in the window where there is none.
+fn pick(window: &mut Window, ctx: &Context, purpose: Purpose) {
+    let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
+    window.picker = Picker::open(ctx, purpose, &suggested);
+    if window.picker.is_none() {
+        window.question = Some(Question::Path(PathBox::new(purpose, &suggested)));
+    }
+}
+
+/// Takes the answer of a file dialog, once there is one.
+pub fn take_answer(window: &mut Window, ctx: &Context) {
+    let Some((purpose, answer)) = window.picker.as_ref().and_then(|p| Some((p.purpose, p.answer()?))) else {
+        return;
+    };
+    window.picker = None;
+    match answer {
+        Answer::Path(path) => {
+            // The dialog has asked about a file that exists, but not about one that gets its ending here.
+            let whole = with_ending(path.clone(), purpose.ending());
+            let reply =
+                if whole == path { Reply::Use(purpose, path) } else { Reply::Propose(purpose, whole) };
+            take_reply(window, ctx, reply);
+        }
+        Answer::Cancelled => {}
+        Answer::NoService => {
+            let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
+            window.question = Some(Question::Path(PathBox::new(purpose, &suggested)));
+        }
+    }
+}
+
+/// Does what was answered to a question.
+pub fn take_reply(window: &mut Window, ctx: &Context, reply: Reply) {
+    match reply {
+        Reply::Cancel => {}
+        Reply::SaveThen(next) => match window.desk.path().map(Path::to_owned) {
+            Some(path) => {
+                if save_to(window, path) {
+                    obey(window, ctx, next);
+                }
+            }
+            None => pick(window, ctx, Purpose::Save),
+        },
+        Reply::Without(next) => without_saving(window, ctx, next),
+        Reply::Propose(purpose, path) if purpose != Purpose::Open && path.exists() => {
+            window.question = Some(Question::Replace(purpose, path));
+        }
+        Reply::Propose(purpose, path) | Reply::Use(purpose, path) => use_path(window, purpose, path),
+    }
+}
+
+fn without_saving(window: &mut Window, ctx: &Context, next: Command) {
+    match next {
+        Command::Quit => {
+            window.may_close = true;
+            ctx.send_viewport_cmd(ViewportCommand::Close);
+        }
+        Command::NewFromExample(name) => new_from_example(window, name),
+        Command::Open => pick(window, ctx, Purpose::Open),
+        Command::OpenFile(path) => open(window, &path),
+        other => obey(window, ctx, other),
+    }
+}
+
+fn use_path(window: &mut Window, purpose: Purpose, path: PathBuf) {
+    match purpose {
+        Purpose::Open => open(window, &path),
+        Purpose::Save => {
+            save_to(window, path);
+        }
+        Purpose::Drawing => write_drawing(window, &path),
+    }
+}
+
+fn write_drawing(window: &mut Window, path: &Path) {
+    let Some(_outcome) = window.desk.outcome() else { return };
+    let bytes: Vec<u8> = Vec::new();
+    match files::write(path, &bytes) {
+        Ok(()) => window.view.say(format!("Drawing written to {}", path.display())),
+        Err(words) => window.view.complain(words),
+    }
+}

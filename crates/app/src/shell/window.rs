@@ -1,0 +1,194 @@
+//! The window: one frame after the other.
+
+use std::path::PathBuf;
+
+use crestline_plan::Plan;
+use eframe::egui::{CentralPanel, Context, Frame, Margin, Panel, RichText, Ui, ViewportCommand};
+
+use super::ask::{self, Question};
+use super::obey;
+use super::options::Options;
+use super::picker::Picker;
+use super::{bar, foot};
+use crate::edit::command::Command;
+use crate::edit::desk::Desk;
+use crate::fields::form::Form;
+use crate::inputs::{self, Surroundings};
+use crate::results::{layout_page, notes_page, notices};
+use crate::theme::{self, Palette};
+use crate::view::{Page, View};
+
+/// Width of the inputs: as they open, at least, and at most.
+const INPUTS: [f32; 3] = [392.0, 360.0, 620.0];
+
+/// The program's window.
+pub struct Window {
+    /// The plan document and the last good result.
+    pub desk: Desk,
+    /// What the window shows and how.
+    pub view: View,
+    /// A question that stands in front of it.
+    pub question: Option<Question>,
+    /// A file dialog that is open.
+    pub picker: Option<Picker>,
+    /// Whether the window may close although the plan has changes.
+    pub may_close: bool,
+    title: String,
+}
+
+impl Window {
+    /// The window on a plan.
+    #[must_use]
+    pub fn new(ctx: &Context, plan: Plan, path: Option<PathBuf>, options: &Options) -> Self {
+        theme::install(ctx);
+        theme::choose(ctx, options.theme);
+        Self {
+            desk: Desk::new(plan, path),
+            view: options.view(),
+            question: None,
+            picker: None,
+            may_close: false,
+            title: String::new(),
+        }
+    }
+
+    /// One frame: show everything, then do what was asked for.
+    pub fn frame(&mut self, ui: &mut Ui) {
+        let ctx = ui.ctx().clone();
+        let palette = Palette::of(ctx.theme());
+        let mut commands = self.keys(&ctx);
+        commands.extend(dropped(&ctx));
+        commands.extend(bar::show(ui, palette, &self.desk, &self.view));
+        commands.extend(foot::show(ui, palette, self.view.message.as_ref()));
+        commands.extend(self.inputs(ui, palette));
+        commands.extend(self.results(ui, palette));
+        self.ask(&ctx, palette);
+        for command in commands {
+            obey::obey(self, &ctx, command);
+        }
+        obey::take_answer(self, &ctx);
+        self.guard_closing(&ctx);
+        self.follow_title(&ctx);
+    }
+
+    /// Commands called by keys; none while a question stands in front.
+    fn keys(&self, ctx: &Context) -> Vec<Command> {
+        if self.question.is_some() {
+            return Vec::new();
+        }
+        let called = |command: &Command| {
+            command
+                .shortcut()
+                .is_some_and(|shortcut| ctx.input_mut(|input| input.consume_shortcut(&shortcut)))
+        };
+        Command::with_keys().into_iter().filter(called).collect()
+    }
+
+    fn inputs(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
+        let [usual, least, most] = INPUTS;
+        let frame =
+            Frame::new().fill(palette.ground).inner_margin(Margin { left: 8, right: 4, top: 8, bottom: 8 });
+        let panel =
+            Panel::left("inputs").resizable(true).default_size(usual).size_range(least..=most).frame(frame);
+        panel.show(ui, |ui| self.form(ui, palette)).inner
+    }
+
+    /// The fields; what they changed is settled at once, so that results follow typing.
+    fn form(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
+        let (plan, faults, outcome) = self.desk.parts();
+        let report = outcome.and_then(|outcome| outcome.solution.report.strings.get(self.view.string));
+        let around = Surroundings { string: self.view.string, folded: &self.view.folded, report };
+        let mut form = Form {
+            faults,
+            drafts: &mut self.view.drafts,
+            going_to: &mut self.view.going_to,
+            palette,
+            edit: None,
+            left: false,
+            commands: Vec::new(),
+        };
+        inputs::show(ui, &mut form, plan, &around);
+        let Form { edit, left, commands, .. } = form;
+        if let Some(edit) = edit {
+            self.desk.settle(&edit);
+            ui.ctx().request_repaint();
+        }
+        if left {
+            self.desk.close_gesture();
+        }
+        commands
+    }
+
+    fn results(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
+        let frame =
+            Frame::new().fill(palette.ground).inner_margin(Margin { left: 4, right: 8, top: 8, bottom: 8 });
+        let mut commands = Vec::new();
+        CentralPanel::default().frame(frame).show(ui, |ui| {
+            let outcome = self.desk.outcome();
+            commands.extend(notices::stale(
+                ui,
+                palette,
+                self.desk.faults(),
+                &self.view.drafts,
+                outcome.is_some(),
+            ));
+            let Some(outcome) = outcome else {
+                ui.label(
+                    RichText::new("The saddle appears here as soon as the plan can be solved.")
+                        .color(palette.quiet),
+                );
+                return;
+            };
+            let view = &mut self.view;
+            commands.extend(match view.page {
+                Page::Saddle => layout_page::show(ui, palette, outcome, view),
+                Page::FrettedNotes => notes_page::show(ui, palette, outcome, view),
+            });
+        });
+        commands
+    }
+
+    fn ask(&mut self, ctx: &Context, palette: &Palette) {
+        let name = self.desk.file_name();
+        let Some(question) = &mut self.question else { return };
+        if let Some(reply) = ask::show(ctx, palette, question, &name) {
+            self.question = None;
+            ask::forget_focus(ctx);
+            obey::take_reply(self, ctx, reply);
+        }
+    }
+
+    /// Asks before the window closes with changes.
+    fn guard_closing(&mut self, ctx: &Context) {
+        let closing = ctx.input(|input| input.viewport().close_requested());
+        if closing && self.desk.is_changed() && !self.may_close {
+            ctx.send_viewport_cmd(ViewportCommand::CancelClose);
+            self.question = Some(Question::Unsaved(Command::Quit));
+        }
+    }
+
+    fn follow_title(&mut self, ctx: &Context) {
+        let mark = if self.desk.is_changed() { "● " } else { "" };
+        let title = format!("{mark}{} – Crestline", self.desk.file_name());
+        if title != self.title {
+            ctx.send_viewport_cmd(ViewportCommand::Title(title.clone()));
+            self.title = title;
+        }
+    }
+}
+
+/// The first file that has been dropped on the window.
+fn dropped(ctx: &Context) -> Option<Command> {
+    let path = ctx.input(|input| input.raw.dropped_files.first().map(|file| file.path().to_owned()));
+    path.map(Command::OpenFile)
+}
+
+impl eframe::App for Window {
+    fn ui(&mut self, ui: &mut Ui, _frame: &mut eframe::Frame) {
+        self.frame(ui);
+    }
+
+    fn clear_color(&self, visuals: &eframe::egui::Visuals) -> [f32; 4] {
+        visuals.panel_fill.to_normalized_gamma_f32()
+    }
+}

@@ -1,0 +1,227 @@
+//! What the window shows and how: nothing of it is saved with the plan.
+
+use std::collections::BTreeSet;
+
+use crate::fields::draft::Drafts;
+use crate::results::camera::Camera;
+use crate::results::error_plot::ErrorChoice;
+
+/// The pages of the window.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Page {
+    /// The plan's inputs beside the saddle that comes of them.
+    Saddle,
+    /// The errors of every fretted note as a table.
+    FrettedNotes,
+}
+
+impl Page {
+    /// All pages in the order of their tabs.
+    pub const ALL: [Self; 2] = [Self::Saddle, Self::FrettedNotes];
+
+    /// The word on its tab.
+    #[must_use]
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::Saddle => "Saddle",
+            Self::FrettedNotes => "Fretted notes",
+        }
+    }
+}
+
+/// The groups of fields beside the results.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Group {
+    /// Title and notes.
+    About,
+    /// Neck, frets and spacing.
+    Instrument,
+    /// The strings.
+    Strings,
+    /// Pressing, supports and slip.
+    Pressing,
+    /// The saddle.
+    Saddle,
+    /// The nut.
+    Nut,
+    /// The fit.
+    Fit,
+    /// The drawing.
+    Sheet,
+}
+
+impl Group {
+    /// The words on its heading.
+    #[must_use]
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::About => "Plan",
+            Self::Instrument => "Instrument and neck",
+            Self::Strings => "Strings",
+            Self::Pressing => "Pressing and supports",
+            Self::Saddle => "Saddle",
+            Self::Nut => "Nut",
+            Self::Fit => "Fit",
+            Self::Sheet => "Drawing",
+        }
+    }
+
+    /// The group that shows the field with this path.
+    #[must_use]
+    pub fn of_path(path: &str) -> Self {
+        let head = path.split(['.', '[']).next().unwrap_or_default();
+        match head {
+            "instrument" => Self::Instrument,
+            "strings" | "reference_hz" => Self::Strings,
+            "pressing" | "supports" | "slip" => Self::Pressing,
+            "saddle" | "as_built" => Self::Saddle,
+            "nut" => Self::Nut,
+            "fit" | "targets" => Self::Fit,
+            "sheet" => Self::Sheet,
+            _ => Self::About,
+        }
+    }
+}
+
+/// Light, dark, or as the system has it.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub enum ThemeChoice {
+    /// As the system has it; light where it does not say.
+    #[default]
+    System,
+    /// Dark on light.
+    Light,
+    /// Light on dark.
+    Dark,
+}
+
+impl ThemeChoice {
+    /// All choices in the order of the menu.
+    pub const ALL: [Self; 3] = [Self::System, Self::Light, Self::Dark];
+
+    /// The words in the menu.
+    #[must_use]
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::System => "Colours as the system has them",
+            Self::Light => "Light colours",
+            Self::Dark => "Dark colours",
+        }
+    }
+}
+
+/// What the table of the fretted notes shows.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum NoteFigure {
+    /// Errors as built.
+    Built,
+    /// Errors with the ideal setbacks.
+    Ideal,
+    /// Errors with no setback.
+    None,
+    /// Errors of the existing instrument.
+    AsItIs,
+    /// Force of the finger.
+    Force,
+}
+
+impl NoteFigure {
+    /// All of them in the order of the buttons.
+    pub const ALL: [Self; 5] = [Self::Built, Self::Ideal, Self::None, Self::AsItIs, Self::Force];
+
+    /// The word on the button.
+    #[must_use]
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::Built => "As built",
+            Self::Ideal => "Ideal",
+            Self::None => "No setback",
+            Self::AsItIs => "As it is now",
+            Self::Force => "Finger force",
+        }
+    }
+
+    /// One sentence on it.
+    #[must_use]
+    pub fn meaning(self) -> &'static str {
+        match self {
+            Self::Built => "Error in cents with the saddle and nut as they will be made. Plus is sharp.",
+            Self::Ideal => "Error in cents with the best setback of each string alone. Plus is sharp.",
+            Self::None => "Error in cents with crest and nut edge on the nominal lines. Plus is sharp.",
+            Self::AsItIs => "Error in cents of the existing instrument. Plus is sharp.",
+            Self::Force => "Force in newtons of the finger that holds the string down, with no setback.",
+        }
+    }
+}
+
+/// A line at the foot of the window about what has just been done.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Message {
+    /// The words.
+    pub text: String,
+    /// Whether something went wrong.
+    pub is_error: bool,
+}
+
+/// The state of the window.
+#[derive(Debug)]
+pub struct View {
+    /// The page that is shown.
+    pub page: Page,
+    /// Light or dark.
+    pub theme: ThemeChoice,
+    /// The chosen string, 0 first.
+    pub string: usize,
+    /// The groups that are folded away.
+    pub folded: BTreeSet<Group>,
+    /// What is being typed in fields, and what is wrong with it.
+    pub drafts: Drafts,
+    /// The path of a field that the next frame should go to.
+    pub going_to: Option<String>,
+    /// What the error curves show.
+    pub errors: ErrorChoice,
+    /// What the table of the fretted notes shows.
+    pub note_figure: NoteFigure,
+    /// Where the saddle layout is looked at from.
+    pub saddle_camera: Camera,
+    /// Where the nut end is looked at from.
+    pub nut_camera: Camera,
+    /// What has just been done.
+    pub message: Option<Message>,
+}
+
+impl View {
+    /// The window as it opens.
+    #[must_use]
+    pub fn new() -> Self {
+        Self {
+            page: Page::Saddle,
+            theme: ThemeChoice::default(),
+            string: 0,
+            folded: BTreeSet::from([Group::About, Group::Pressing, Group::Nut, Group::Fit, Group::Sheet]),
+            drafts: Drafts::default(),
+            going_to: None,
+            errors: ErrorChoice::default(),
+            note_figure: NoteFigure::Built,
+            saddle_camera: Camera::default(),
+            nut_camera: Camera::default(),
+            message: None,
+        }
+    }
+
+    /// Says something at the foot of the window.
+    pub fn say(&mut self, text: impl Into<String>) {
+        self.message = Some(Message { text: text.into(), is_error: false });
+    }
+
+    /// Says at the foot of the window what went wrong.
+    pub fn complain(&mut self, text: impl Into<String>) {
+        self.message = Some(Message { text: text.into(), is_error: true });
+    }
+}
+
+impl Default for View {
+    fn default() -> Self {
+        Self::new()
+    }
+}

@@ -5,6 +5,8 @@
 #![cfg_attr(test, allow(clippy::unwrap_used, clippy::expect_used, clippy::panic))]
 
 #[cfg(test)]
+mod command_line;
+#[cfg(test)]
 mod places;
 #[cfg(test)]
 mod published;

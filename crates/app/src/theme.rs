@@ -24,7 +24,7 @@ pub mod size {
     /// Height of a field's text.
     pub const FIELD_HEIGHT: f32 = 18.0;
     /// Margin inside a field.
-    pub const FIELD_MARGIN: Margin = Margin::symmetric(6, 2);
+    pub const FIELD_MARGIN: Margin = Margin::symmetric(4, 2);
     /// Width of the labels in front of fields.
     pub const LABEL: f32 = 148.0;
     /// Gap between things that belong together.
@@ -107,7 +107,7 @@ pub const LIGHT: Palette = Palette {
         Color32::from_rgb(0x00, 0x69, 0x52),
         Color32::from_rgb(0x95, 0x36, 0x73),
         Color32::from_rgb(0x6B, 0x5A, 0x00),
-        Color32::from_rgb(0x1F, 0x6C, 0x9C),
+        Color32::from_rgb(0x17, 0x61, 0x8E),
         Color32::from_rgb(0x8A, 0x53, 0x00),
         Color32::from_rgb(0x2B, 0x2F, 0x33),
     ],

@@ -168,7 +168,7 @@ fn text_box(ui: &mut Ui, form: &Form, spec: &Spec, id: Id, text: &mut String, wr
         .id(id)
         .frame(form.frame(ui, id, wrong))
         .hint_text(spec.hint)
-        .desired_width(spec.width - size::FIELD_MARGIN.sum().x)
+        .desired_width(spec.width)
         .clip_text(true)
         .align(Align2([spec.align, Align::Center]))
         .min_size(Vec2::new(0.0, size::FIELD_HEIGHT));

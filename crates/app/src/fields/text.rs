@@ -1,23 +1,33 @@
 //! Fields for text.
 
-use eframe::egui::{Id, Response, TextEdit, Ui};
+use eframe::egui::{Id, Response, TextEdit, Ui, Vec2};
 
 use super::form::Form;
 use super::number::{Spec, describe};
 use crate::edit::history::Edit;
+use crate::theme::size;
 
 /// A field for one line of text.
 pub fn line(ui: &mut Ui, form: &mut Form, spec: &Spec, value: &mut String) -> Response {
     let id = Id::unique(("text", &spec.path, spec.place));
-    let edit = TextEdit::singleline(value).id(id).hint_text(spec.hint).desired_width(spec.width);
+    let edit = TextEdit::singleline(value)
+        .id(id)
+        .frame(form.frame(ui, id, form.error(&spec.path).is_some()))
+        .hint_text(spec.hint)
+        .min_size(Vec2::new(0.0, size::FIELD_HEIGHT))
+        .desired_width(spec.width);
     finish(ui, form, spec, id, edit)
 }
 
 /// A field for several lines of text.
 pub fn lines(ui: &mut Ui, form: &mut Form, spec: &Spec, rows: usize, value: &mut String) -> Response {
     let id = Id::unique(("text", &spec.path, spec.place));
-    let edit =
-        TextEdit::multiline(value).id(id).hint_text(spec.hint).desired_width(spec.width).desired_rows(rows);
+    let edit = TextEdit::multiline(value)
+        .id(id)
+        .frame(form.frame(ui, id, form.error(&spec.path).is_some()))
+        .hint_text(spec.hint)
+        .desired_width(spec.width)
+        .desired_rows(rows);
     finish(ui, form, spec, id, edit)
 }
 

@@ -55,6 +55,7 @@ impl At {
 fn name_and_pitch(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString) {
     row(ui, "Name", |ui| {
         let spec = at.spec("name", "name", 0.0, "A name for the string; it stands in tables and drawings.");
+        let spec = spec.width(ui.available_width());
         text::line(ui, form, &spec, &mut string.name);
     });
     row(ui, "Pitch", |ui| {
@@ -104,12 +105,8 @@ fn core(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString) {
     });
     faults(ui, form, &[&at.path("core.tensile_mpa")]);
     row(ui, "Material", |ui| {
-        text::line(
-            ui,
-            form,
-            &at.spec("core.material", "core material", 0.0, "In words, for the tables."),
-            &mut core.material,
-        );
+        let spec = at.spec("core.material", "core material", 0.0, "In words, for the tables.");
+        text::line(ui, form, &spec.width(ui.available_width()), &mut core.material);
     });
 }
 

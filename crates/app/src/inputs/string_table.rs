@@ -45,8 +45,7 @@ fn heads(ui: &mut Ui, form: &Form, width: f32) {
         ui.add_space(NUMBER_WIDTH + ui.spacing().item_spacing.x);
         for head in HEADS {
             let (rect, _) = ui.allocate_exact_size(Vec2::new(width, 30.0), Sense::hover());
-            let font = FontId::proportional(size::SMALL);
-            ui.painter().text(rect.center_bottom(), Align2::CENTER_BOTTOM, head, font, form.palette.quiet);
+            marks::head(ui.painter(), rect.center_bottom(), Align2::CENTER_BOTTOM, head, form.palette.quiet);
         }
     });
 }

@@ -46,11 +46,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString) {
     });
     faults(ui, form, &[&at.path("wrap.density_kg_m3")]);
     row(ui, "Wrap material", |ui| {
-        text::line(
-            ui,
-            form,
-            &at.spec("wrap.material", "wrap material", 0.0, "In words, for the tables."),
-            &mut wrap.material,
-        );
+        let spec = at.spec("wrap.material", "wrap material", 0.0, "In words, for the tables.");
+        text::line(ui, form, &spec.width(ui.available_width()), &mut wrap.material);
     });
 }

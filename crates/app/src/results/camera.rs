@@ -14,6 +14,7 @@ const SCALE_MM: [f64; 2] = [0.002, 4.0];
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
 pub struct Camera {
     chosen: Option<Look>,
+    asked_steps: i32,
 }
 
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -44,8 +45,12 @@ impl Camera {
         PlotBounds::from_min_max([x - dx, y - dy], [x + dx, y + dy])
     }
 
-    /// Zooms in by some steps, or out where they are negative.
-    pub fn zoom(&mut self, steps: i32, rect: Rect, whole: &PlotBounds) {
+    /// Zooms in by some steps when the plot is next shown, or out where they are negative.
+    pub fn zoom_later(&mut self, steps: i32) {
+        self.asked_steps += steps;
+    }
+
+    fn zoom(&mut self, steps: i32, rect: Rect, whole: &PlotBounds) {
         let mut look = self.chosen.unwrap_or_else(|| fit(rect, whole));
         look.mm_per_point = (look.mm_per_point * ZOOM_STEP.powi(-steps)).clamp(SCALE_MM[0], SCALE_MM[1]);
         self.chosen = Some(look);
@@ -54,6 +59,11 @@ impl Camera {
     /// Follows what the pointer and the keys did to the plot.
     pub fn follow(&mut self, ui: &Ui, response: &Response, transform: &PlotTransform, whole: &PlotBounds) {
         let rect = response.rect;
+        let asked = std::mem::take(&mut self.asked_steps);
+        if asked != 0 {
+            self.zoom(asked, rect, whole);
+            ui.ctx().request_repaint();
+        }
         let scrolled = response.contains_pointer() && ui.input(|i| i.zoom_delta() != 1.0);
         if response.dragged() || scrolled {
             self.chosen = Some(look_of(transform));

@@ -4,6 +4,7 @@ use crestline_plan::{FretReport, StringReport};
 use eframe::egui::{Checkbox, Color32, RichText, Ui, Vec2, Vec2b, WidgetInfo, accesskit};
 use egui_plot::{HLine, HoverPosition, Line, LineStyle, Plot, PlotBounds, PlotPoints, PlotUi, Points, Span};
 
+use super::axes::{Along, with_axes};
 use super::figures;
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, marker};
@@ -42,7 +43,7 @@ struct Kind {
 }
 
 const NONE: Kind =
-    Kind { word: "no setback", style: LineStyle::Dotted { spacing: 5.0 }, of: |fret| Some(fret.none_cents) };
+    Kind { word: "no setback", style: LineStyle::Dotted { spacing: 6.0 }, of: |fret| Some(fret.none_cents) };
 const IDEAL: Kind =
     Kind { word: "ideal", style: LineStyle::Dashed { length: 9.0 }, of: |fret| Some(fret.ideal_cents) };
 const BUILT: Kind = Kind { word: "as built", style: LineStyle::Solid, of: |fret| Some(fret.built_cents) };
@@ -77,7 +78,7 @@ pub fn show(
     let curves = curves(strings, chosen, choice);
     let whole = whole(outcome, &curves);
     let bounds = choice.looking.unwrap_or(whole);
-    let plot = fret_plot("errors of the fretted notes").height(height).y_axis_label("cents");
+    let plot = fret_plot("errors of the fretted notes", palette).height(height);
     let shown = plot.show(ui, |plot| {
         plot.set_plot_bounds(bounds);
         frame(plot, palette, outcome.plan.fit.frets, &bounds);
@@ -97,33 +98,22 @@ pub fn show(
 }
 
 /// A plot over the frets.
-pub fn fret_plot<'a>(name: &'static str) -> Plot<'a> {
-    Plot::new(name)
+pub fn fret_plot<'a>(name: &'static str, palette: &'static Palette) -> Plot<'a> {
+    let plot = Plot::new(name)
         .allow_scroll(false)
         .allow_boxed_zoom(false)
         .allow_double_click_reset(false)
         .allow_axis_zoom_drag(false)
         .show_crosshair(false)
         .show_grid(Vec2b::new(false, true))
-        .x_grid_spacer(every_fret)
         .min_size(Vec2::new(120.0, 80.0))
-        .y_axis_formatter(|mark, _| figures::fixed(mark.value, usize::from(mark.step_size < 1.0)))
         .label_formatter(|hover| match hover {
             HoverPosition::NearDataPoint { plot_name, position, .. } if !plot_name.is_empty() => {
                 Some(format!("{plot_name}, fret {:.0}: {} cents", position.x, figures::cents(position.y)))
             }
             _ => None,
-        })
-}
-
-/// A mark at every fret, or at every third where they would crowd.
-fn every_fret(input: egui_plot::GridInput) -> Vec<egui_plot::GridMark> {
-    let step = if input.bounds.1 - input.bounds.0 > 30.0 { 3.0 } else { 1.0 };
-    let first = (input.bounds.0 / step).ceil().max(0.0) as i64;
-    let last = (input.bounds.1 / step).floor() as i64;
-    (first..=last.min(first + 60))
-        .map(|i| egui_plot::GridMark { value: i as f64 * step, step_size: step })
-        .collect()
+        });
+    with_axes(plot, palette, Along::Frets, ["", "cents"])
 }
 
 /// The ground of a plot over the frets: the frets of the fit, and the zero line.
@@ -178,6 +168,7 @@ fn draw(plot: &mut PlotUi<'_>, palette: &Palette, curve: &Curve) {
     let colour: Color32 = palette.string(curve.string);
     let (width, radius) = if curve.is_chosen { (2.4, 4.0) } else { (1.0, 2.8) };
     let line: PlotPoints<'_> = curve.points.clone().into();
+    let width = if matches!(curve.style, LineStyle::Dotted { .. }) { 0.75 * width } else { width };
     plot.line(Line::new("", line).color(colour).width(width).style(curve.style).allow_hover(false));
     let solid = matches!(curve.style, LineStyle::Solid);
     let marks: PlotPoints<'_> = curve.points.clone().into();

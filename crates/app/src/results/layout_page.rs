@@ -1,6 +1,6 @@
 //! The page `Saddle`: plan view, errors and their parts, schedule and notices.
 
-use eframe::egui::{Button, Frame, Margin, Panel, RichText, ScrollArea, Stroke, Ui};
+use eframe::egui::{Align, Button, Frame, Layout, Margin, Panel, RichText, ScrollArea, Stroke, Ui, Vec2};
 
 use super::{error_plot, layout_plot, notices, nut_plot, schedule, split_plot, table};
 use crate::edit::command::Command;
@@ -20,17 +20,21 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mu
         .resizable(true)
         .default_size(table_height)
         .min_size(120.0)
+        .show_separator_line(false)
         .frame(sheet(palette))
         .show(ui, |ui| {
             commands.extend(bottom(ui, palette, outcome, view));
         });
     let width = (0.36 * ui.available_width()).clamp(260.0, 620.0);
-    Panel::left("plan view").resizable(true).default_size(width).min_size(220.0).frame(sheet(palette)).show(
-        ui,
-        |ui| {
+    Panel::left("plan view")
+        .resizable(true)
+        .default_size(width)
+        .min_size(220.0)
+        .show_separator_line(false)
+        .frame(sheet(palette))
+        .show(ui, |ui| {
             commands.extend(plan_view(ui, palette, outcome, view));
-        },
-    );
+        });
     Frame::new().inner_margin(Margin::same(0)).show(ui, |ui| curves(ui, palette, outcome, view));
     commands
 }
@@ -44,28 +48,41 @@ fn sheet(palette: &Palette) -> Frame {
 }
 
 fn title(ui: &mut Ui, text: &str) {
-    ui.label(RichText::new(text).strong());
+    ui.label(RichText::new(text).heading());
 }
 
 fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) -> Vec<Command> {
     let mut commands = Vec::new();
     ui.horizontal(|ui| {
-        title(ui, "Saddle in plan, setbacks in mm");
-        let whole = view.saddle_camera.shows_whole() && view.nut_camera.shows_whole();
-        let reset = Button::new(RichText::new("Whole").small());
-        let response = ui.add_enabled(!whole, reset).on_hover_text("Show the whole layout again");
-        if response.clicked() {
-            commands.push(Command::ResetPlots);
-        }
+        title(ui, "Saddle in plan");
+        ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
+            let whole = view.saddle_camera.shows_whole() && view.nut_camera.shows_whole();
+            let button = Button::new(RichText::new("Show all").small());
+            let response = ui.add_enabled(!whole, button).on_hover_text("Show the whole layout again");
+            if response.clicked() {
+                commands.push(Command::ResetPlots);
+            }
+            for (sign, name, steps) in [("+", "Zoom in", 1), ("−", "Zoom out", -1)] {
+                let button = Button::new(RichText::new(sign).small()).min_size(Vec2::new(22.0, 0.0));
+                let response = ui.add(button).on_hover_text(name);
+                response.ctx.accesskit_node_builder(response.id, |node| node.set_label(name));
+                if response.clicked() {
+                    view.saddle_camera.zoom_later(steps);
+                }
+            }
+        });
     });
+    ui.label(RichText::new("╌ nominal   ○ ideal   ● crest   setbacks in mm").small().color(palette.quiet));
     if layout_plot::nut_is_moved(&outcome.solution.layout) {
-        let width = 0.36 * ui.available_width();
-        Panel::left("nut end").resizable(true).default_size(width).min_size(90.0).frame(Frame::new()).show(
-            ui,
-            |ui| {
-                nut_plot::show(ui, palette, outcome, view.string, &mut view.nut_camera);
-            },
-        );
+        let width = 0.4 * ui.available_width();
+        let panel = Panel::left("nut end")
+            .resizable(true)
+            .default_size(width)
+            .min_size(90.0)
+            .show_separator_line(false);
+        panel.frame(Frame::new()).show(ui, |ui| {
+            nut_plot::show(ui, palette, outcome, view.string, &mut view.nut_camera);
+        });
     }
     layout_plot::show(ui, palette, outcome, view.string, &mut view.saddle_camera);
     commands

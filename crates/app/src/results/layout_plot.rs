@@ -2,8 +2,9 @@
 
 use crestline_plan::{Layout, Point, SaddleStyle, StringLine};
 use eframe::egui::{Align2, Ui, Vec2, WidgetInfo, accesskit};
-use egui_plot::{LineStyle, Plot, PlotBounds, PlotUi};
+use egui_plot::{HoverPosition, LineStyle, Plot, PlotBounds, PlotUi};
 
+use super::axes::{Along, with_axes};
 use super::camera::Camera;
 use super::figures;
 use super::plan_items::{at_x, line, mark, outline, text};
@@ -25,7 +26,7 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
     let whole = whole(outcome);
     let looking = *camera;
     let datum_x = layout.datum_x_mm;
-    let plot = plan_plot("saddle in plan", datum_x).height(ui.available_height());
+    let plot = plan_plot("saddle in plan", palette, datum_x).height(ui.available_height());
     let shown = plot.show(ui, |plot| {
         let rect = plot.response().rect;
         let bounds = looking.bounds(rect, &whole);
@@ -39,28 +40,21 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
 }
 
 /// A plot for a plan view: drag pans, the wheel zooms, and the axis counts from the datum.
-pub fn plan_plot<'a>(name: &'static str, datum_x: f64) -> Plot<'a> {
-    Plot::new(name)
+pub fn plan_plot<'a>(name: &'static str, palette: &'static Palette, datum_x: f64) -> Plot<'a> {
+    let plot = Plot::new(name)
         .allow_scroll(false)
         .allow_boxed_zoom(false)
         .allow_double_click_reset(false)
         .allow_axis_zoom_drag(false)
         .show_crosshair(false)
         .min_size(Vec2::new(60.0, 60.0))
-        .x_axis_formatter(move |mark, _| figures::fixed(mark.value - datum_x, decimals(mark.step_size)))
-        .y_axis_formatter(|mark, _| figures::fixed(mark.value, decimals(mark.step_size)))
-        .label_formatter(move |_| None)
-}
-
-/// Decimals for a grid of this step.
-fn decimals(step: f64) -> usize {
-    if step >= 1.0 {
-        0
-    } else if step >= 0.1 {
-        1
-    } else {
-        2
-    }
+        .label_formatter(|hover| match hover {
+            HoverPosition::NearDataPoint { plot_name, .. } if !plot_name.is_empty() => {
+                Some((*plot_name).to_owned())
+            }
+            _ => None,
+        });
+    with_axes(plot, palette, Along::From(datum_x), ["", ""])
 }
 
 struct Drawing<'a> {
@@ -144,7 +138,7 @@ fn crest(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLi
     mark(plot, &format!("String {number}, crest"), string.crest, index, colour, true, 4.5);
     let rightmost =
         string.crest.x.max(string.ideal_crest.x).max(string.as_built.map_or(f64::MIN, |now| now.x));
-    let beside = Point { x: rightmost + 9.0 * d.mm_per_point, y: string.crest.y };
+    let beside = Point { x: rightmost + 11.0 * d.mm_per_point, y: string.crest.y };
     let words = figures::mm(report.built.saddle_setback_mm);
     text(plot, beside, words, d.palette.ink, Align2::LEFT_CENTER);
 }

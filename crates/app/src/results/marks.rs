@@ -1,13 +1,22 @@
-//! The strings' markers, painted outside plots.
+//! The strings' markers and other small things that are painted outside plots.
 
-use eframe::egui::{Color32, Painter, Pos2, Shape, Stroke, Vec2, vec2};
+use eframe::egui::{Align2, Color32, FontId, Painter, Pos2, Shape, Stroke, Vec2, vec2};
 use egui_plot::MarkerShape;
 
-use crate::theme::{Palette, marker};
+use crate::theme::{Palette, marker, size};
 
 /// Paints the marker of string `index` (0 first) about `centre`.
 pub fn paint(painter: &Painter, centre: Pos2, index: usize, palette: &Palette, radius: f32) {
     painter.extend(shapes(marker(index), centre, radius, palette.string(index)));
+}
+
+/// Paints the lines of a head, each aligned by itself; `anchor` says which side of the last one stands at `at`.
+pub fn head(painter: &Painter, at: Pos2, anchor: Align2, words: &str, colour: Color32) {
+    const LINE: f32 = 14.0;
+    for (up, line) in words.lines().rev().enumerate() {
+        let font = FontId::proportional(size::SMALL);
+        painter.text(at - Vec2::new(0.0, LINE * up as f32), anchor, line, font, colour);
+    }
 }
 
 fn shapes(marker: MarkerShape, centre: Pos2, r: f32, colour: Color32) -> Vec<Shape> {

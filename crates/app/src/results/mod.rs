@@ -1,5 +1,6 @@
 //! What comes of the plan: the saddle in plan, the errors of the fretted notes, and the schedule.
 
+pub mod axes;
 pub mod camera;
 pub mod error_plot;
 pub mod figures;

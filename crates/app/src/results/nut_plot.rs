@@ -20,7 +20,7 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
     let points: Vec<Point> = layout.strings.iter().flat_map(|s| [s.nut, s.nut_edge]).collect();
     let whole = around(&points, ROOM_MM);
     let looking = *camera;
-    let plot = plan_plot("nut in plan", layout.datum_x_mm).height(ui.available_height());
+    let plot = plan_plot("nut in plan", palette, layout.datum_x_mm).height(ui.available_height());
     let shown = plot.show(ui, |plot| {
         let rect = plot.response().rect;
         let bounds = looking.bounds(rect, &whole);

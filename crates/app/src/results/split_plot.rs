@@ -40,11 +40,7 @@ pub fn legend(ui: &mut Ui, palette: &Palette, chosen: usize) {
 pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: usize, height: f32) {
     let Some(string) = outcome.solution.report.strings.get(chosen) else { return };
     let bounds = whole(string, outcome.plan.instrument.frets);
-    let plot = fret_plot("parts of the error")
-        .height(height)
-        .y_axis_label("cents")
-        .allow_drag(false)
-        .allow_zoom(false);
+    let plot = fret_plot("parts of the error", palette).height(height).allow_drag(false).allow_zoom(false);
     let shown = plot.show(ui, |plot| {
         plot.set_plot_bounds(bounds);
         frame(plot, palette, outcome.plan.fit.frets, &bounds);

@@ -85,12 +85,11 @@ fn heads(ui: &mut Ui, palette: &Palette, columns: &[Column], edges: &[f32]) {
     let (rect, _) = ui.allocate_exact_size(Vec2::new(ui.available_width(), HEAD), Sense::hover());
     for (column, side) in columns.iter().zip(edges.windows(2)) {
         let (x, anchor) = place(column, side, rect);
-        let font = FontId::proportional(size::SMALL);
-        ui.painter().text(
+        marks::head(
+            ui.painter(),
             pos2(x, rect.bottom() - 4.0),
             anchor_bottom(anchor),
             column.head,
-            font,
             palette.quiet,
         );
     }

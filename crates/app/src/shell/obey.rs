@@ -3,6 +3,7 @@
 use std::path::{Path, PathBuf};
 
 use crestline_plan::{example, read_draft};
+use crestline_sheets::{Format, SheetOptions, export};
 use eframe::egui::{Context, ViewportCommand};
 
 use super::ask::{Question, Reply};
@@ -34,7 +35,7 @@ pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
         Command::OpenFile(path) => open(window, &path),
         Command::Save => save(window, ctx),
         Command::SaveAs => pick(window, ctx, Purpose::Save),
-        Command::ExportDrawing => export(window, ctx),
+        Command::ExportDrawing => ask_for_drawing(window, ctx),
         Command::Quit => ctx.send_viewport_cmd(ViewportCommand::Close),
         Command::Undo => step(window, true),
         Command::Redo => step(window, false),
@@ -187,7 +188,7 @@ fn save_to(window: &mut Window, path: PathBuf) -> bool {
     }
 }
 
-fn export(window: &mut Window, ctx: &Context) {
+fn ask_for_drawing(window: &mut Window, ctx: &Context) {
     let is_current = window.desk.faults().is_empty() && window.view.drafts.errors().next().is_none();
     if is_current && window.desk.outcome().is_some() {
         pick(window, ctx, Purpose::Drawing);
@@ -270,9 +271,17 @@ fn use_path(window: &mut Window, purpose: Purpose, path: PathBuf) {
     }
 }
 
+/// Writes the drawing of the last good result in the format that the file's ending names.
 fn write_drawing(window: &mut Window, path: &Path) {
-    let Some(_outcome) = window.desk.outcome() else { return };
-    let bytes: Vec<u8> = Vec::new();
+    let Some(outcome) = window.desk.outcome() else { return };
+    let ending = path.extension().map(|ending| ending.to_string_lossy().into_owned()).unwrap_or_default();
+    let Some(format) = Format::of_ending(&ending) else {
+        let known = Format::ALL.map(Format::ending).join(", ");
+        window.view.complain(format!("A drawing cannot be written as .{ending}; endings that can: {known}"));
+        return;
+    };
+    let options = SheetOptions::for_plan(&outcome.plan);
+    let bytes = export(format, &outcome.plan, &outcome.solution, &options);
     match files::write(path, &bytes) {
         Ok(()) => window.view.say(format!("Drawing written to {}", path.display())),
         Err(words) => window.view.complain(words),

@@ -1,0 +1,77 @@
+//! The schedule of crests and the table of slots or pieces.
+
+use crate::block::Block;
+use crate::facts::Facts;
+use crate::lengths::{cents, decimals};
+use crate::table::{Column, Table};
+
+/// One row a string.
+pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
+    let unit = facts.options.units.sign();
+    let mut block = Block::new("Schedule", format!("Schedule of crests, x from the {}", facts.datum_words()));
+    let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
+    let columns = vec![
+        Column { heading: ["String", ""], unit: "", width_mm: 24.0, number: false },
+        number("Gauge", "(w wound)", unit, 18.0),
+        number("Ideal", "setback", unit, 15.0),
+        number("Built", "setback", unit, 15.0),
+        number("Crest", "x", unit, 16.0),
+        number("Crest", "y", unit, 16.0),
+        number("Slot", "offset", unit, 15.0),
+        number("Crest", "height", unit, 15.0),
+        number("Fret 12", "error", "cents", 15.0),
+        number("Worst", "error", "cents", 15.0),
+    ];
+    let rows = facts.strings.iter().map(|s| {
+        let gauge = facts.options.units.gauge(s.gauge_mm);
+        vec![
+            s.label(),
+            if s.wound { format!("{gauge} w") } else { gauge },
+            facts.text(s.ideal_setback_mm),
+            facts.text(s.built.saddle_setback_mm),
+            facts.x_text(s.crest.x),
+            facts.text(s.crest.y),
+            s.built.slot_offset_mm.map_or_else(|| "–".to_owned(), |mm| facts.text(mm)),
+            facts.text(s.built.crest_mm.z),
+            s.octave_cents.map_or_else(|| "–".to_owned(), cents),
+            decimals(s.built.max_cents, 1),
+        ]
+    });
+    Table { columns, rows: rows.collect() }.draw(&mut block);
+    block
+}
+
+/// The ends of every slot or piece; `None` where there is none.
+pub(crate) fn slots(facts: &Facts<'_>) -> Option<Block> {
+    if facts.slots.is_empty() {
+        return None;
+    }
+    let unit = facts.options.units.sign();
+    let title = format!("Ends of the centre line of each slot or piece, x from the {}", facts.datum_words());
+    let mut block = Block::new("Slot", title);
+    let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
+    let columns = vec![
+        Column { heading: ["", ""], unit: "", width_mm: 26.0, number: false },
+        number("Treble", "end x", unit, 20.0),
+        number("Treble", "end y", unit, 20.0),
+        number("Bass", "end x", unit, 20.0),
+        number("Bass", "end y", unit, 20.0),
+        number("Length", "", unit, 20.0),
+        number("Width", "", unit, 20.0),
+        number("Slant", "", "degrees", 20.0),
+    ];
+    let rows = facts.slots.iter().map(|slot| {
+        vec![
+            slot.name.clone(),
+            facts.x_text(slot.treble_end.x),
+            facts.text(slot.treble_end.y),
+            facts.x_text(slot.bass_end.x),
+            facts.text(slot.bass_end.y),
+            facts.text(slot.length_mm()),
+            facts.text(slot.width_mm),
+            decimals(slot.slant_degrees(), 2),
+        ]
+    });
+    Table { columns, rows: rows.collect() }.draw(&mut block);
+    Some(block)
+}

@@ -1,0 +1,119 @@
+//! No text of any sheet lies on another or outside the frame, for all examples, papers and units,
+//! and for plans at the limits of what is legal.
+#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+
+mod cases;
+
+use cases::{all_options, cases};
+use crestline_drawing::{Drawing, Mark, Point, Rect, Sheet, TextRun};
+use crestline_sheets::{machine, sheets};
+
+/// Boxes that share no more than this are side by side; sums of lengths are rounded.
+const TOUCH_MM: f64 = 1e-6;
+
+fn texts(sheet: &Sheet) -> Vec<TextRun> {
+    let of_text = |mark| if let Mark::Text(run) = mark { Some(run) } else { None };
+    sheet
+        .primitives()
+        .into_iter()
+        .filter_map(|p| of_text(p.mark))
+        .filter(|run| !run.content.trim().is_empty())
+        .collect()
+}
+
+/// Whether two convex boxes overlap, by the separating axis theorem.
+fn overlap(a: &[Point; 4], b: &[Point; 4]) -> bool {
+    let sides = [a, b].into_iter().flat_map(|c| [c[1].minus(c[0]).unit(), c[3].minus(c[0]).unit()]);
+    let reach = |corners: &[Point; 4], axis: Point| {
+        corners.iter().map(|p| p.dot(axis)).fold((f64::MAX, f64::MIN), |(l, h), v| (l.min(v), h.max(v)))
+    };
+    sides.into_iter().all(|axis| {
+        let ((a_low, a_high), (b_low, b_high)) = (reach(a, axis), reach(b, axis));
+        a_high - b_low > TOUCH_MM && b_high - a_low > TOUCH_MM
+    })
+}
+
+fn overlaps(drawing: &Drawing) -> Vec<String> {
+    let mut found = vec![];
+    for sheet in &drawing.sheets {
+        let runs = texts(sheet);
+        for (i, a) in runs.iter().enumerate() {
+            for b in &runs[i + 1..] {
+                if overlap(&a.corners(), &b.corners()) {
+                    found.push(format!(
+                        "{}: {:?} at {:?} and {:?} at {:?}",
+                        sheet.name, a.content, a.at, b.content, b.at
+                    ));
+                }
+            }
+        }
+    }
+    found
+}
+
+/// The frame is 20 mm from the left edge and 10 mm from the others (ISO 5457).
+fn outside_the_frame(drawing: &Drawing) -> Vec<String> {
+    let mut found = vec![];
+    for sheet in &drawing.sheets {
+        let Rect { min, max } = sheet.area;
+        let frame =
+            Rect::new(min.x + 20.0, min.y + 10.0, max.x - min.x - 30.0, max.y - min.y - 20.0).grown(1e-6);
+        for primitive in sheet.primitives() {
+            let bounds = primitive.mark.bounds().unwrap();
+            if !(frame.contains(bounds.min) && frame.contains(bounds.max)) {
+                found.push(format!("{}: {:?}", sheet.name, primitive.mark));
+            }
+        }
+    }
+    found
+}
+
+#[test]
+fn texts_keep_apart_and_inside_the_frame() {
+    let mut seen = 0;
+    let mut faults = vec![];
+    for case in cases() {
+        for options in all_options(&case.plan) {
+            let drawing = sheets(&case.plan, &case.solution, &options);
+            seen += drawing.sheets.iter().map(|sheet| texts(sheet).len()).sum::<usize>();
+            for fault in overlaps(&drawing).into_iter().chain(outside_the_frame(&drawing)) {
+                faults.push(format!("{} {options:?}\n   {fault}", case.name));
+            }
+        }
+    }
+    assert!(seen > 10_000, "{seen} texts");
+    assert!(
+        faults.is_empty(),
+        "{} faults, such as\n{}",
+        faults.len(),
+        faults[..faults.len().min(12)].join("\n")
+    );
+}
+
+#[test]
+fn the_machine_drawings_texts_keep_apart() {
+    let mut faults = vec![];
+    for case in cases() {
+        for options in all_options(&case.plan) {
+            let found = overlaps(&machine(&case.plan, &case.solution, &options));
+            faults.extend(found.into_iter().map(|fault| format!("{} {options:?}\n   {fault}", case.name)));
+        }
+    }
+    assert!(
+        faults.is_empty(),
+        "{} faults, such as\n{}",
+        faults.len(),
+        faults[..faults.len().min(12)].join("\n")
+    );
+}
+
+#[test]
+fn overlap_is_seen_where_there_is_one() {
+    let run = |x: f64, angle: f64| {
+        crestline_drawing::Text::new(crestline_drawing::pt(x, 0.0), 2.5, "HHHH").turned(angle).run().corners()
+    };
+    assert!(overlap(&run(0.0, 0.0), &run(3.0, 0.0)));
+    assert!(overlap(&run(0.0, 0.0), &run(3.0, 90.0)));
+    assert!(!overlap(&run(0.0, 0.0), &run(20.0, 0.0)));
+    assert!(!overlap(&run(0.0, 45.0), &run(6.0, 45.0)));
+}

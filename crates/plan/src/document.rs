@@ -154,6 +154,7 @@ pub struct PlanString {
     #[serde(skip_serializing_if = "Option::is_none")]
     pub wrap: Option<Wrap>,
     /// Measured values, each of which overrides the computed one.
+    #[serde(skip_serializing_if = "Measured::is_empty")]
     pub measured: Measured,
     /// Height of the open string over the frets.
     pub action_mm: Action,
@@ -222,6 +223,14 @@ pub struct Measured {
     /// Bending stiffness, N·mm².
     #[serde(skip_serializing_if = "Option::is_none")]
     pub bending_stiffness_n_mm2: Option<f64>,
+}
+
+impl Measured {
+    /// Whether nothing is measured.
+    #[must_use]
+    pub fn is_empty(&self) -> bool {
+        *self == Self::default()
+    }
 }
 
 /// Gap between a fret's crown and the underside of the open string, mm.

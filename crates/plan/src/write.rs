@@ -71,21 +71,31 @@ fn lines<'v>(
     text.push(close);
 }
 
-/// The value on one line, where it holds nothing but plain values.
+/// The value on one line, where it holds nothing but plain values and lists of them.
 fn one_line(value: &Value) -> Option<String> {
-    let plain = |item: &Value| !item.is_array() && !item.is_object();
     match value {
-        Value::Array(items) if items.iter().all(plain) => {
-            Some(format!("[{}]", items.iter().map(scalar).collect::<Vec<_>>().join(", ")))
-        }
+        Value::Array(items) => plain_list(items),
         Value::Object(entries) if entries.is_empty() => Some("{}".to_owned()),
-        Value::Object(entries) if entries.values().all(plain) => {
-            let fields =
-                entries.iter().map(|(key, item)| format!("{}: {}", Value::from(key.as_str()), scalar(item)));
-            Some(format!("{{ {} }}", fields.collect::<Vec<_>>().join(", ")))
+        Value::Object(entries) => {
+            let field = |(key, item): (&String, &Value)| {
+                let item = match item {
+                    Value::Array(items) => plain_list(items)?,
+                    Value::Object(_) => return None,
+                    plain => scalar(plain),
+                };
+                Some(format!("{}: {item}", Value::from(key.as_str())))
+            };
+            let fields: Option<Vec<String>> = entries.iter().map(field).collect();
+            fields.map(|fields| format!("{{ {} }}", fields.join(", ")))
         }
         _ => None,
     }
+}
+
+fn plain_list(items: &[Value]) -> Option<String> {
+    let plain = |item: &Value| (!item.is_array() && !item.is_object()).then(|| scalar(item));
+    let items: Option<Vec<String>> = items.iter().map(plain).collect();
+    items.map(|items| format!("[{}]", items.join(", ")))
 }
 
 /// A plain value; a whole number without the `.0` that serde_json puts behind it.
@@ -94,5 +104,47 @@ fn scalar(value: &Value) -> String {
     match (value, text.strip_suffix(".0")) {
         (Value::Number(_), Some(whole)) if whole != "-0" => whole.to_owned(),
         _ => text,
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::{Instrument, PlanString, Spread, read_draft};
+
+    fn plan() -> Plan {
+        Plan::new(
+            Instrument::ordinary(650.0, 20, Spread { nut: 0.0, saddle: 0.0 }),
+            vec![PlanString::starting(1, false)],
+        )
+    }
+
+    #[test]
+    fn short_parts_stand_on_a_line_and_long_ones_do_not() {
+        let text = write(&plan());
+        assert!(
+            text.contains("\n  \"fit\": { \"rule\": \"least_squares\", \"frets\": [1, 12] },\n"),
+            "{text}"
+        );
+        assert!(text.contains("\n      \"core\": {\n        \"shape\": \"round\",\n"), "{text}");
+        assert!(text.lines().all(|line| line.chars().count() < 130), "{text}");
+    }
+
+    #[test]
+    fn numbers_keep_every_digit() {
+        for value in [650.0, 0.1 + 0.2, 1e-7, 123_456_789.123_456_78, 5e-324, -0.0, 1e22] {
+            let mut plan = plan();
+            plan.instrument.relief_mm = value;
+            let back = read_draft(&write(&plan)).map(|plan| plan.instrument.relief_mm.to_bits());
+            assert_eq!(back, Ok(value.to_bits()), "{value}");
+        }
+    }
+
+    #[test]
+    fn a_number_that_is_none_cannot_be_read_as_one() {
+        let mut plan = plan();
+        plan.instrument.relief_mm = f64::NAN;
+        assert!(write(&plan).contains("\"relief_mm\": null"));
+        assert_eq!(read_draft(&write(&plan)).map_err(|faults| faults.len()), Err(1));
     }
 }

@@ -1,4 +1,5 @@
 //! Legal plans of every kind, drawn at random over the whole of the allowed ranges.
+#![allow(dead_code)] // Each test program uses its part of this.
 
 use crestline_plan::limits::{self, Range};
 use crestline_plan::{
@@ -236,4 +237,35 @@ pub fn legal_plan() -> BoxedStrategy<Plan> {
         }
     });
     plan.prop_filter("some fans, frets and actions do not go together", |plan| check(plan).is_ok()).boxed()
+}
+
+/// A legal plan with strings that a maker could have put on: steel or polymer, plain or wound, of a section that
+/// brings the pitch at 20 to 150 N; relief up to 0.3 mm, actions of 0.2 to 0.8 mm and 1.5 to 4 mm.
+pub fn likely_plan() -> BoxedStrategy<Plan> {
+    let string = (20.0..150.0_f64, any::<bool>(), any::<bool>(), 0.2..0.8, 1.5..4.0);
+    let likely = (legal_plan(), vec(string, 16), 0.0..0.3, 0.0..0.2, 0.2..0.6).prop_map(
+        |(mut plan, strings, relief_mm, depth_mm, finger_fraction)| {
+            let scale_mm = match plan.instrument.scale {
+                Scale::Single(scale_mm) => scale_mm,
+                Scale::Fanned(fan) => fan.treble,
+            };
+            plan.instrument.relief_mm = relief_mm;
+            plan.pressing = Pressing { finger_fraction, depth_mm };
+            for (string, (tension_n, steel, wound, first, twelfth)) in plan.strings.iter_mut().zip(strings) {
+                // The open string of 650 mm at 330 Hz and its like at other scales.
+                let frequency_hz = if wound { 110.0 } else { 330.0 } * 650.0 / scale_mm;
+                let unit_mass = tension_n / (2.0 * scale_mm / 1000.0 * frequency_hz).powi(2);
+                let (density, modulus) = if steel { (7850.0, 200.0) } else { (1200.0, 5.0) };
+                let solid_mm = 2000.0 * (unit_mass / density / std::f64::consts::PI).sqrt();
+                string.core = Core::steel(if wound { solid_mm * 0.4 } else { solid_mm });
+                (string.core.density_kg_m3, string.core.youngs_modulus_gpa) = (density, modulus);
+                (string.wrap, string.pitch) = (None, Pitch::FrequencyHz(frequency_hz));
+                string.measured = Measured { unit_mass_kg_per_m: Some(unit_mass), ..Measured::default() };
+                string.action_mm.first = string.action_mm.first.map(|_| first);
+                string.action_mm.twelfth = twelfth;
+            }
+            plan
+        },
+    );
+    likely.prop_filter("the parts go together", |plan| check(plan).is_ok()).boxed()
 }

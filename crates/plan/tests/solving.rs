@@ -1,0 +1,111 @@
+//! Every legal plan is solved and compared, or refused with the field that is the cause; nothing that is not finite
+//! comes out.
+#![allow(clippy::unwrap_used, clippy::panic, missing_docs)]
+
+mod common;
+
+use common::{legal_plan, likely_plan};
+use crestline_plan::{Checked, Fault, Point, check, compare, solve};
+use proptest::prelude::*;
+use proptest::test_runner::RngSeed;
+use serde_json::Value;
+
+/// Keys whose value may be absent.
+const MAY_BE_NULL: [&str; 5] =
+    ["breaking_fraction", "as_built_cents", "touches_fret", "slot_offset_mm", "split_after"];
+
+/// A number that is not finite is `null` in JSON.
+fn assert_finite(value: &Value, key: &str, path: &str) {
+    match value {
+        Value::Null => assert!(MAY_BE_NULL.contains(&key), "{path} is not finite"),
+        Value::Object(entries) => {
+            entries.iter().for_each(|(key, inner)| assert_finite(inner, key, &format!("{path}.{key}")));
+        }
+        Value::Array(items) => {
+            items
+                .iter()
+                .enumerate()
+                .for_each(|(n, inner)| assert_finite(inner, key, &format!("{path}[{n}]")));
+        }
+        _ => {}
+    }
+}
+
+fn assert_words(faults: &[Fault]) {
+    assert!(!faults.is_empty());
+    for fault in faults {
+        assert!(!fault.path.is_empty() && !fault.found.is_empty() && !fault.allowed.is_empty(), "{fault:?}");
+    }
+}
+
+fn solves_finitely(checked: &Checked) {
+    let solution = match solve(checked) {
+        Ok(solution) => solution,
+        Err(faults) => return assert_words(&faults),
+    };
+    assert_finite(&serde_json::to_value(&solution.report).unwrap(), "", "report");
+    let layout = &solution.layout;
+    let points = layout.strings.iter().flat_map(|string| {
+        [
+            string.nut,
+            string.saddle,
+            string.nut_edge,
+            string.ideal_crest,
+            string.crest,
+            string.travel[0],
+            string.travel[1],
+        ]
+    });
+    let finite = |point: Point| point.x.is_finite() && point.y.is_finite();
+    assert!(points.chain(layout.frets.iter().flatten().copied()).all(finite), "{layout:?}");
+    assert!(
+        layout.blanks.iter().flatten().copied().all(finite) && layout.datum_x_mm.is_finite(),
+        "{layout:?}"
+    );
+}
+
+/// The same cases on every run and machine: a failure here is one anywhere.
+fn fixed(cases: u32) -> ProptestConfig {
+    ProptestConfig {
+        cases,
+        rng_seed: RngSeed::Fixed(1),
+        failure_persistence: None,
+        ..ProptestConfig::default()
+    }
+}
+
+proptest! {
+    #![proptest_config(fixed(60))]
+
+    #[test]
+    fn legal_plans_are_solved_or_refused_with_reasons(plan in legal_plan()) {
+        solves_finitely(&check(&plan).unwrap());
+    }
+
+    #[test]
+    fn plans_that_a_maker_could_have_are_solved(plan in likely_plan()) {
+        let checked = check(&plan).unwrap();
+        prop_assert!(solve(&checked).is_ok(), "{:?}", solve(&checked).err());
+        solves_finitely(&checked);
+    }
+}
+
+proptest! {
+    // A comparison is a dozen solutions.
+    #![proptest_config(fixed(12))]
+
+    #[test]
+    fn legal_plans_are_compared_or_refused_with_reasons(plan in legal_plan()) {
+        match compare(&check(&plan).unwrap()) {
+            Ok(comparison) => assert_finite(&serde_json::to_value(&comparison).unwrap(), "", "comparison"),
+            Err(faults) => assert_words(&faults),
+        }
+    }
+
+    #[test]
+    fn plans_that_a_maker_could_have_are_compared(plan in likely_plan()) {
+        let comparison = compare(&check(&plan).unwrap()).unwrap();
+        prop_assert!(comparison.rows.len() >= 9);
+        assert_finite(&serde_json::to_value(&comparison).unwrap(), "", "comparison");
+    }
+}

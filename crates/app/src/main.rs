@@ -6,15 +6,20 @@ use std::process::ExitCode;
 use crestline_cli::{Outcome, STATUS_FAILED, Streams};
 
 fn main() -> ExitCode {
+    match command_line() {
+        Outcome::Finished(status) => ExitCode::from(status),
+        Outcome::Window(path) => window(path),
+    }
+}
+
+/// Does the command that the arguments name. The streams are free again before a window opens.
+fn command_line() -> Outcome {
     let mut streams = Streams {
         input: &mut io::stdin().lock(),
         output: &mut io::stdout().lock(),
         messages: &mut io::stderr().lock(),
     };
-    match crestline_cli::run(std::env::args_os(), &mut streams) {
-        Outcome::Finished(status) => ExitCode::from(status),
-        Outcome::Window(path) => window(path),
-    }
+    crestline_cli::run(std::env::args_os(), &mut streams)
 }
 
 fn window(path: Option<std::path::PathBuf>) -> ExitCode {

@@ -209,6 +209,13 @@ impl View {
         }
     }
 
+    /// Folds a group away, or opens it.
+    pub fn fold(&mut self, group: Group) {
+        if !self.folded.remove(&group) {
+            self.folded.insert(group);
+        }
+    }
+
     /// Says something at the foot of the window.
     pub fn say(&mut self, text: impl Into<String>) {
         self.message = Some(Message { text: text.into(), is_error: false });

@@ -114,6 +114,8 @@ fn a_wrong_number_marks_its_field_and_keeps_the_last_good_result() {
     assert!(field(&opened, "Scale, mm").accesskit_node().data().invalid().is_some());
     assert_eq!(says(&opened, "Shown is the last good result"), 1);
     assert!(says(&opened, "“64x” is not a number") >= 2, "at the field and in the list");
+    assert_eq!(plan(&opened), &steel_six(), "no half-typed number stays in the plan");
+    assert_eq!(opened.state().desk.history().undo_name(), None, "and nothing is there to undo");
 
     type_into(&mut opened, "Scale, mm", "650");
     assert_eq!(says(&opened, "Shown is the last good result"), 0);

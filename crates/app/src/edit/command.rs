@@ -21,6 +21,8 @@ pub enum Command {
     SaveAs,
     /// Ask for a file and write the drawing to it.
     ExportDrawing,
+    /// Type the path in the window instead of waiting for a file dialog.
+    TypePath,
     /// Close the window.
     Quit,
     /// Take the last step back.
@@ -68,6 +70,7 @@ impl Command {
             Self::Save => "Save".into(),
             Self::SaveAs => "Save as…".into(),
             Self::ExportDrawing => "Export drawing…".into(),
+            Self::TypePath => "Type the path here instead".into(),
             Self::Quit => "Quit".into(),
             Self::Undo => "Undo".into(),
             Self::Redo => "Redo".into(),

@@ -65,7 +65,7 @@ impl Desk {
         if self.plan == self.settled {
             return;
         }
-        self.history.record(&self.settled, edit);
+        self.history.record(&self.settled, &self.plan, edit);
         self.follow();
     }
 

@@ -38,12 +38,16 @@ pub struct History {
 }
 
 impl History {
-    /// Notes an edit; `before` is the plan as it was.
-    pub fn record(&mut self, before: &Plan, edit: &Edit) {
+    /// Notes an edit that made `now` of `before`. A gesture that ends where it began leaves no step.
+    pub fn record(&mut self, before: &Plan, now: &Plan, edit: &Edit) {
         self.undone.clear();
         let goes_on = edit.gesture.is_some() && edit.gesture == self.open;
         self.open = edit.gesture;
         if goes_on {
+            if self.done.last().is_some_and(|step| step.plan == *now) {
+                self.done.pop();
+                self.open = None;
+            }
             return;
         }
         self.done.push(Step { name: edit.name.clone(), plan: before.clone() });

@@ -71,10 +71,10 @@ pub fn swap(plan: &mut Plan, a: usize, b: usize) {
             reading.string = number(a);
         }
     }
-    if let Some(targets) = &mut plan.targets {
-        if a.max(b) < targets.open_cents.len() {
-            targets.open_cents.swap(a, b);
-        }
+    if let Some(targets) = &mut plan.targets
+        && a.max(b) < targets.open_cents.len()
+    {
+        targets.open_cents.swap(a, b);
     }
     renumber(plan);
 }

@@ -7,6 +7,8 @@ use std::collections::BTreeMap;
 pub struct Draft {
     /// The text as typed.
     pub text: String,
+    /// The text that stood there before; the plan keeps its value while what is typed cannot be read.
+    pub start: String,
     /// What is wrong with it, where it could not be taken into the plan.
     pub error: Option<String>,
 }

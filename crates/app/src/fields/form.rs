@@ -55,7 +55,6 @@ impl Form<'_> {
     }
 
     /// The frame of the field `id`, which shows whether it is wrong or has the focus.
-    #[must_use]
     pub fn frame(&self, ui: &Ui, id: Id, wrong: bool) -> Frame {
         let palette = self.palette;
         let focused = ui.memory(|memory| memory.has_focus(id));
@@ -79,11 +78,9 @@ impl Form<'_> {
     }
 
     /// Keeps the text of a field that is being typed in, and the change that it made.
-    pub fn typed(&mut self, path: &str, name: &str, gesture: Id, text: String, taken: Result<(), String>) {
-        if taken.is_ok() {
-            self.edit = Some(Edit { name: name.to_owned(), gesture: Some(gesture) });
-        }
-        self.drafts.keep(path, Draft { text, error: taken.err() });
+    pub fn typed(&mut self, path: &str, name: &str, gesture: Id, draft: Draft) {
+        self.edit = Some(Edit { name: name.to_owned(), gesture: Some(gesture) });
+        self.drafts.keep(path, draft);
     }
 }
 

@@ -2,6 +2,7 @@
 
 use eframe::egui::{Align, Align2, Id, Key, Modifiers, Response, TextEdit, Ui, Vec2, accesskit};
 
+use super::draft::Draft;
 use super::form::Form;
 use super::parse;
 use crate::theme::size;
@@ -111,8 +112,9 @@ pub fn typed<T>(
     form.arrive(ui, &spec.path, &response);
 
     if response.changed() || stepped {
-        let taken = read(&text).map(take);
-        form.typed(&spec.path, &spec.name, id, text, taken);
+        let start = form.drafts.get(&spec.path).map_or_else(|| shown.to_owned(), |draft| draft.start.clone());
+        let error = read_or_go_back(&text, &start, read, take).err();
+        form.typed(&spec.path, &spec.name, id, Draft { text, start, error });
     } else if response.lost_focus() {
         form.left = true;
         if form.drafts.get(&spec.path).is_some_and(|draft| draft.error.is_none()) {
@@ -120,6 +122,28 @@ pub fn typed<T>(
         }
     }
     tip(response, spec, error)
+}
+
+/// Takes what `text` says; where it cannot be read, takes what stood there before, so that no half-typed
+/// number stays in the plan.
+fn read_or_go_back<T>(
+    text: &str,
+    start: &str,
+    read: impl Fn(&str) -> Result<T, String>,
+    take: impl FnOnce(T),
+) -> Result<(), String> {
+    match read(text) {
+        Ok(value) => {
+            take(value);
+            Ok(())
+        }
+        Err(error) => {
+            if let Ok(value) = read(start) {
+                take(value);
+            }
+            Err(error)
+        }
+    }
 }
 
 /// What is wrong and what the field is for, where the pointer rests.

@@ -1,12 +1,16 @@
 //! Where a plan view is looked at from: the whole of it, or a place and scale of the user's choice.
 
-use eframe::egui::{EventFilter, Key, Modifiers, Rect, Response, Ui};
+use eframe::egui::{EventFilter, Key, Modifiers, Rect, Response, Ui, Vec2};
 use egui_plot::{PlotBounds, PlotTransform};
 
 /// How much one step of the zoom buttons and keys changes the scale.
 const ZOOM_STEP: f64 = 1.25;
 /// How far one press of an arrow key pans, as a share of the view.
 const PAN_STEP: f64 = 0.1;
+/// Room for a figure with two decimals, points.
+const ROOM_FOR_FIGURES: f32 = 44.0;
+/// Points of the wheel for one natural step of the scale.
+const WHEEL_POINTS: f64 = 200.0;
 /// The largest and smallest scale, millimetres a point.
 const SCALE_MM: [f64; 2] = [0.002, 4.0];
 
@@ -68,6 +72,12 @@ impl Camera {
         if response.dragged() || scrolled {
             self.chosen = Some(look_of(transform));
         }
+        let wheel = ui.input(|i| if i.modifiers.any() { 0.0 } else { f64::from(i.smooth_scroll_delta.y) });
+        if let (true, Some(at)) = (response.contains_pointer() && wheel != 0.0, response.hover_pos()) {
+            let mut transform = *transform;
+            transform.zoom(Vec2::splat((wheel / WHEEL_POINTS).exp() as f32), at);
+            self.chosen = Some(look_of(&transform));
+        }
         if response.double_clicked() {
             self.reset();
         }
@@ -95,15 +105,15 @@ impl Camera {
     }
 }
 
-/// The look that has all of `whole` in a plot of this size.
+/// The look that has all of `whole` in a plot of this size, with room on the right for the figures beside it.
 fn fit(rect: Rect, whole: &PlotBounds) -> Look {
     let (min, max) = (whole.min(), whole.max());
+    let room = ROOM_FOR_FIGURES.min(0.4 * rect.width());
     let scale = |extent: f64, points: f32| extent / f64::from(points.max(1.0));
-    let needed = scale(max[0] - min[0], rect.width()).max(scale(max[1] - min[1], rect.height()));
-    Look {
-        centre_mm: [0.5 * (min[0] + max[0]), 0.5 * (min[1] + max[1])],
-        mm_per_point: needed.clamp(SCALE_MM[0], SCALE_MM[1]),
-    }
+    let needed = scale(max[0] - min[0], rect.width() - room).max(scale(max[1] - min[1], rect.height()));
+    let mm_per_point = needed.clamp(SCALE_MM[0], SCALE_MM[1]);
+    let right = 0.5 * f64::from(room) * mm_per_point;
+    Look { centre_mm: [0.5 * (min[0] + max[0]) + right, 0.5 * (min[1] + max[1])], mm_per_point }
 }
 
 fn look_of(transform: &PlotTransform) -> Look {
@@ -119,7 +129,7 @@ fn look_of(transform: &PlotTransform) -> Look {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use eframe::egui::{Pos2, Vec2};
+    use eframe::egui::Pos2;
 
     #[test]
     fn the_scale_is_the_same_both_ways_and_the_whole_is_inside() {

@@ -2,12 +2,13 @@
 
 use crestline_plan::{FretReport, StringReport};
 use eframe::egui::{Checkbox, Color32, RichText, Ui, Vec2, Vec2b, WidgetInfo, accesskit};
-use egui_plot::{HLine, HoverPosition, Line, LineStyle, Plot, PlotBounds, PlotPoints, PlotUi, Points, Span};
+use egui_plot::{HLine, Line, LineStyle, Plot, PlotBounds, PlotPoints, PlotUi, Points, Span};
 
 use super::axes::{Along, with_axes};
 use super::figures;
+use super::hover;
 use crate::edit::desk::Outcome;
-use crate::theme::{Palette, marker};
+use crate::theme::{Palette, marker, size};
 
 /// The least height of the plot's scale, cents to either side.
 const LEAST_CENTS: f64 = 3.0;
@@ -35,20 +36,16 @@ impl Default for ErrorChoice {
     }
 }
 
-/// A kind of error: its word, its line, and where the report has it.
+/// A kind of error: its line, and where the report has it.
 struct Kind {
-    word: &'static str,
     style: LineStyle,
     of: fn(&FretReport) -> Option<f64>,
 }
 
-const NONE: Kind =
-    Kind { word: "no setback", style: LineStyle::Dotted { spacing: 6.0 }, of: |fret| Some(fret.none_cents) };
-const IDEAL: Kind =
-    Kind { word: "ideal", style: LineStyle::Dashed { length: 9.0 }, of: |fret| Some(fret.ideal_cents) };
-const BUILT: Kind = Kind { word: "as built", style: LineStyle::Solid, of: |fret| Some(fret.built_cents) };
-const AS_IT_IS: Kind =
-    Kind { word: "as it is now", style: LineStyle::Dashed { length: 3.0 }, of: |fret| fret.as_built_cents };
+const NONE: Kind = Kind { style: LineStyle::Dotted { spacing: 6.0 }, of: |fret| Some(fret.none_cents) };
+const IDEAL: Kind = Kind { style: LineStyle::Dashed { length: 9.0 }, of: |fret| Some(fret.ideal_cents) };
+const BUILT: Kind = Kind { style: LineStyle::Solid, of: |fret| Some(fret.built_cents) };
+const AS_IT_IS: Kind = Kind { style: LineStyle::Dashed { length: 3.0 }, of: |fret| fret.as_built_cents };
 
 /// The choices above the plot.
 pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize, choice: &mut ErrorChoice) {
@@ -60,8 +57,8 @@ pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize,
         if outcome.plan.as_built.is_some() {
             ui.add(Checkbox::new(&mut choice.as_built, "as it is now ┄┄"));
         }
-        ui.separator();
-        ui.add(Checkbox::new(&mut choice.others, "other strings as built"));
+        ui.add_space(size::GAP);
+        ui.add(Checkbox::new(&mut choice.others, "other strings"));
     });
 }
 
@@ -86,7 +83,7 @@ pub fn show(
             draw(plot, palette, curve);
         }
     });
-    let response = shown.response;
+    let response = hover::errors(shown.response, &shown.transform, palette, strings.get(chosen));
     response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(strings, chosen)));
     let zoomed = response.contains_pointer() && ui.input(|i| i.zoom_delta() != 1.0);
     if response.dragged() || zoomed {
@@ -107,12 +104,7 @@ pub fn fret_plot<'a>(name: &'static str, palette: &'static Palette) -> Plot<'a> 
         .show_crosshair(false)
         .show_grid(Vec2b::new(false, true))
         .min_size(Vec2::new(120.0, 80.0))
-        .label_formatter(|hover| match hover {
-            HoverPosition::NearDataPoint { plot_name, position, .. } if !plot_name.is_empty() => {
-                Some(format!("{plot_name}, fret {:.0}: {} cents", position.x, figures::cents(position.y)))
-            }
-            _ => None,
-        });
+        .label_formatter(|_| None);
     with_axes(plot, palette, Along::Frets, ["", "cents"])
 }
 
@@ -130,7 +122,6 @@ pub fn frame(plot: &mut PlotUi<'_>, palette: &Palette, fit: [u32; 2], bounds: &P
 
 /// One curve to draw.
 struct Curve {
-    name: String,
     string: usize,
     points: Vec<[f64; 2]>,
     style: LineStyle,
@@ -156,7 +147,6 @@ fn curves(strings: &[StringReport], chosen: usize, choice: &ErrorChoice) -> Vec<
 fn curve(index: usize, string: &StringReport, kind: &Kind, is_chosen: bool) -> Curve {
     let point = |fret: &FretReport| (kind.of)(fret).map(|cents| [f64::from(fret.fret), cents]);
     Curve {
-        name: format!("String {}, {}", index + 1, kind.word),
         string: index,
         points: string.frets.iter().filter_map(point).collect(),
         style: kind.style,
@@ -173,7 +163,8 @@ fn draw(plot: &mut PlotUi<'_>, palette: &Palette, curve: &Curve) {
     let solid = matches!(curve.style, LineStyle::Solid);
     let marks: PlotPoints<'_> = curve.points.clone().into();
     plot.points(
-        Points::new(&curve.name, marks)
+        Points::new("", marks)
+            .allow_hover(false)
             .shape(marker(curve.string))
             .color(colour)
             .filled(solid)

@@ -39,7 +39,7 @@ mod tests {
         assert_eq!(mm(-0.001), "0.00");
         assert_eq!(mm(-1.255), "−1.25");
         assert_eq!(cents(0.04), "0.0");
-        assert_eq!(cents(3.14), "+3.1");
-        assert_eq!(cents(-3.14), "−3.1");
+        assert_eq!(cents(2.13), "+2.1");
+        assert_eq!(cents(-2.13), "−2.1");
     }
 }

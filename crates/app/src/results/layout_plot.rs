@@ -2,11 +2,12 @@
 
 use crestline_plan::{Layout, Point, SaddleStyle, StringLine};
 use eframe::egui::{Align2, Ui, Vec2, WidgetInfo, accesskit};
-use egui_plot::{HoverPosition, LineStyle, Plot, PlotBounds, PlotUi};
+use egui_plot::{LineStyle, Plot, PlotBounds, PlotUi};
 
 use super::axes::{Along, with_axes};
 use super::camera::Camera;
 use super::figures;
+use super::hover;
 use super::plan_items::{at_x, line, mark, outline, text};
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
@@ -15,8 +16,6 @@ use crate::theme::Palette;
 const ROOM_MM: f64 = 3.0;
 /// Room across the neck outside the outer strings, mm.
 const ROOM_ACROSS_MM: f64 = 5.0;
-/// Width kept free for the setbacks written behind the crests, mm at the usual scale.
-const ROOM_FOR_TEXT_MM: f64 = 7.0;
 /// Width of the string lines in points.
 const STRING_WIDTH: f32 = 1.2;
 
@@ -34,7 +33,7 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
         let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
         draw(plot, &Drawing { palette, outcome, chosen, bounds, mm_per_point });
     });
-    let response = shown.response;
+    let response = hover::crest(shown.response, &shown.transform, palette, outcome);
     response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome)));
     camera.follow(ui, &response, &shown.transform, &whole);
 }
@@ -48,12 +47,7 @@ pub fn plan_plot<'a>(name: &'static str, palette: &'static Palette, datum_x: f64
         .allow_axis_zoom_drag(false)
         .show_crosshair(false)
         .min_size(Vec2::new(60.0, 60.0))
-        .label_formatter(|hover| match hover {
-            HoverPosition::NearDataPoint { plot_name, .. } if !plot_name.is_empty() => {
-                Some((*plot_name).to_owned())
-            }
-            _ => None,
-        });
+        .label_formatter(|_| None);
     with_axes(plot, palette, Along::From(datum_x), ["", ""])
 }
 
@@ -130,15 +124,21 @@ fn travel(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringL
 fn crest(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
     let colour = d.palette.string(index);
     let Some(report) = d.outcome.solution.report.strings.get(index) else { return };
-    let number = index + 1;
     if let Some(now) = string.as_built {
-        mark(plot, &format!("String {number}, crest as it is"), now, 0, d.palette.quiet, false, 4.0);
+        mark(plot, now, 0, d.palette.quiet, false, 4.0);
     }
-    mark(plot, &format!("String {number}, ideal crest"), string.ideal_crest, index, colour, false, 4.5);
-    mark(plot, &format!("String {number}, crest"), string.crest, index, colour, true, 4.5);
-    let rightmost =
-        string.crest.x.max(string.ideal_crest.x).max(string.as_built.map_or(f64::MIN, |now| now.x));
-    let beside = Point { x: rightmost + 11.0 * d.mm_per_point, y: string.crest.y };
+    mark(plot, string.ideal_crest, index, colour, false, 4.5);
+    mark(plot, string.crest, index, colour, true, 4.5);
+    let is_separate = matches!(d.outcome.plan.saddle.style, SaddleStyle::Separate);
+    let marks = [
+        Some(string.crest),
+        Some(string.ideal_crest),
+        string.as_built,
+        is_separate.then_some(string.travel[1]),
+    ];
+    let rightmost = marks.into_iter().flatten().map(|mark| mark.x).fold(f64::MIN, f64::max);
+    let gap = if is_separate { 6.0 } else { 11.0 };
+    let beside = Point { x: rightmost + gap * d.mm_per_point, y: string.crest.y };
     let words = figures::mm(report.built.saddle_setback_mm);
     text(plot, beside, words, d.palette.ink, Align2::LEFT_CENTER);
 }
@@ -161,7 +161,7 @@ fn whole(outcome: &Outcome) -> PlotBounds {
     if matches!(outcome.plan.saddle.style, SaddleStyle::Separate) {
         points.extend(layout.strings.iter().flat_map(|s| s.travel));
     }
-    around(&points, [ROOM_MM, ROOM_MM + ROOM_FOR_TEXT_MM])
+    around(&points, [ROOM_MM, 0.5])
 }
 
 /// The box around points, with room before, behind and across.

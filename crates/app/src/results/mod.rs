@@ -4,6 +4,7 @@ pub mod axes;
 pub mod camera;
 pub mod error_plot;
 pub mod figures;
+pub mod hover;
 pub mod layout_page;
 pub mod layout_plot;
 pub mod marks;

@@ -30,6 +30,7 @@ pub fn stale(
         .corner_radius(size::CORNER)
         .inner_margin(Margin::symmetric(10, 5))
         .show(ui, |ui| {
+            ui.set_min_width(ui.available_width());
             let title = match (has_result, lines.len()) {
                 (false, _) => "No result yet: mend these fields.".to_owned(),
                 (true, 1) => "Shown is the last good result. One field is to be mended:".to_owned(),
@@ -38,7 +39,9 @@ pub fn stale(
             ui.label(RichText::new(title).strong().color(palette.fault));
             ScrollArea::vertical().id_salt("faults").max_height(66.0).show(ui, |ui| {
                 for (path, text) in &lines {
-                    commands.extend(link(ui, palette, "▲", palette.fault, path, text));
+                    let place = place_in_words(path);
+                    let words = if place.is_empty() { text.clone() } else { format!("{place}: {text}") };
+                    commands.extend(link(ui, palette, "▲", palette.fault, path, &words));
                 }
             });
         });
@@ -58,9 +61,15 @@ pub fn show(ui: &mut Ui, palette: &Palette, notices: &[Notice]) -> Vec<Command> 
             Severity::Warning => ("▲", palette.caution),
             Severity::Note => ("●", palette.quiet),
         };
-        commands.extend(link(ui, palette, sign, colour, &notice.path, &notice.text));
+        commands.extend(link(ui, palette, sign, colour, &notice.path, &sentence(&notice.text)));
     }
     commands
+}
+
+/// The text with a capital at its start.
+fn sentence(text: &str) -> String {
+    let mut letters = text.chars();
+    letters.next().map_or_else(String::new, |first| first.to_uppercase().chain(letters).collect())
 }
 
 /// One line, which goes to its field when it is clicked.
@@ -70,10 +79,8 @@ fn link(
     sign: &str,
     colour: eframe::egui::Color32,
     path: &str,
-    text: &str,
+    words: &str,
 ) -> Option<Command> {
-    let place = place_in_words(path);
-    let words = if place.is_empty() { text.to_owned() } else { format!("{place}: {text}") };
     let shown = RichText::new(format!("{sign} {words}")).small().color(if path.is_empty() {
         palette.ink
     } else {

@@ -11,8 +11,8 @@ use super::plan_items::{line, mark, text};
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
 
-/// Room before the nut edges and behind them, where their setbacks are written, mm.
-const ROOM_MM: [f64; 2] = [3.0, 8.0];
+/// Room before the nut edges and behind them, mm.
+const ROOM_MM: [f64; 2] = [3.0, 1.0];
 
 /// The plot, as large as the room that is left.
 pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: usize, camera: &mut Camera) {
@@ -51,7 +51,7 @@ fn one(
     let colour = palette.string(index);
     let width = if is_chosen { 2.4 } else { 1.2 };
     line(plot, &[string.nut_edge, string.saddle], colour, width, LineStyle::Solid);
-    mark(plot, &format!("String {}, nut edge", index + 1), string.nut_edge, index, colour, true, 4.5);
+    mark(plot, string.nut_edge, index, colour, true, 4.5);
     let Some(report) = outcome.solution.report.strings.get(index) else { return };
     let beside =
         Point { x: string.nut_edge.x + 9.0 * mm_per_point, y: string.nut_edge.y + 1.0 * mm_per_point };

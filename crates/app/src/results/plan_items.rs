@@ -19,18 +19,10 @@ pub fn outline(plot: &mut PlotUi<'_>, corners: &[Point], fill: Color32, edge: Co
 }
 
 /// The marker of string `index`.
-pub fn mark(
-    plot: &mut PlotUi<'_>,
-    name: &str,
-    at: Point,
-    index: usize,
-    colour: Color32,
-    filled: bool,
-    radius: f32,
-) {
+pub fn mark(plot: &mut PlotUi<'_>, at: Point, index: usize, colour: Color32, filled: bool, radius: f32) {
     let points =
-        Points::new(name, [at.x, at.y]).shape(marker(index)).color(colour).filled(filled).radius(radius);
-    plot.points(points.allow_hover(!name.is_empty()));
+        Points::new("", [at.x, at.y]).shape(marker(index)).color(colour).filled(filled).radius(radius);
+    plot.points(points.allow_hover(false));
 }
 
 /// A text; `anchor` says which side of it stands at the point.

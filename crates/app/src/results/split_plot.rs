@@ -6,11 +6,15 @@ use egui_plot::{Bar, BarChart, Line, PlotBounds, PlotPoints, PlotUi, Points};
 
 use super::error_plot::{frame, fret_plot};
 use super::figures;
+use super::hover;
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
 
+/// A part of a note's error, cents.
+type Part = fn(&FretReport) -> f64;
+
 /// The four parts in the order in which they are stacked.
-const PARTS: [(&str, fn(&FretReport) -> f64); 4] = [
+const PARTS: [(&str, Part); 4] = [
     ("length", |fret| fret.length_cents),
     ("tension", |fret| fret.tension_cents),
     ("mass", |fret| fret.mass_cents),
@@ -47,12 +51,13 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
         bars(plot, palette, string);
         sum(plot, palette, string);
     });
-    shown.response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(string)));
+    let response = hover::parts(shown.response, &shown.transform, palette, string);
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(string)));
 }
 
 /// Positive parts are stacked upward from zero and negative ones downward.
 fn bars(plot: &mut PlotUi<'_>, palette: &Palette, string: &StringReport) {
-    for (index, (name, of)) in PARTS.iter().enumerate() {
+    for (index, (_, of)) in PARTS.iter().enumerate() {
         let bar = |fret: &FretReport| {
             let value = of(fret);
             let below = PARTS[..index].iter().map(|(_, of)| of(fret));
@@ -64,13 +69,7 @@ fn bars(plot: &mut PlotUi<'_>, palette: &Palette, string: &StringReport) {
                 .stroke(Stroke::new(0.6, palette.sheet))
         };
         let all = string.frets.iter().map(bar).collect();
-        let name = (*name).to_owned();
-        let label = Box::new(move |bar: &Bar, _: &BarChart| {
-            format!("{name}, fret {:.0}: {} cents", bar.argument, figures::cents(bar.value))
-        });
-        plot.bar_chart(
-            BarChart::new(PARTS[index].0, all).color(palette.parts[index]).element_formatter(label),
-        );
+        plot.bar_chart(BarChart::new("", all).color(palette.parts[index]).allow_hover(false));
     }
 }
 
@@ -80,7 +79,7 @@ fn sum(plot: &mut PlotUi<'_>, palette: &Palette, string: &StringReport) {
     let line: PlotPoints<'_> = points.clone().into();
     plot.line(Line::new("", line).color(palette.ink).width(1.0).allow_hover(false));
     let marks: PlotPoints<'_> = points.into();
-    plot.points(Points::new("sum", marks).color(palette.ink).radius(2.6).allow_hover(false));
+    plot.points(Points::new("", marks).color(palette.ink).radius(2.6).allow_hover(false));
 }
 
 fn whole(string: &StringReport, frets: u32) -> PlotBounds {

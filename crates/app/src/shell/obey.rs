@@ -45,6 +45,11 @@ pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
         }
         Command::LargerText => zoom(ctx, ZOOM_STEP),
         Command::SmallerText => zoom(ctx, -ZOOM_STEP),
+        Command::TypePath => {
+            if let Some(picker) = window.picker.take() {
+                ask_in_window(window, picker.purpose);
+            }
+        }
         Command::UsualText => ctx.set_zoom_factor(1.0),
         other => arrange(window, other),
     }
@@ -68,11 +73,7 @@ fn arrange(window: &mut Window, command: Command) {
         }
         Command::ChooseString(index) => view.string = index,
         Command::ShowPage(page) => view.page = page,
-        Command::Fold(group) => {
-            if !view.folded.remove(&group) {
-                view.folded.insert(group);
-            }
-        }
+        Command::Fold(group) => view.fold(group),
         Command::GoTo(path) => go_to(window, path),
         Command::ResetPlots => {
             view.saddle_camera.reset();
@@ -202,7 +203,7 @@ fn pick(window: &mut Window, ctx: &Context, purpose: Purpose) {
     let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
     window.picker = Picker::open(ctx, purpose, &suggested);
     if window.picker.is_none() {
-        window.question = Some(Question::Path(PathBox::new(purpose, &suggested)));
+        ask_in_window(window, purpose);
     }
 }
 
@@ -220,31 +221,37 @@ pub fn take_answer(window: &mut Window, ctx: &Context) {
                 if whole == path { Reply::Use(purpose, path) } else { Reply::Propose(purpose, whole) };
             take_reply(window, ctx, reply);
         }
-        Answer::Cancelled => {}
-        Answer::NoService => {
-            let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
-            window.question = Some(Question::Path(PathBox::new(purpose, &suggested)));
-        }
+        Answer::Cancelled => window.after_saving = None,
+        Answer::NoService => ask_in_window(window, purpose),
     }
+}
+
+/// Asks for a path by the window's own field.
+fn ask_in_window(window: &mut Window, purpose: Purpose) {
+    let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
+    window.question = Some(Question::Path(PathBox::new(purpose, &suggested)));
 }
 
 /// Does what was answered to a question.
 pub fn take_reply(window: &mut Window, ctx: &Context, reply: Reply) {
     match reply {
-        Reply::Cancel => {}
+        Reply::Cancel => window.after_saving = None,
         Reply::SaveThen(next) => match window.desk.path().map(Path::to_owned) {
             Some(path) => {
                 if save_to(window, path) {
                     obey(window, ctx, next);
                 }
             }
-            None => pick(window, ctx, Purpose::Save),
+            None => {
+                pick(window, ctx, Purpose::Save);
+                window.after_saving = Some(next);
+            }
         },
         Reply::Without(next) => without_saving(window, ctx, next),
         Reply::Propose(purpose, path) if purpose != Purpose::Open && path.exists() => {
             window.question = Some(Question::Replace(purpose, path));
         }
-        Reply::Propose(purpose, path) | Reply::Use(purpose, path) => use_path(window, purpose, path),
+        Reply::Propose(purpose, path) | Reply::Use(purpose, path) => use_path(window, ctx, purpose, path),
     }
 }
 
@@ -261,11 +268,14 @@ fn without_saving(window: &mut Window, ctx: &Context, next: Command) {
     }
 }
 
-fn use_path(window: &mut Window, purpose: Purpose, path: PathBuf) {
+fn use_path(window: &mut Window, ctx: &Context, purpose: Purpose, path: PathBuf) {
     match purpose {
         Purpose::Open => open(window, &path),
         Purpose::Save => {
-            save_to(window, path);
+            let next = window.after_saving.take();
+            if let (true, Some(next)) = (save_to(window, path), next) {
+                obey(window, ctx, next);
+            }
         }
         Purpose::Drawing => write_drawing(window, &path),
     }

@@ -31,6 +31,8 @@ pub struct Window {
     pub question: Option<Question>,
     /// A file dialog that is open.
     pub picker: Option<Picker>,
+    /// What to do once the plan has been saved.
+    pub after_saving: Option<Command>,
     /// Whether the window may close although the plan has changes.
     pub may_close: bool,
     title: String,
@@ -47,6 +49,7 @@ impl Window {
             view: options.view(),
             question: None,
             picker: None,
+            after_saving: None,
             may_close: false,
             title: String::new(),
         }
@@ -60,6 +63,9 @@ impl Window {
         commands.extend(dropped(&ctx));
         commands.extend(bar::show(ui, palette, &self.desk, &self.view));
         commands.extend(foot::show(ui, palette, self.view.message.as_ref()));
+        if let Some(picker) = &self.picker {
+            commands.extend(foot::waiting(ui, palette, picker.purpose.title()));
+        }
         commands.extend(self.inputs(ui, palette));
         commands.extend(self.results(ui, palette));
         self.ask(&ctx, palette);

@@ -1,0 +1,88 @@
+#!/usr/bin/env bash
+# Works in the real window as a user would: types a wrong number and a right one, undoes, saves, writes a
+# drawing, closes with changes. Fails where a file does not hold what it should or the window does not end.
+# Usage: drive.sh PROGRAM FOLDER
+# Needs xvfb, xdotool, imagemagick and jq.
+set -euo pipefail
+. "$(dirname "$0")/display.sh"
+
+program=$1
+folder=$(realpath -m "$2")
+mkdir -p "$folder"
+work=$(mktemp -d)
+plan=$work/plan.json
+"$program" example steel_six -o "$plan"
+start_display
+export CRESTLINE_THEME=${CRESTLINE_THEME:-light}
+
+fail() {
+    echo "drive.sh: $1" >&2
+    import -window root "$folder/failed.png" || true
+    exit 1
+}
+picture() { sleep 0.7; import -window "$window" "$folder/$1.png"; }
+key() { xdotool key --window "$window" --clearmodifiers "$@"; sleep 0.25; }
+write() { xdotool type --window "$window" --delay 30 "$1"; sleep 0.25; }
+click() { xdotool mousemove --window "$window" "$1" "$2"; sleep 0.15; xdotool click 1; sleep 0.3; }
+# Whether a jq expression holds of the saved plan.
+holds() { jq -e "$1" "$plan" >/dev/null; }
+
+cd "$work"
+start_window "$program" "$plan"
+sleep 1
+
+# The scale is the field behind its label in the group that opens first.
+click 215 144
+key ctrl+a
+write 64x
+picture wrong-number
+key ctrl+a
+write 64
+picture out-of-range
+key ctrl+a
+write 640,5
+key Tab
+key ctrl+s
+holds '.instrument.scale_mm == 640.5' || fail "the scale was not saved"
+picture saved
+
+# One gesture is one step.
+key ctrl+z
+key ctrl+s
+holds '.instrument.scale_mm == 647.7' || fail "undo did not bring the scale back"
+key ctrl+shift+z
+key ctrl+s
+holds '.instrument.scale_mm == 640.5' || fail "redo did not bring the scale again"
+
+# The drawing goes to the path that the window proposes.
+key ctrl+e
+picture path-field
+key Return
+sleep 0.5
+[ -s "$work/plan.svg" ] || fail "no drawing was written"
+picture written
+key ctrl+e
+key Return
+picture file-exists
+key Escape
+
+# Menus.
+click 101 16
+picture file-menu
+key Escape
+
+# Closing with changes asks first.
+click 215 144
+key ctrl+a
+write 650
+key Tab
+key ctrl+q
+picture unsaved
+kill -0 "$process" 2>/dev/null || fail "the window closed with changes and did not ask"
+# The focus stands on Save.
+key Return
+for _ in $(seq 50); do kill -0 "$process" 2>/dev/null || break; sleep 0.1; done
+kill -0 "$process" 2>/dev/null && fail "the window did not close after saving"
+holds '.instrument.scale_mm == 650' || fail "the changes were not saved before closing"
+rm -r "$work"
+echo "drive.sh: done, pictures in $folder"

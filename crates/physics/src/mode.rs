@@ -12,8 +12,10 @@ use crate::{PhysicsError, root};
 
 /// Below this ratio of bending length to length the stiffness is a first-order correction to within 1e-20.
 const FLEXIBLE: f64 = 1e-10;
-/// Where α exceeds this, e^(−2α) is below half a unit in the last place.
-const FAR_ENDS: f64 = 20.0;
+/// Where α exceeds this, the ends know nothing of each other: e^(−α) is below 1e-19.
+const FAR_ENDS: f64 = 45.0;
+/// Step at which the phase iteration, which gains at least two digits a step, has settled, radians.
+const PHASE_STEP_RAD: f64 = 1e-13;
 /// Root tolerance in radians; relative 1e-15 of the first root.
 const TOLERANCE_RAD: f64 = 3e-15;
 
@@ -47,6 +49,13 @@ pub fn mode_ratio(mode: u32, epsilon: f64, ends: Ends) -> Result<f64, PhysicsErr
     if both == 0.0 {
         return Ok((1.0 + (turns * epsilon).powi(2)).sqrt());
     }
+    if epsilon * FAR_ENDS < 1.0 {
+        let alpha = |beta: f64| (beta * beta + 1.0 / (epsilon * epsilon)).sqrt();
+        let start = turns / (1.0 - both * epsilon);
+        if let Some(beta) = far_ends_root(turns, start, ends, alpha, |_| epsilon, 1.0) {
+            return Ok(beta * (1.0 + (beta * epsilon).powi(2)).sqrt() / turns);
+        }
+    }
     // The root lies between those of pinned and of clamped ends; a clamped bar's is at most 0.018 above (n + ½)π.
     let bracket = [turns - 1e-6, turns + 0.5 * PI + 0.02];
     let start = turns / (1.0 - both * epsilon).max(0.5);
@@ -57,18 +66,44 @@ pub fn mode_ratio(mode: u32, epsilon: f64, ends: Ends) -> Result<f64, PhysicsErr
     Ok(beta * (1.0 + (beta * epsilon).powi(2)).sqrt() / turns)
 }
 
+/// β for ends so far apart that the end shapes do not overlap: each end shifts the phase of the sine by φ with
+/// tan φ = κβ/((1 − κ)ε(α² + β²) + κα), and β = nπ + φ_a + φ_b. `power` is the power of β that φ goes with.
+/// Newton's steps with that slope; `None` where they do not settle.
+fn far_ends_root(
+    turns: f64,
+    start: f64,
+    ends: Ends,
+    alpha: impl Fn(f64) -> f64,
+    epsilon: impl Fn(f64) -> f64,
+    power: f64,
+) -> Option<f64> {
+    let mut beta = start;
+    for _ in 0..20 {
+        let (alpha, epsilon) = (alpha(beta), epsilon(beta));
+        let curvature = epsilon * (alpha * alpha + beta * beta);
+        let phase = |fixity: f64| (fixity * beta / ((1.0 - fixity) * curvature + fixity * alpha)).atan();
+        let phases = if ends.first == ends.second {
+            2.0 * phase(ends.first)
+        } else {
+            phase(ends.first) + phase(ends.second)
+        };
+        let step = (turns + phases - beta) / (1.0 - power * phases / beta);
+        beta += step;
+        if step.abs() < PHASE_STEP_RAD {
+            return Some(beta);
+        }
+    }
+    None
+}
+
 /// Determinant of the two end conditions EI·y'' = ±K·y' on the two shapes that vanish at both ends,
 /// u = sin βx − sin β·sinh αx/sinh α and v = cos βx − sinh α(1 − x)/sinh α − cos β·sinh αx/sinh α.
 /// Divided by (α² + β²)/ε so that it stays of order one.
 fn end_determinant(beta: f64, epsilon: f64, ends: Ends) -> f64 {
     let alpha = (beta * beta + 1.0 / (epsilon * epsilon)).sqrt();
     let (sine, cosine) = beta.sin_cos();
-    // α/sinh α and α·coth α
-    let (near, far) = if alpha > FAR_ENDS {
-        (2.0 * alpha * (-alpha).exp(), alpha)
-    } else {
-        (alpha / alpha.sinh(), alpha / alpha.tanh())
-    };
+    let (near, far) =
+        if alpha > FAR_ENDS { (0.0, alpha) } else { (alpha / alpha.sinh(), alpha / alpha.tanh()) };
     let curvature = alpha * alpha + beta * beta;
     let u_slope = [beta - sine * near, beta * cosine - sine * far];
     let v_slope = [far - cosine * near, near - beta * sine - cosine * far];
@@ -143,6 +178,9 @@ impl SpeakingString {
         const SLACK: f64 = 1e-6;
         let flexible_n = self.unit_mass_kg_per_m * (2e-3 * self.length_mm * frequency_hz).powi(2);
         within("tension in N", flexible_n, f64::MIN_POSITIVE, 1e9)?;
+        if let Some(found) = self.far_ends_tension(flexible_n) {
+            return Ok(found);
+        }
         // Half the logarithm of the tension over the flexible string's, so that the slope is near one.
         let excess = |half_log: f64| Ok(half_log + self.ratio(flexible_n * (2.0 * half_log).exp())?.ln());
         let lowest = 0.5 * SLACK.ln();
@@ -158,6 +196,25 @@ impl SpeakingString {
         let tension_n = flexible_n * (2.0 * half_log).exp();
         Ok((tension_n, self.ratio(tension_n)?))
     }
+
+    /// The tension for the frequency that a flexible string has at `flexible_n`, where the ends are far apart:
+    /// αβ = ωL²√(μ/EI) is known, so β alone is looked for, and T = EI(α² − β²)/L². `None` where the ends are too near, or there is no stiffness.
+    fn far_ends_tension(&self, flexible_n: f64) -> Option<(f64, f64)> {
+        let epsilon = bending_length_mm(self.bending_stiffness_n_mm2, flexible_n) / self.length_mm;
+        // The tension is lower than the flexible string's, so a little room is left.
+        if !(FLEXIBLE..0.8 / FAR_ENDS).contains(&epsilon) {
+            return None;
+        }
+        let both = self.ends.first + self.ends.second;
+        // For the flexible string at this pitch, β = π and αβ = π/ε.
+        let product = PI / epsilon;
+        let inverse = |beta: f64| ((product / beta).powi(2) - beta * beta).sqrt().recip();
+        let start = PI / (1.0 - both * epsilon);
+        let beta = far_ends_root(PI, start, self.ends, |beta| product / beta, inverse, 2.0)?;
+        let reached = inverse(beta);
+        let tension_n = self.bending_stiffness_n_mm2 / (reached * self.length_mm).powi(2);
+        (reached * FAR_ENDS < 1.0).then_some((tension_n, product * reached / PI))
+    }
 }
 
 #[cfg(test)]
@@ -172,7 +229,8 @@ mod tests {
     #[test]
     fn clamped_second_mode_is_clamped_pinned_first_at_twice_epsilon() {
         // A clamped–clamped string's second mode has a node in its middle: two clamped–pinned halves.
-        for epsilon in [1e-4, 3e-3, 0.05, 0.3, 2.0] {
+        // At 0.015 one is worked out with far ends and the other without.
+        for epsilon in [1e-4, 3e-3, 0.015, 0.05, 0.3, 2.0] {
             let whole = mode_ratio(2, epsilon, Ends { first: 1.0, second: 1.0 }).unwrap();
             let half = mode_ratio(1, 2.0 * epsilon, Ends { first: 1.0, second: 0.0 }).unwrap();
             assert!(cents(whole / half).abs() < 1e-10, "{epsilon}: {}", cents(whole / half));

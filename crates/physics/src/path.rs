@@ -14,13 +14,14 @@ impl SidePoint {
     #[must_use]
     pub fn excess_mm(self, next: Self) -> f64 {
         let (run, rise) = (next.s_mm - self.s_mm, next.z_mm - self.z_mm);
-        rise * rise / (run + run.hypot(rise))
+        rise * rise / (run + (run * run + rise * rise).sqrt())
     }
 
     /// Straight distance to another point, mm.
     #[must_use]
     pub fn distance_mm(self, other: Self) -> f64 {
-        (other.s_mm - self.s_mm).hypot(other.z_mm - self.z_mm)
+        let (run, rise) = (other.s_mm - self.s_mm, other.z_mm - self.z_mm);
+        (run * run + rise * rise).sqrt()
     }
 
     /// Height of the straight line from here to `end` at `s_mm`.

@@ -1,67 +1,75 @@
 //! Every way to make saddle and nut for one plan, side by side.
 
-use crestline_physics::Note;
+use crestline_physics::fit::{FitOptions, FitRule, SaddleShape, built_setbacks, ideal_setbacks};
+use crestline_physics::{Contacts, Note};
 
-use crate::solve::{Prepared, fit, fit_options, prepare};
+use crate::solve::{Prepared, fault, fit_options, no_setbacks, prepare};
 use crate::{Checked, Comparison, ComparisonRow, Fault, NutStyle, SaddleStyle, Word};
 
 /// Works out every pair of saddle and nut style for a checked plan; a two-piece saddle is split where the plan
-/// says, or else where the strings part best.
+/// says, or else where it leaves the least error. A single string has no two-piece saddle.
 ///
 /// # Errors
 /// As [`crate::solve`].
 pub fn compare(checked: &Checked) -> Result<Comparison, Vec<Fault>> {
     let prepared = prepare(checked)?;
+    let strings = prepared.fit_strings();
     let mut rows = Vec::new();
-    for &saddle in SaddleStyle::ALL {
-        for &nut in NutStyle::ALL {
-            rows.extend(row(checked, &prepared, saddle, nut)?);
+    for &nut in NutStyle::ALL {
+        // The ideal contacts depend on the nut alone.
+        let options = fit_options(checked.plan(), SaddleStyle::Separate, nut);
+        let ideal = ideal_setbacks(&strings, &options).map_err(no_setbacks)?;
+        for &saddle in SaddleStyle::ALL {
+            let mut options = fit_options(checked.plan(), saddle, nut);
+            let mut split_after = None;
+            if saddle == SaddleStyle::TwoPiece {
+                split_after = best_split(checked, &prepared, &options)?;
+                let Some(split_after) = split_after else { continue };
+                options.saddle = SaddleShape::TwoPiece { split_after };
+            }
+            let built = built_setbacks(&strings, &options, &ideal).map_err(no_setbacks)?;
+            rows.push(ComparisonRow {
+                saddle,
+                nut,
+                split_after: split_after.map(|strings| strings as u32),
+                fits: built.fits,
+                ..measured(&prepared, &built.contacts)?
+            });
         }
     }
+    rows.sort_by_key(|row| SaddleStyle::ALL.iter().position(|style| *style == row.saddle));
     Ok(Comparison { format: "crestline-comparison", version: 1, rows })
 }
 
-/// One row; none for a two-piece saddle on a single string.
-fn row(
+/// Where to split a two-piece saddle: where the plan says, or else where two pieces leave the least squares with
+/// this nut. None for a single string.
+fn best_split(
     checked: &Checked,
     prepared: &Prepared,
-    saddle: SaddleStyle,
-    nut: NutStyle,
-) -> Result<Option<ComparisonRow>, Vec<Fault>> {
+    options: &FitOptions,
+) -> Result<Option<usize>, Vec<Fault>> {
     let plan = checked.plan();
-    let strings = plan.strings.len();
-    let mut options = vec![fit_options(plan, saddle, nut)];
-    if saddle == SaddleStyle::TwoPiece && plan.saddle.split_after.is_none() {
-        options = (1..strings as u32)
-            .map(|split_after| {
-                let mut split = plan.clone();
-                split.saddle.split_after = Some(split_after);
-                fit_options(&split, saddle, nut)
-            })
-            .collect();
+    let given = plan.saddle.split_after.map(|strings| strings as usize);
+    if given.is_some_and(|strings| (1..plan.strings.len()).contains(&strings)) {
+        return Ok(given);
     }
-    let mut best: Option<ComparisonRow> = None;
-    for option in options {
-        if saddle == SaddleStyle::TwoPiece && strings < 2 {
-            continue;
-        }
-        let fitted = fit(prepared, &option)?;
-        let mut row = measured(prepared, &fitted.built.contacts)?;
-        (row.saddle, row.nut, row.fits) = (saddle, nut, fitted.built.fits);
-        if let crestline_physics::fit::SaddleShape::TwoPiece { split_after } = option.saddle {
-            row.split_after = Some(split_after as u32);
-        }
-        if best.as_ref().is_none_or(|best| row.rms_cents < best.rms_cents) {
-            best = Some(row);
+    let strings = prepared.fit_strings();
+    let mut best: Option<(f64, usize)> = None;
+    let options = FitOptions { rule: FitRule::LeastSquares, ..*options };
+    let ideal = ideal_setbacks(&strings, &options).map_err(no_setbacks)?;
+    for split_after in 1..plan.strings.len() {
+        let options = FitOptions { saddle: SaddleShape::TwoPiece { split_after }, ..options };
+        let built = built_setbacks(&strings, &options, &ideal).map_err(no_setbacks)?;
+        let left = measured(prepared, &built.contacts)?.rms_cents;
+        if best.is_none_or(|(least, _)| left < least) {
+            best = Some((left, split_after));
         }
     }
-    Ok(best)
+    Ok(best.map(|(_, split_after)| split_after))
 }
 
-fn measured(
-    prepared: &Prepared,
-    contacts: &[crestline_physics::Contacts],
-) -> Result<ComparisonRow, Vec<Fault>> {
+/// What given contacts leave of the errors.
+fn measured(prepared: &Prepared, contacts: &[Contacts]) -> Result<ComparisonRow, Vec<Fault>> {
     let mut row = ComparisonRow {
         saddle: SaddleStyle::Separate,
         nut: NutStyle::Plain,
@@ -77,7 +85,7 @@ fn measured(
     };
     let (mut squares, mut count) = (0.0, 0);
     for (index, string) in prepared.strings.iter().enumerate() {
-        let fault = |error| vec![crate::solve::fault(index, &error)];
+        let fault = |error| vec![fault(index, &error)];
         let notes: Vec<Note> = string.string.notes(contacts[index]).map_err(fault)?;
         let mut own = 0.0;
         for &fret in &string.frets {

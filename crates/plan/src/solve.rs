@@ -1,22 +1,23 @@
 //! From a checked plan to its [`Solution`].
 //!
-//! [`prepare`] hands the plan to the physics; [`built`] finds the setbacks for a pair of styles; the rest puts
-//! figures, layout and notices together. [`crate::compare`] shares the first two.
+//! [`prepare`] hands the plan to the physics; [`fit`] finds the setbacks; the rest puts
+//! figures, layout and notices together. [`crate::compare`] shares the first.
 
 mod layout;
 mod notices;
 mod prepare;
 mod report;
 
-use crestline_physics::fit::{Setbacks, built_setbacks, ideal_setbacks};
+use crestline_physics::PhysicsError;
+use crestline_physics::fit::{FitOptions, Setbacks, built_setbacks, ideal_setbacks};
 
 use crate::{Checked, Fault, Solution};
 pub(crate) use prepare::{Prepared, fault, fit_options, prepare};
 
 /// Ideal and built setbacks for one pair of styles.
-pub(crate) struct Fitted {
-    pub ideal: Setbacks,
-    pub built: Setbacks,
+struct Fitted {
+    ideal: Setbacks,
+    built: Setbacks,
 }
 
 /// Solves a checked plan.
@@ -34,15 +35,14 @@ pub fn solve(checked: &Checked) -> Result<Solution, Vec<Fault>> {
 }
 
 /// Finds ideal and built setbacks.
-pub(crate) fn fit(
-    prepared: &Prepared,
-    options: &crestline_physics::fit::FitOptions,
-) -> Result<Fitted, Vec<Fault>> {
+fn fit(prepared: &Prepared, options: &FitOptions) -> Result<Fitted, Vec<Fault>> {
     let strings = prepared.fit_strings();
-    let fault = |error: crestline_physics::PhysicsError| {
-        vec![Fault::new("strings", error.to_string(), "figures for which the setbacks can be worked out")]
-    };
-    let ideal = ideal_setbacks(&strings, options).map_err(fault)?;
-    let built = built_setbacks(&strings, options, &ideal).map_err(fault)?;
+    let ideal = ideal_setbacks(&strings, options).map_err(no_setbacks)?;
+    let built = built_setbacks(&strings, options, &ideal).map_err(no_setbacks)?;
     Ok(Fitted { ideal, built })
+}
+
+/// The fault of a plan whose setbacks cannot be worked out.
+pub(crate) fn no_setbacks(error: PhysicsError) -> Vec<Fault> {
+    vec![Fault::new("strings", error.to_string(), "figures for which the setbacks can be worked out")]
 }

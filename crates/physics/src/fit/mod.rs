@@ -140,7 +140,7 @@ pub fn built_setbacks(
     let lines: Vec<PlanLine> = strings.iter().map(|string| string.line).collect();
     match options.saddle {
         SaddleShape::Separate => Ok(Setbacks { lines: Vec::new(), ..ideal.clone() }),
-        SaddleShape::Straight => on_lines(strings, options, ideal, &[0..strings.len()]),
+        SaddleShape::Straight => on_lines(strings, options, ideal, std::slice::from_ref(&(0..strings.len()))),
         SaddleShape::TwoPiece { split_after } => {
             on_lines(strings, options, ideal, &[0..split_after, split_after..strings.len()])
         }

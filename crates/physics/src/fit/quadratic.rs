@@ -10,7 +10,7 @@ use crate::PhysicsError;
 /// Iterations after which the programme is given up; some 15 are usual.
 const MAX_ITERATIONS: usize = 80;
 /// Residuals and mean complementarity, relative to the size of the data, at which it is solved.
-const TOLERANCE: f64 = 1e-12;
+const TOLERANCE: f64 = 1e-11;
 /// What is accepted where rounding stops it before.
 const ACCEPTABLE: f64 = 1e-8;
 

@@ -64,7 +64,9 @@ impl Search<'_> {
         let found = self.descend(start, squared, |near, errors, excesses| {
             self.least_squares_step(near, errors, excesses, None)
         })?;
-        if objective == Objective::SquaredErrors {
+        // Without a note there is no largest error, and the place is kept.
+        if objective == Objective::SquaredErrors || self.strings.iter().all(|string| string.frets.is_empty())
+        {
             return Ok(found);
         }
         let found = self.descend(found.unknowns, largest, |near, errors, excesses| {
@@ -87,15 +89,17 @@ impl Search<'_> {
         step: impl Fn(&Near, &DVector<f64>, &DVector<f64>) -> Result<DVector<f64>, PhysicsError>,
     ) -> Result<Found, PhysicsError> {
         let mut errors = self.errors(&at)?;
+        // A millimetre beyond a limit must never pay, however large the errors.
+        let price = 1e3 * (1.0 + merit(&errors));
         let mut near = self.near(&at, &errors)?;
-        let mut last_step_mm = f64::INFINITY;
+        let (mut last_step_mm, mut settled) = (0.0, false);
         for _ in 0..MAX_STEPS {
             let excesses = DVector::from_vec(self.unknowns.excesses_mm(&at));
             let total = |errors: &DVector<f64>, excesses: &DVector<f64>| {
-                merit(errors) + 1e4 * excesses.iter().map(|excess| excess.max(0.0)).sum::<f64>()
+                merit(errors) + price * excesses.iter().map(|excess| excess.max(0.0)).sum::<f64>()
             };
             let before = total(&errors, &excesses);
-            let mut change = step(&near, &errors, &excesses)?;
+            let Ok(mut change) = step(&near, &errors, &excesses) else { break };
             let mut accepted = false;
             for _ in 0..12 {
                 let next: Vec<f64> = std::iter::zip(&at, change.iter()).map(|(a, b)| a + b).collect();
@@ -111,7 +115,8 @@ impl Search<'_> {
                 change *= 0.5;
             }
             last_step_mm = if change.is_empty() { 0.0 } else { change.amax() };
-            if !accepted || last_step_mm < SETTLED_MM {
+            settled = last_step_mm < SETTLED_MM || (!accepted && last_step_mm < 1e2 * SETTLED_MM);
+            if !accepted || settled {
                 break;
             }
             if last_step_mm > FRESH_MM {
@@ -119,7 +124,7 @@ impl Search<'_> {
             }
         }
         let contacts = self.unknowns.contacts(&at);
-        Ok(Found { unknowns: at, contacts, settled: last_step_mm < 1e2 * SETTLED_MM, last_step_mm })
+        Ok(Found { unknowns: at, contacts, settled, last_step_mm })
     }
 
     /// Errors of all strings at their frets, one after the other.
@@ -293,7 +298,7 @@ fn both_sides(
 
 /// The programme with limits that may be overstepped at a high price: it always has an answer.
 fn softened(programme: &Quadratic) -> Result<DVector<f64>, PhysicsError> {
-    const PRICE: f64 = 1e4;
+    let price = 1e3 * (10.0 + programme.gradient.amax());
     let (rows, columns) = programme.rows.shape();
     let mut soft = Quadratic {
         hessian: DMatrix::zeros(columns + 1, columns + 1),
@@ -303,7 +308,7 @@ fn softened(programme: &Quadratic) -> Result<DVector<f64>, PhysicsError> {
     };
     soft.hessian.view_mut((0, 0), (columns, columns)).copy_from(&programme.hessian);
     soft.gradient.rows_mut(0, columns).copy_from(&programme.gradient);
-    soft.gradient[columns] = PRICE;
+    soft.gradient[columns] = price;
     soft.rows.view_mut((0, 0), (rows, columns)).copy_from(&programme.rows);
     soft.rows.view_mut((0, columns), (rows + 1, 1)).fill(-1.0);
     soft.limits.rows_mut(0, rows).copy_from(&programme.limits);

@@ -53,6 +53,9 @@ fn best_split(
     if given.is_some_and(|strings| (1..plan.strings.len()).contains(&strings)) {
         return Ok(given);
     }
+    if plan.strings.len() < 2 {
+        return Ok(None);
+    }
     let strings = prepared.fit_strings();
     let mut best: Option<(f64, usize)> = None;
     let options = FitOptions { rule: FitRule::LeastSquares, ..*options };

@@ -1,13 +1,13 @@
 #!/usr/bin/env bash
 # Photographs every page of the real window on a display of its own.
-# Usage: photograph.sh PROGRAM FOLDER [PLAN]
+# Usage: photograph.sh PROGRAM [FOLDER [PLAN]]
 # CRESTLINE_PAGES, CRESTLINE_SIZES and CRESTLINE_THEMES narrow it down.
 # Needs xvfb, xdotool and imagemagick; draws with software OpenGL.
 set -euo pipefail
-. "$(dirname "$0")/display.sh"
+. "$(dirname "$0")/display.bash"
 
 program=$1
-folder=$2
+folder=${2:-$(mktemp -d)}
 plan=${3:-}
 mkdir -p "$folder"
 start_display
@@ -16,7 +16,10 @@ photograph() {
     local page=$1 theme=$2 size=$3
     CRESTLINE_PAGE=$page CRESTLINE_THEME=$theme CRESTLINE_SIZE=$size start_window "$program" ${plan:+"$plan"}
     sleep 1.2
-    import -window "$window" "$folder/$page-$theme-$size.png"
+    local picture=$folder/$page-$theme-$size.png
+    import -window "$window" "$picture"
+    # A blank or half-drawn window has few colours.
+    [ "$(identify -format %k "$picture")" -gt 100 ] || { echo "photograph.sh: $picture is blank" >&2; exit 1; }
     stop_window
 }
 
@@ -27,4 +30,4 @@ for page in ${CRESTLINE_PAGES:-saddle fretted-notes}; do
         done
     done
 done
-ls "$folder"
+echo "photograph.sh: done, pictures in $folder"

@@ -178,6 +178,15 @@ impl Palette {
         }
     }
 
+    /// The ground of a figure that is off, deeper for a larger `share` of 0 to 1.
+    #[must_use]
+    pub fn error_ground(&self, is_sharp: bool, share: f32) -> Color32 {
+        const LEAST: f32 = 0.10;
+        const MOST: f32 = 0.32;
+        let hue = if is_sharp { self.caution } else { self.accent };
+        self.sheet.lerp_to_gamma(hue, LEAST + (MOST - LEAST) * share)
+    }
+
     /// The colour of a string, 0 first.
     #[must_use]
     pub fn string(&self, index: usize) -> Color32 {
@@ -326,6 +335,15 @@ mod tests {
                     "{text:?} on {ground:?}: {}",
                     contrast(text, ground)
                 );
+            }
+        }
+    }
+
+    #[test]
+    fn figures_stand_out_from_the_grounds_that_errors_give_them() {
+        for p in [LIGHT, DARK] {
+            for ground in [p.error_ground(true, 1.0), p.error_ground(false, 1.0)] {
+                assert!(contrast(p.ink, ground) >= TEXT_CONTRAST, "{ground:?}: {}", contrast(p.ink, ground));
             }
         }
     }

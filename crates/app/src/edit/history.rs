@@ -91,3 +91,75 @@ fn shift(from: &mut Vec<Step>, to: &mut Vec<Step>, now: &Plan) -> Option<Plan> {
     to.push(Step { name: step.name, plan: now.clone() });
     Some(step.plan)
 }
+
+#[cfg(test)]
+mod tests {
+    #![allow(clippy::unwrap_used)]
+    use super::*;
+    use crestline_plan::{example, read};
+
+    fn plan(relief_mm: f64) -> Plan {
+        let mut plan = read(example("steel_six").unwrap().text).unwrap();
+        plan.instrument.relief_mm = relief_mm;
+        plan
+    }
+
+    fn typed(field: &str) -> Edit {
+        Edit { name: field.to_owned(), gesture: Some(Id::unique(field)) }
+    }
+
+    #[test]
+    fn one_gesture_is_one_step() {
+        let mut history = History::default();
+        history.record(&plan(0.1), &plan(0.2), &typed("relief"));
+        history.record(&plan(0.2), &plan(0.3), &typed("relief"));
+        assert_eq!(history.undo(&plan(0.3)), Some(plan(0.1)));
+        assert_eq!(history.undo(&plan(0.1)), None);
+        assert_eq!(history.redo(&plan(0.1)), Some(plan(0.3)));
+    }
+
+    #[test]
+    fn a_field_that_was_left_begins_a_new_step() {
+        let mut history = History::default();
+        history.record(&plan(0.1), &plan(0.2), &typed("relief"));
+        history.close_gesture();
+        history.record(&plan(0.2), &plan(0.3), &typed("relief"));
+        assert_eq!(history.undo(&plan(0.3)), Some(plan(0.2)));
+    }
+
+    #[test]
+    fn a_gesture_that_ends_where_it_began_leaves_no_step() {
+        let mut history = History::default();
+        history.record(&plan(0.1), &plan(0.2), &typed("relief"));
+        history.record(&plan(0.2), &plan(0.1), &typed("relief"));
+        assert_eq!(history.undo_name(), None);
+        history.record(&plan(0.1), &plan(0.5), &typed("relief"));
+        assert_eq!(history.undo(&plan(0.5)), Some(plan(0.1)));
+    }
+
+    #[test]
+    fn a_new_change_after_undo_ends_what_could_be_redone() {
+        let mut history = History::default();
+        history.record(&plan(0.1), &plan(0.2), &Edit::whole("a"));
+        assert_eq!(history.undo(&plan(0.2)), Some(plan(0.1)));
+        history.record(&plan(0.1), &plan(0.3), &Edit::whole("b"));
+        assert_eq!(history.redo_name(), None);
+        assert_eq!(history.undo_name(), Some("b"));
+    }
+
+    #[test]
+    fn the_oldest_steps_are_let_go() {
+        let mut history = History::default();
+        for i in 0..KEPT + 5 {
+            history.record(&plan(i as f64), &plan(i as f64 + 1.0), &Edit::whole("step"));
+        }
+        let mut now = plan((KEPT + 5) as f64);
+        let mut steps = 0;
+        while let Some(before) = history.undo(&now) {
+            now = before;
+            steps += 1;
+        }
+        assert_eq!(steps, KEPT);
+        assert_eq!(now.instrument.relief_mm, 5.0);
+    }
+}

@@ -112,3 +112,76 @@ fn for_lists(plan: &mut Plan, mut change: impl FnMut(&mut Vec<f64>)) {
         change(&mut targets.open_cents);
     }
 }
+
+#[cfg(test)]
+mod tests {
+    #![allow(clippy::unwrap_used)]
+    use super::*;
+    use crestline_plan::{AsBuilt, Reading, ReadingKind, check, example, read};
+
+    fn mandolin() -> Plan {
+        let mut plan = read(example("mandolin").unwrap().text).unwrap();
+        let setbacks: Vec<f64> = (1..=8).map(f64::from).collect();
+        plan.as_built = Some(AsBuilt { nut_setback_mm: vec![0.0; 8], saddle_setback_mm: setbacks });
+        let reading =
+            |string| Reading { string, fret: 12, kind: ReadingKind::Fretted, cents: f64::from(string) };
+        plan.readings = (1..=8).map(reading).collect();
+        plan
+    }
+
+    #[test]
+    fn a_copy_finds_room_between_its_neighbours() {
+        let mut plan = mandolin();
+        duplicate(&mut plan, 2);
+        assert_eq!(plan.strings.len(), 9);
+        assert!(check(&plan).is_ok(), "the lists beside the strings have grown too");
+        assert_eq!(plan.as_built.unwrap().saddle_setback_mm[3], 3.5);
+        let numbers: Vec<u32> = plan.readings.iter().map(|reading| reading.string).collect();
+        assert_eq!(numbers, [1, 2, 3, 5, 6, 7, 8, 9], "readings stay with their strings");
+    }
+
+    #[test]
+    fn a_copy_of_the_last_string_goes_one_step_further() {
+        let mut plan = mandolin();
+        let across = plan.instrument.across_mm.clone().unwrap().saddle;
+        duplicate(&mut plan, 7);
+        let after = plan.instrument.across_mm.unwrap().saddle;
+        assert!((after[8] - (2.0 * across[7] - across[6])).abs() < 1e-12);
+    }
+
+    #[test]
+    fn a_removed_string_takes_what_belongs_to_it_along() {
+        let mut plan = mandolin();
+        remove(&mut plan, 4);
+        assert_eq!(plan.strings.len(), 7);
+        assert!(check(&plan).is_ok());
+        assert_eq!(plan.as_built.unwrap().saddle_setback_mm, [1.0, 2.0, 3.0, 4.0, 6.0, 7.0, 8.0]);
+        let left: Vec<(u32, f64)> =
+            plan.readings.iter().map(|reading| (reading.string, reading.cents)).collect();
+        assert_eq!(left[4], (5, 6.0));
+        assert_eq!(left.len(), 7);
+    }
+
+    #[test]
+    fn the_last_string_stays_and_a_seventeenth_does_not_come() {
+        let mut plan = mandolin();
+        for _ in 0..20 {
+            remove(&mut plan, 0);
+        }
+        assert_eq!(plan.strings.len(), 1);
+        for _ in 0..20 {
+            duplicate(&mut plan, 0);
+        }
+        assert_eq!(plan.strings.len(), MOST_STRINGS);
+    }
+
+    #[test]
+    fn readings_follow_strings_that_change_places() {
+        let mut plan = mandolin();
+        swap(&mut plan, 0, 1);
+        let first = plan.readings.iter().find(|reading| reading.string == 1).unwrap();
+        assert_eq!(first.cents, 2.0);
+        swap(&mut plan, 0, 1);
+        assert_eq!(plan, mandolin());
+    }
+}

@@ -9,7 +9,7 @@ use crate::theme::{Palette, size};
 /// Least distance of grid lines in points that the plot works with.
 const GRID_POINTS: f32 = 8.0;
 /// Least distance of figures along x and y, points.
-const FIGURE_POINTS: [f64; 2] = [46.0, 24.0];
+const FIGURE_POINTS: [f64; 2] = [46.0, 32.0];
 /// The most marks on an axis, whatever the bounds.
 const MOST_MARKS: i64 = 200;
 

@@ -244,9 +244,8 @@ fn summary(ui: &mut Ui, grid: &Grid, strings: &[StringReport], figures: [StringF
 
 /// The ground of a cell: none for small errors, deeper for large ones, one hue for sharp and one for flat.
 fn ground(palette: &Palette, cents: f64) -> Option<Color32> {
-    let share = ((cents.abs() - SMALL_CENTS) / (LARGE_CENTS - SMALL_CENTS)).clamp(0.0, 1.0);
-    let hue = if cents > 0.0 { palette.caution_ground } else { palette.accent_ground };
-    (cents.abs() >= SMALL_CENTS).then(|| palette.sheet.lerp_to_gamma(hue, 0.45 + 0.55 * share as f32))
+    let share = ((cents.abs() - SMALL_CENTS) / (LARGE_CENTS - SMALL_CENTS)).clamp(0.0, 1.0) as f32;
+    (cents.abs() >= SMALL_CENTS).then(|| palette.error_ground(cents > 0.0, share))
 }
 
 impl NoteFigure {

@@ -4,6 +4,7 @@ use std::panic::{self, AssertUnwindSafe};
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
 use std::sync::atomic::{AtomicBool, Ordering};
+use std::time::Instant;
 
 use crestline_plan::{EXAMPLES, Plan, read_draft};
 use eframe::egui::{Theme, ViewportBuilder};
@@ -22,10 +23,12 @@ const INSTEAD: &str = "Without a window, the command line does the same work: se
 /// # Errors
 /// Words for the user: the plan cannot be opened, or the window cannot.
 pub fn launch(path: Option<PathBuf>) -> Result<(), String> {
+    let began = Instant::now();
     let plan = first_plan(path.as_deref())?;
     display_is_there()?;
     let options = Options::read(|name| std::env::var(name).ok());
-    run(plan, path, options).map_err(|reason| format!("the window cannot be opened: {reason}\n{INSTEAD}"))
+    run(plan, path, options, began)
+        .map_err(|reason| format!("the window cannot be opened: {reason}\n{INSTEAD}"))
 }
 
 fn first_plan(path: Option<&Path>) -> Result<Plan, String> {
@@ -54,7 +57,7 @@ fn display_is_there() -> Result<(), String> {
 
 /// Runs the window. A panic before its first frame comes from a library of the system that is missing; one
 /// after it is a fault of ours and is passed on.
-fn run(plan: Plan, path: Option<PathBuf>, options: Options) -> Result<(), String> {
+fn run(plan: Plan, path: Option<PathBuf>, options: Options, began: Instant) -> Result<(), String> {
     let opened = Arc::new(AtomicBool::new(false));
     let mark = Arc::clone(&opened);
     let hook = panic::take_hook();
@@ -71,7 +74,9 @@ fn run(plan: Plan, path: Option<PathBuf>, options: Options) -> Result<(), String
             Box::new(move |creation| {
                 mark.store(true, Ordering::Relaxed);
                 creation.egui_ctx.options_mut(|o| o.fallback_theme = Theme::Light);
-                Ok(Box::new(Window::new(&creation.egui_ctx, plan, path, &options)))
+                let mut window = Window::new(&creation.egui_ctx, plan, path, &options);
+                window.tell_first_frame = options.timing.then_some(began);
+                Ok(Box::new(window))
             }),
         )
     }));

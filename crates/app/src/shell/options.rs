@@ -2,7 +2,7 @@
 //!
 //! `CRESTLINE_PAGE` is a page's name in lower case with hyphens (`saddle`, `fretted-notes`), `CRESTLINE_THEME`
 //! is `light`, `dark` or `system`, and `CRESTLINE_SIZE` is a size in points such as `1280x800`.
-//! What is not understood is passed over.
+//! With `CRESTLINE_TIMING` set, the time to the first frame is told on standard error. What is not understood is passed over.
 
 use crate::view::{Page, ThemeChoice, View};
 
@@ -20,6 +20,8 @@ pub struct Options {
     pub theme: ThemeChoice,
     /// Its size in points.
     pub size: [f32; 2],
+    /// Whether to tell the time to the first frame.
+    pub timing: bool,
 }
 
 impl Options {
@@ -32,6 +34,7 @@ impl Options {
             page: page.unwrap_or(Page::Saddle),
             theme: theme.unwrap_or_default(),
             size: size.unwrap_or(USUAL_SIZE),
+            timing: variable("CRESTLINE_TIMING").is_some(),
         }
     }
 
@@ -78,9 +81,17 @@ mod tests {
         });
         assert_eq!(
             given,
-            Options { page: Page::FrettedNotes, theme: ThemeChoice::Dark, size: [1920.0, 1080.0] }
+            Options {
+                page: Page::FrettedNotes,
+                theme: ThemeChoice::Dark,
+                size: [1920.0, 1080.0],
+                timing: false
+            }
         );
         let odd = Options::read(|_| Some("NaNx5".into()));
-        assert_eq!(odd, Options { page: Page::Saddle, theme: ThemeChoice::System, size: USUAL_SIZE });
+        assert_eq!(
+            odd,
+            Options { page: Page::Saddle, theme: ThemeChoice::System, size: USUAL_SIZE, timing: true }
+        );
     }
 }

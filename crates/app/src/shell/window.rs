@@ -1,6 +1,8 @@
 //! The window: one frame after the other.
 
+use std::io::Write;
 use std::path::PathBuf;
+use std::time::Instant;
 
 use crestline_plan::Plan;
 use eframe::egui::{CentralPanel, Context, Frame, Margin, Panel, RichText, Ui, ViewportCommand};
@@ -35,6 +37,9 @@ pub struct Window {
     pub after_saving: Option<Command>,
     /// Whether the window may close although the plan has changes.
     pub may_close: bool,
+    /// Since when the first frame has been waited for, where its time is to be told.
+    pub tell_first_frame: Option<Instant>,
+    frames: u64,
     title: String,
 }
 
@@ -51,6 +56,8 @@ impl Window {
             picker: None,
             after_saving: None,
             may_close: false,
+            tell_first_frame: None,
+            frames: 0,
             title: String::new(),
         }
     }
@@ -75,6 +82,20 @@ impl Window {
         obey::take_answer(self, &ctx);
         self.guard_closing(&ctx);
         self.follow_title(&ctx);
+        self.tell_timing(&ctx);
+    }
+
+    /// Tells the time to the first frame at the beginning of the second, when the first has been painted.
+    fn tell_timing(&mut self, ctx: &Context) {
+        self.frames += 1;
+        let Some(began) = self.tell_first_frame else { return };
+        if self.frames == 1 {
+            ctx.request_repaint();
+        } else {
+            self.tell_first_frame = None;
+            // Whoever asked for it has closed standard error where this fails.
+            let _ = writeln!(std::io::stderr(), "first frame after {:.3} s", began.elapsed().as_secs_f64());
+        }
     }
 
     /// Commands called by keys; none while a question stands in front.

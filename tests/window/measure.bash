@@ -1,0 +1,22 @@
+#!/usr/bin/env bash
+# Measures the window: time to its first frame, processor time at rest, and memory. Use a release build.
+# Usage: bash measure.bash PROGRAM [PLAN]
+set -euo pipefail
+. "$(dirname "$0")/display.bash"
+
+program=$1
+plan=${2:-}
+start_display
+for run in 1 2 3 4 5; do
+    CRESTLINE_TIMING=1 "$program" ${plan:+"$plan"} &
+    process=$!
+    sleep 1.5
+    stop_window
+done
+start_window "$program" ${plan:+"$plan"}
+sleep 1
+ticks() { awk '{ print $14 + $15 }' "/proc/$process/stat"; }
+began=$(ticks)
+sleep 10
+echo "at rest: $(( $(ticks) - began )) hundredths of a second of processor time in 10 s"
+awk '/VmRSS/ { print "resident: " $2 / 1000 " MB" }' "/proc/$process/status"

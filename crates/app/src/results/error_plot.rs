@@ -55,7 +55,7 @@ pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize,
         ui.add(Checkbox::new(&mut choice.ideal, "ideal ╌╌"));
         ui.add(Checkbox::new(&mut choice.built, "as built ──"));
         if outcome.plan.as_built.is_some() {
-            ui.add(Checkbox::new(&mut choice.as_built, "as it is now ┄┄"));
+            ui.add(Checkbox::new(&mut choice.as_built, "now ┄┄"));
         }
         ui.add_space(size::GAP);
         ui.add(Checkbox::new(&mut choice.others, "other strings"));

@@ -80,11 +80,27 @@ fn draw(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
             travel(plot, d, index, string);
         }
     }
-    for saddle_line in &d.outcome.solution.report.saddle.lines {
-        line(plot, &[saddle_line.treble, saddle_line.bass], p.accent, 2.0, LineStyle::Solid);
-    }
+    crest_lines(plot, d);
     for (index, string) in layout.strings.iter().enumerate() {
         crest(plot, d, index, string);
+    }
+}
+
+/// The straight crests, or for a shaped saddle the crest filed from string to string and the slot's centre line.
+fn crest_lines(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
+    let is_shaped = matches!(d.outcome.plan.saddle.style, SaddleStyle::Shaped);
+    let (colour, style) = if is_shaped {
+        (d.palette.quiet, LineStyle::Dashed { length: 5.0 })
+    } else {
+        (d.palette.accent, LineStyle::Solid)
+    };
+    for straight in &d.outcome.solution.report.saddle.lines {
+        line(plot, &[straight.treble, straight.bass], colour, if is_shaped { 1.0 } else { 2.0 }, style);
+    }
+    if is_shaped {
+        let crests: Vec<Point> =
+            d.outcome.solution.layout.strings.iter().map(|string| string.crest).collect();
+        line(plot, &crests, d.palette.accent, 2.0, LineStyle::Solid);
     }
 }
 

@@ -1,5 +1,6 @@
 //! Opening the window, and plain words where it cannot be opened.
 
+use std::any::Any;
 use std::panic::{self, AssertUnwindSafe};
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
@@ -83,7 +84,7 @@ fn run(plan: Plan, path: Option<PathBuf>, options: Options, began: Instant) -> R
     match result {
         Ok(result) => result.map_err(|error| words(&error)),
         Err(cause) if opened.load(Ordering::Relaxed) => panic::resume_unwind(cause),
-        Err(_) => Err(missing_library()),
+        Err(cause) => Err(missing_library(cause.as_ref())),
     }
 }
 
@@ -102,34 +103,28 @@ fn native(options: &Options) -> NativeOptions {
     }
 }
 
+/// What went wrong, without the inside of the libraries.
 fn words(error: &eframe::Error) -> String {
     match error {
         eframe::Error::Winit(_) | eframe::Error::WinitEventLoop(_) => {
-            format!("the display does not answer ({error}).")
+            let name = |variable: &str| std::env::var(variable).ok().filter(|value| !value.is_empty());
+            let display = name("WAYLAND_DISPLAY").or_else(|| name("DISPLAY"));
+            format!("the display {} does not answer.", display.unwrap_or_default())
         }
         eframe::Error::Glutin(_) | eframe::Error::NoGlutinConfigs(..) | eframe::Error::OpenGL(_) => {
-            format!(
-                "there is no OpenGL to draw with ({error}). A software driver, such as Mesa's, is enough."
-            )
+            "there is no OpenGL to draw with; a software driver, such as Mesa's, is enough.".to_owned()
         }
         other => format!("{other}."),
     }
 }
 
-/// The library that is most often missing, if it is, or a guess that says so.
-fn missing_library() -> String {
-    if keyboard_library_is_there() {
-        "a library that draws or reads the keyboard is missing.".to_owned()
-    } else {
-        "the library libxkbcommon-x11 is missing; install the package that has it (libxkbcommon-x11-0 on Debian).".to_owned()
-    }
-}
-
-/// Looks for libxkbcommon-x11 where the system's loader does: in its cache and in the usual folders.
-fn keyboard_library_is_there() -> bool {
-    const NAME: &str = "libxkbcommon-x11.so.0";
-    let cache = std::fs::read("/etc/ld.so.cache").unwrap_or_default();
-    let in_cache = cache.windows(NAME.len()).any(|window| window == NAME.as_bytes());
-    let folders = std::env::var_os("LD_LIBRARY_PATH").unwrap_or_default();
-    in_cache || std::env::split_paths(&folders).any(|folder| folder.join(NAME).exists())
+/// A library of the system that panicked while the window was being made.
+fn missing_library(cause: &(dyn Any + Send)) -> String {
+    let said =
+        cause.downcast_ref::<String>().map(String::as_str).or_else(|| cause.downcast_ref::<&str>().copied());
+    let said = said.map_or_else(String::new, |said| format!(" ({said})"));
+    format!(
+        "a library of the system is missing or does not work{said}. Most often it is libxkbcommon-x11, in the package \
+         libxkbcommon-x11-0 on Debian."
+    )
 }

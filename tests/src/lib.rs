@@ -2,7 +2,7 @@
 //!
 //! There is nothing here for other crates to use: the rooms are compiled for `cargo test` only.
 
-#![cfg_attr(test, allow(clippy::unwrap_used, clippy::expect_used, clippy::panic))]
+#![cfg_attr(test, allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, clippy::print_stdout))]
 
 #[cfg(test)]
 mod command_line;
@@ -10,5 +10,7 @@ mod command_line;
 mod places;
 #[cfg(test)]
 mod published;
+#[cfg(test)]
+mod reference;
 #[cfg(test)]
 mod tidy;

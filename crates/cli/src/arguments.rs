@@ -3,6 +3,8 @@
 use std::path::{Path, PathBuf};
 
 use clap::{Args, Parser, Subcommand};
+use crestline_plan::{Datum, Paper, Word};
+use crestline_sheets::{Format, LengthUnits};
 
 /// Works out where each string's saddle crest must stand so that fretted notes are in tune.
 ///
@@ -34,6 +36,10 @@ pub(crate) enum Command {
     Example(Example),
     /// Set every way to make saddle and nut side by side.
     Compare(Compare),
+    /// Write the dimensioned drawing at 1:1.
+    Sheet(Sheet),
+    /// Write the schedule for the jig as CSV.
+    Schedule(Schedule),
 }
 
 /// The plan that a command works on.
@@ -75,6 +81,71 @@ pub(crate) struct Compare {
     /// Print the comparison as JSON.
     #[arg(long)]
     pub json: bool,
+}
+
+/// `sheet`
+#[derive(Debug, Args)]
+pub(crate) struct Sheet {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// File to write, ending in .svg, .pdf or .dxf, or - for standard output.
+    #[arg(short, long, value_name = "FILE")]
+    pub output: PathBuf,
+    /// Kind of file where its name does not tell: svg, pdf or dxf.
+    #[arg(long, value_parser = drawing_format)]
+    pub format: Option<Format>,
+    /// Paper: a4, a3 or letter. The plan's own where left out.
+    #[arg(long, value_parser = word::<Paper>)]
+    pub paper: Option<Paper>,
+    #[command(flatten)]
+    pub frame: Frame,
+    /// Date for the title block, in your own words.
+    #[arg(long, value_name = "TEXT")]
+    pub date: Option<String>,
+}
+
+/// `schedule`
+#[derive(Debug, Args)]
+pub(crate) struct Schedule {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// File to write, or - for standard output.
+    #[arg(short, long, value_name = "FILE", default_value = "-")]
+    pub output: PathBuf,
+    #[command(flatten)]
+    pub frame: Frame,
+}
+
+/// Units and datum of what is written.
+#[derive(Debug, Args)]
+pub(crate) struct Frame {
+    /// Units: mm, inch or inch_fraction. The plan's own where left out.
+    #[arg(long, value_parser = units)]
+    pub units: Option<LengthUnits>,
+    /// Where x is measured from: nut, twelfth_fret or saddle_line. The plan's own where left out.
+    #[arg(long, value_parser = word::<Datum>)]
+    pub datum: Option<Datum>,
+}
+
+fn word<T: Word>(text: &str) -> Result<T, String> {
+    T::from_word(text).ok_or_else(|| format!("allowed: {}", T::all_words()))
+}
+
+fn units(text: &str) -> Result<LengthUnits, String> {
+    match text {
+        "mm" => Ok(LengthUnits::Millimetres),
+        "inch" => Ok(LengthUnits::InchDecimal),
+        "inch_fraction" => Ok(LengthUnits::InchFraction),
+        _ => Err("allowed: mm, inch or inch_fraction".to_owned()),
+    }
+}
+
+/// The kind of drawing that an ending stands for; a schedule is no drawing.
+pub(crate) fn drawing_format(ending: &str) -> Result<Format, String> {
+    match Format::of_ending(ending) {
+        Some(format) if format != Format::Csv => Ok(format),
+        _ => Err("allowed: svg, pdf or dxf".to_owned()),
+    }
 }
 
 /// Whether a path stands for a standard stream.

@@ -9,7 +9,7 @@ use crestline_plan::{Checked, EXAMPLES, Solution};
 
 use crate::arguments::{Arguments, Command, Compare, Example, Solve, is_standard};
 use crate::failure::{STATUS_DONE, STATUS_REFUSED};
-use crate::{Failure, Streams, files, fret_errors, print, solve_table, styles};
+use crate::{Failure, Streams, bench_files, files, fret_errors, print, solve_table, styles};
 
 /// What the arguments ask for.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -77,6 +77,8 @@ fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failur
         Command::Check(options) => check(&options.plan, streams),
         Command::Example(options) => example(options, streams),
         Command::Compare(options) => compare(options, streams),
+        Command::Sheet(options) => bench_files::sheet(options, streams),
+        Command::Schedule(options) => bench_files::schedule(options, streams),
     }
 }
 
@@ -131,7 +133,7 @@ fn compare(options: &Compare, streams: &mut Streams<'_>) -> Result<(), Failure> 
 }
 
 /// Reads, checks and solves a plan.
-fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked, Solution), Failure> {
+pub(crate) fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked, Solution), Failure> {
     let checked = checked(path, streams)?;
     let solution = crestline_plan::solve(&checked).map_err(|faults| refused(path, faults))?;
     Ok((checked, solution))

@@ -16,6 +16,7 @@
 //! ```
 
 mod arguments;
+mod bench_files;
 mod commands;
 mod failure;
 pub mod files;

@@ -34,23 +34,42 @@ pub(crate) fn glyph(character: char) -> Option<GlyphId> {
     face()?.glyph_index(character)
 }
 
+/// What is measured of a character, over the em.
+#[derive(Clone, Copy, Default)]
+struct Measures {
+    /// Advance width.
+    advance: f64,
+    /// Lowest and highest ink, from the baseline.
+    ink: (f64, f64),
+}
+
 /// Advance width of a character over the em.
 pub(crate) fn advance_em(character: char) -> f64 {
-    let advance = face().and_then(|face| {
-        let units = face.glyph_hor_advance(face.glyph_index(character)?)?;
-        Some(f64::from(units) / f64::from(face.units_per_em()))
-    });
-    advance.unwrap_or(0.0)
+    measures(character).advance
 }
 
 /// Lowest and highest ink of a character over the em, from the baseline.
 pub(crate) fn ink_em(character: char) -> (f64, f64) {
-    let ink = face().and_then(|face| {
-        let bounds = face.glyph_bounding_box(face.glyph_index(character)?)?;
-        let em = f64::from(face.units_per_em());
-        Some((f64::from(bounds.y_min) / em, f64::from(bounds.y_max) / em))
-    });
-    ink.unwrap_or((0.0, 0.0))
+    measures(character).ink
+}
+
+/// The measures of a character; those of ASCII are kept, since most text is.
+fn measures(character: char) -> Measures {
+    static ASCII: OnceLock<Vec<Measures>> = OnceLock::new();
+    let ascii = ASCII.get_or_init(|| ('\0'..='\x7f').map(|c| read_measures(c).unwrap_or_default()).collect());
+    let code = usize::try_from(u32::from(character)).unwrap_or(usize::MAX);
+    ascii.get(code).copied().or_else(|| read_measures(character)).unwrap_or_default()
+}
+
+fn read_measures(character: char) -> Option<Measures> {
+    let face = face()?;
+    let em = f64::from(face.units_per_em());
+    let glyph = face.glyph_index(character)?;
+    let advance = f64::from(face.glyph_hor_advance(glyph)?) / em;
+    // A space has no ink.
+    let bounds = face.glyph_bounding_box(glyph);
+    let ink = bounds.map_or((0.0, 0.0), |b| (f64::from(b.y_min) / em, f64::from(b.y_max) / em));
+    Some(Measures { advance, ink })
 }
 
 #[cfg(test)]

@@ -155,6 +155,7 @@ fn shown(character: char) -> Option<char> {
         _ if character.is_control() || character == '\u{2028}' || character == '\u{2029}' => Some(' '),
         '\u{AD}' | '\u{200B}'..='\u{200F}' | '\u{202A}'..='\u{202E}' | '\u{2060}'..='\u{206F}' => None,
         '\u{FEFF}' | '\u{FE00}'..='\u{FE0F}' | '\u{FFF9}'..='\u{FFFB}' => None,
+        ' '..='~' => Some(character),
         _ if runs_right_to_left(character) || glyph(character).is_none() => Some(SUBSTITUTE),
         _ => Some(character),
     }

@@ -86,6 +86,15 @@ impl<'a> Facts<'a> {
         }
     }
 
+    /// The datum in few words, for figures and headings.
+    pub fn datum_short(&self) -> &'static str {
+        match self.options.datum {
+            Datum::Nut => "nut line",
+            Datum::TwelfthFret => "fret 12",
+            Datum::SaddleLine => "saddle line",
+        }
+    }
+
     /// Whether any nut edge has been moved.
     pub fn nut_is_compensated(&self) -> bool {
         self.strings.iter().any(|s| s.built.nut_setback_mm != 0.0)
@@ -204,8 +213,8 @@ mod tests {
             let slot = slot(String::new(), turned);
             assert!(slot.treble_end.distance(pt(101.5, 30.1)) < 1e-12);
             assert!(slot.bass_end.distance(pt(104.5, -30.1)) < 1e-12);
-            // tan⁻¹(3/60.2) = 2.8528 degrees, by hand.
-            assert!((slot.slant_degrees() - 2.8528).abs() < 1e-4);
+            // tan⁻¹(3/60.2) = 2.85291 degrees, by hand.
+            assert!((slot.slant_degrees() - 2.85291).abs() < 1e-5);
         }
     }
 

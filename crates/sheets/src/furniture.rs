@@ -139,7 +139,7 @@ impl Page {
             let text = small(pt(left + length_mm / 2.0, y + 0.9), Anchor::Middle, words);
             block.add(CHECK, THIN, Shape::Text(text));
         }
-        let words = "Measure the check lines before cutting. If one is off, print again at 100 %, not fitted to the page.";
+        let words = "Measure the check lines before cutting. If one is off, print again at full size (100%), not fitted to the page.";
         let text_left = left + INCHES_MM + 5.0;
         for (line, row) in wrap(words, lettering::SMALL_MM, max.x - text_left - 2.0).into_iter().zip(0..) {
             let at = pt(text_left, max.y - 4.4 - 4.0 * f64::from(row));

@@ -26,9 +26,9 @@ pub fn machine(plan: &Plan, solution: &Solution, options: &SheetOptions) -> Draw
     let mut block = Block::default();
     draw_lines(&mut block, &facts);
     let core = saddle_core(&facts);
-    let after_mm = dimension_setbacks(&mut block, &facts, core.max.x + 10.0);
-    dimension_across(&mut block, &facts, after_mm);
-    let heights = dimension_slants(&mut block, &facts, core);
+    let labels = dimension_setbacks(&mut block, &facts, core.max.x + 10.0);
+    dimension_across(&mut block, &facts, labels.max.x);
+    let heights = dimension_slants(&mut block, &facts, core, labels);
     let top_mm = dimension_from_datum(&mut block, &facts, heights);
     dimension_nut(&mut block, &facts);
     write_texts(&mut block, &facts, core, top_mm);

@@ -51,7 +51,7 @@ fn blocks(facts: &Facts<'_>, width_mm: f64) -> Vec<Block> {
         blocks.extend(nut_view(facts));
     }
     if contents.profile {
-        blocks.push(profile(facts, width_mm.min(170.0)));
+        blocks.extend(profile(facts, width_mm.min(170.0)));
     }
     if contents.tables {
         blocks.extend(slots(facts));

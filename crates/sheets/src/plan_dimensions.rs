@@ -18,27 +18,27 @@ const FIRST_LINE_MM: f64 = 8.0;
 
 /// Draws all dimensions around the core of the view.
 pub(crate) fn dimension_saddle(block: &mut Block, facts: &Facts<'_>, core: Rect, left_mm: f64) {
-    let after_mm = dimension_setbacks(block, facts, core.max.x + LABEL_COLUMN_MM);
-    dimension_across(block, facts, after_mm);
-    let (top_mm, bottom_mm) = dimension_slants(block, facts, core);
+    let labels = dimension_setbacks(block, facts, core.max.x + LABEL_COLUMN_MM);
+    dimension_across(block, facts, labels.max.x);
+    let (top_mm, bottom_mm) = dimension_slants(block, facts, core, labels);
     dimension_from_datum(block, facts, (top_mm, bottom_mm), left_mm - NAMES_MM);
 }
 
 /// Room of the strings' names, which the lines toward the datum use as well, mm.
 const NAMES_MM: f64 = 24.0;
 
-/// The setback of every string along the string, its figure in a column; gives the column's right edge.
-pub(crate) fn dimension_setbacks(block: &mut Block, facts: &Facts<'_>, column_mm: f64) -> f64 {
+/// The setback of every string along the string, its figure in a column; gives the column's box.
+pub(crate) fn dimension_setbacks(block: &mut Block, facts: &Facts<'_>, column_mm: f64) -> Rect {
     let places = spread(&facts.strings.iter().map(|s| s.crest.y).collect::<Vec<_>>(), LABEL_STEP_MM);
-    let mut right_mm = column_mm;
+    let mut column = Rect::new(column_mm, 0.0, 0.0, 0.0);
     for (string, y) in facts.strings.iter().zip(places) {
         let label = facts.text(string.built.saddle_setback_mm);
         let label_mm = width_mm(&clean(&label), lettering::SMALL_MM);
         let at = pt(column_mm + label_mm / 2.0, y);
         block.dimension(Dimension::new(setback_measure(string), label).labelled_at(at));
-        right_mm = right_mm.max(column_mm + label_mm);
+        column = column.joined(Rect::new(column_mm, y - LABEL_STEP_MM / 2.0, label_mm, LABEL_STEP_MM));
     }
-    right_mm
+    column
 }
 
 /// From the nominal saddle line to the crest, along the string.
@@ -83,16 +83,22 @@ fn slanted<'f>(facts: &'f Facts<'_>) -> impl Iterator<Item = (bool, &'f Slot)> {
     slots.iter().enumerate().map(move |(index, slot)| (index + 1 == count && count > 1, slot))
 }
 
-/// The slant of every slot from the square; gives the heights above and below which nothing is drawn yet.
-pub(crate) fn dimension_slants(block: &mut Block, facts: &Facts<'_>, core: Rect) -> (f64, f64) {
+/// The slant of every slot from the square, clear of the column of labels; gives the heights above and below
+/// which nothing is drawn yet.
+pub(crate) fn dimension_slants(block: &mut Block, facts: &Facts<'_>, core: Rect, labels: Rect) -> (f64, f64) {
     const PAST_MM: f64 = 4.0;
-    let (mut top_mm, mut bottom_mm) = (core.max.y + 5.0, core.min.y - 5.0);
+    let (mut top_mm, mut bottom_mm) =
+        (labels.max.y.max(core.max.y + 5.0), labels.min.y.min(core.min.y - 5.0));
     for (downward, slot) in slanted(facts) {
-        let radius_mm = slot.length_mm() + PAST_MM;
         let slant = slot.slant_degrees();
         let label = format!("{}°", crate::lengths::decimals(slant.abs(), 2));
-        let (vertex, square_deg, sign) =
-            if downward { (slot.treble_end, 270.0, -1.0) } else { (slot.bass_end, 90.0, 1.0) };
+        let (vertex, square_deg, clear_mm) = if downward {
+            (slot.treble_end, 270.0, slot.treble_end.y - labels.min.y)
+        } else {
+            (slot.bass_end, 90.0, labels.max.y - slot.bass_end.y)
+        };
+        let sign = if downward { -1.0 } else { 1.0 };
+        let radius_mm = (slot.length_mm() + PAST_MM).max(clear_mm + 2.0);
         let (start_deg, end_deg) =
             if slant >= 0.0 { (square_deg, square_deg + slant) } else { (square_deg + slant, square_deg) };
         let label_mm = width_mm(&label, lettering::SMALL_MM);
@@ -103,7 +109,7 @@ pub(crate) fn dimension_slants(block: &mut Block, facts: &Facts<'_>, core: Rect)
             block.line(
                 DIMENSION,
                 THIN,
-                vertex.toward(way, radius_mm - PAST_MM + 0.8),
+                vertex.toward(way, slot.length_mm() + 0.8),
                 vertex.toward(way, radius_mm + 1.5),
             );
         }
@@ -153,20 +159,21 @@ fn from_near_datum(block: &mut Block, facts: &Facts<'_>, feature: Point, line_mm
 
 /// A dimension whose other end lies off the sheet: its line is broken off toward the datum.
 fn from_far_datum(block: &mut Block, facts: &Facts<'_>, feature: Point, line_mm: f64, left_mm: f64) {
+    const BREAK_MM: f64 = 9.0;
+    let words = format!("{} from {}", facts.x_text(feature.x), facts.datum_short());
+    let words_mm = width_mm(&words, lettering::SMALL_MM);
     let tip = pt(feature.x, line_mm);
-    let end = pt(left_mm, line_mm);
+    let end = pt(left_mm.min(tip.x - BREAK_MM - words_mm - 4.0), line_mm);
     let away = if line_mm >= feature.y { 1.0 } else { -1.0 };
     block.line(DIMENSION, THIN, pt(feature.x, feature.y + away * 0.8), pt(feature.x, line_mm + away * 1.5));
     block.line(DIMENSION, THIN, end, tip);
     block.add(DIMENSION, THIN, arrow(tip, 1.0));
     block.add(DIMENSION, THIN, arrow(end, -1.0));
     // The break: two short slanting strokes.
-    for x in [left_mm + 6.0, left_mm + 7.0] {
+    for x in [end.x + 6.0, end.x + 7.0] {
         block.line(DIMENSION, THIN, pt(x - 0.6, line_mm - 1.4), pt(x + 0.6, line_mm + 1.4));
     }
-    let words = format!("{} from {}", facts.x_text(feature.x), facts.datum_words());
-    let width_mm = (tip.x - left_mm - 10.0).max(30.0);
-    let text = small(pt(left_mm + 9.0, line_mm + 1.0), Anchor::Start, words).within(width_mm);
+    let text = small(pt(end.x + BREAK_MM, line_mm + 1.0), Anchor::Start, words);
     block.add(DIMENSION, THIN, Shape::Text(text));
 }
 

@@ -1,5 +1,7 @@
 //! The schedule of crests and the table of slots or pieces.
 
+use crestline_plan::SaddleStyle;
+
 use crate::block::Block;
 use crate::facts::Facts;
 use crate::lengths::{cents, decimals};
@@ -8,16 +10,16 @@ use crate::table::{Column, Table};
 /// One row a string.
 pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
     let unit = facts.options.units.sign();
-    let mut block = Block::new("Schedule", format!("Schedule of crests, x from the {}", facts.datum_words()));
+    let mut block = Block::new("Schedule", format!("Schedule of crests, x from the {}", facts.datum_short()));
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
     let columns = vec![
-        Column { heading: ["String", ""], unit: "", width_mm: 24.0, number: false },
-        number("Gauge", "(w wound)", unit, 18.0),
-        number("Ideal", "setback", unit, 15.0),
-        number("Built", "setback", unit, 15.0),
+        Column { heading: ["String", ""], unit: "", width_mm: 22.0, number: false },
+        number("Gauge", "w: wound", unit, 20.0),
+        number("Ideal", "setback", unit, 16.0),
+        number("Built", "setback", unit, 16.0),
         number("Crest", "x", unit, 16.0),
-        number("Crest", "y", unit, 16.0),
-        number("Slot", "offset", unit, 15.0),
+        number("Crest", "y", unit, 15.0),
+        number("Slot", "offset", unit, 14.0),
         number("Crest", "height", unit, 15.0),
         number("Fret 12", "error", "cents", 15.0),
         number("Worst", "error", "cents", 15.0),
@@ -47,7 +49,8 @@ pub(crate) fn slots(facts: &Facts<'_>) -> Option<Block> {
         return None;
     }
     let unit = facts.options.units.sign();
-    let title = format!("Ends of the centre line of each slot or piece, x from the {}", facts.datum_words());
+    let what = if facts.plan.saddle.style == SaddleStyle::Separate { "each piece" } else { "the slot" };
+    let title = format!("Centre line of {what}, x from the {}", facts.datum_short());
     let mut block = Block::new("Slot", title);
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
     let columns = vec![

@@ -9,7 +9,7 @@ use crate::layers::REGISTER;
 const OVERLAP_X_MM: f64 = 50.0;
 const OVERLAP_Y_MM: f64 = 22.0;
 /// Room around a part for its registration marks, mm.
-const MARK_ROOM_MM: f64 = 9.0;
+const MARK_ROOM_MM: f64 = 10.0;
 /// Height kept for the heading, mm.
 const HEADING_MM: f64 = 9.0;
 
@@ -100,7 +100,7 @@ fn registration(part: &mut Block, at: Point, name: &str) {
     for arm in [pt(2.5, 0.0), pt(0.0, 2.5)] {
         part.line(REGISTER, pen, at.minus(arm), at.plus(arm));
     }
-    part.add(REGISTER, pen, Shape::Text(small(pt(at.x, at.y + 3.2), Anchor::Middle, name).turned(0.0)));
+    part.add(REGISTER, pen, Shape::Text(small(pt(at.x, at.y + 2.9), Anchor::Middle, name).turned(0.0)));
 }
 
 /// What of an item lies within a window. Text and arrows are drawn whole or not at all; the overlap is

@@ -4,7 +4,7 @@
 
 mod cases;
 
-use cases::{all_options, cases};
+use cases::{all_options, cases, options_for};
 use crestline_drawing::{Drawing, Mark, Point, Rect, Sheet, TextRun};
 use crestline_sheets::{machine, sheets};
 
@@ -36,10 +36,11 @@ fn overlap(a: &[Point; 4], b: &[Point; 4]) -> bool {
 fn overlaps(drawing: &Drawing) -> Vec<String> {
     let mut found = vec![];
     for sheet in &drawing.sheets {
-        let runs = texts(sheet);
-        for (i, a) in runs.iter().enumerate() {
-            for b in &runs[i + 1..] {
-                if overlap(&a.corners(), &b.corners()) {
+        let runs: Vec<_> = texts(sheet).into_iter().map(|run| (run.corners(), run.bounds(), run)).collect();
+        for (i, (a_corners, a_bounds, a)) in runs.iter().enumerate() {
+            for (b_corners, b_bounds, b) in &runs[i + 1..] {
+                let near = a_bounds.min.x < b_bounds.max.x && b_bounds.min.x < a_bounds.max.x;
+                if near && overlap(a_corners, b_corners) {
                     found.push(format!(
                         "{}: {:?} at {:?} and {:?} at {:?}",
                         sheet.name, a.content, a.at, b.content, b.at
@@ -73,11 +74,14 @@ fn texts_keep_apart_and_inside_the_frame() {
     let mut seen = 0;
     let mut faults = vec![];
     for case in cases() {
-        for options in all_options(&case.plan) {
+        for options in options_for(&case) {
             let drawing = sheets(&case.plan, &case.solution, &options);
             seen += drawing.sheets.iter().map(|sheet| texts(sheet).len()).sum::<usize>();
             for fault in overlaps(&drawing).into_iter().chain(outside_the_frame(&drawing)) {
-                faults.push(format!("{} {options:?}\n   {fault}", case.name));
+                faults.push(format!(
+                    "{} {:?} {:?} {:?}\n   {fault}",
+                    case.name, options.paper, options.units, options.datum
+                ));
             }
         }
     }
@@ -94,9 +98,14 @@ fn texts_keep_apart_and_inside_the_frame() {
 fn the_machine_drawings_texts_keep_apart() {
     let mut faults = vec![];
     for case in cases() {
-        for options in all_options(&case.plan) {
+        for options in options_for(&case) {
             let found = overlaps(&machine(&case.plan, &case.solution, &options));
-            faults.extend(found.into_iter().map(|fault| format!("{} {options:?}\n   {fault}", case.name)));
+            faults.extend(found.into_iter().map(|fault| {
+                format!(
+                    "{} {:?} {:?} {:?}\n   {fault}",
+                    case.name, options.paper, options.units, options.datum
+                )
+            }));
         }
     }
     assert!(
@@ -116,4 +125,24 @@ fn overlap_is_seen_where_there_is_one() {
     assert!(overlap(&run(0.0, 0.0), &run(3.0, 90.0)));
     assert!(!overlap(&run(0.0, 0.0), &run(20.0, 0.0)));
     assert!(!overlap(&run(0.0, 45.0), &run(6.0, 45.0)));
+}
+
+#[test]
+fn nothing_of_the_examples_is_cut() {
+    for case in cases::examples() {
+        for options in all_options(&case.plan) {
+            for sheet in sheets(&case.plan, &case.solution, &options).sheets {
+                let cut: Vec<String> =
+                    texts(&sheet).into_iter().map(|run| run.content).filter(|c| c.contains('…')).collect();
+                assert!(
+                    cut.is_empty(),
+                    "{} {:?} {:?} {}: {cut:?}",
+                    case.name,
+                    options.paper,
+                    options.units,
+                    sheet.name
+                );
+            }
+        }
+    }
 }

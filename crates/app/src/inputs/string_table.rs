@@ -23,7 +23,8 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, chosen: usize) {
     heads(ui, form, width);
     let zero_fret = plan.instrument.zero_fret;
     for (index, string) in plan.strings.iter_mut().enumerate() {
-        ui.horizontal(|ui| line(ui, form, index, string, chosen == index, zero_fret, width));
+        let line = Line { index, is_chosen: chosen == index, zero_fret, width };
+        ui.horizontal(|ui| line.show(ui, form, string));
     }
     buttons(ui, form, chosen, plan.strings.len());
     ui.spacing_mut().item_spacing.x = size::GAP;
@@ -50,38 +51,41 @@ fn heads(ui: &mut Ui, form: &Form, width: f32) {
     });
 }
 
-fn line(
-    ui: &mut Ui,
-    form: &mut Form,
+/// A line of the table.
+struct Line {
     index: usize,
-    string: &mut PlanString,
-    chosen: bool,
+    is_chosen: bool,
     zero_fret: bool,
     width: f32,
-) {
-    chooser(ui, form, index, chosen);
-    let cell = |field: &str, name: &str, step: f64| {
-        let path = format!("strings[{index}].{field}");
-        Spec::new(path, format!("String {}: {name}", index + 1), step, "").width(width).place("table")
-    };
-    pitch::pitch(ui, form, &cell("pitch", "pitch", 0.0).words(), &mut string.pitch);
-    let core = cell("core.diameter_mm", "core diameter, mm", 0.01);
-    number::number(ui, form, &core, &mut string.core.diameter_mm);
-    match &mut string.wrap {
-        Some(wrap) => {
-            let outside = cell("wrap.outside_mm", "outside diameter, mm", 0.01);
-            number::number(ui, form, &outside, &mut wrap.outside_mm);
+}
+
+impl Line {
+    fn show(&self, ui: &mut Ui, form: &mut Form, string: &mut PlanString) {
+        let (index, width) = (self.index, self.width);
+        chooser(ui, form, index, self.is_chosen);
+        let cell = |field: &str, name: &str, step: f64| {
+            let path = format!("strings[{index}].{field}");
+            Spec::new(path, format!("String {}: {name}", index + 1), step, "").width(width).place("table")
+        };
+        pitch::pitch(ui, form, &cell("pitch", "pitch", 0.0).words(), &mut string.pitch);
+        let core = cell("core.diameter_mm", "core diameter, mm", 0.01);
+        number::number(ui, form, &core, &mut string.core.diameter_mm);
+        match &mut string.wrap {
+            Some(wrap) => {
+                let outside = cell("wrap.outside_mm", "outside diameter, mm", 0.01);
+                number::number(ui, form, &outside, &mut wrap.outside_mm);
+            }
+            None => blank(ui, form, width, "plain"),
         }
-        None => blank(ui, form, width, "plain"),
-    }
-    match &mut string.action_mm.first {
-        Some(first) if !zero_fret => {
-            number::number(ui, form, &cell("action_mm.first", "action over fret 1, mm", 0.05), first);
+        match &mut string.action_mm.first {
+            Some(first) if !self.zero_fret => {
+                number::number(ui, form, &cell("action_mm.first", "action over fret 1, mm", 0.05), first);
+            }
+            _ => blank(ui, form, width, "—"),
         }
-        _ => blank(ui, form, width, "—"),
+        let twelfth = cell("action_mm.twelfth", "action over fret 12, mm", 0.05);
+        number::number(ui, form, &twelfth, &mut string.action_mm.twelfth);
     }
-    let twelfth = cell("action_mm.twelfth", "action over fret 12, mm", 0.05);
-    number::number(ui, form, &twelfth, &mut string.action_mm.twelfth);
 }
 
 /// The number of the string with its marker; it chooses the string.

@@ -8,7 +8,7 @@ use super::axes::{Along, with_axes};
 use super::camera::Camera;
 use super::figures;
 use super::hover;
-use super::plan_items::{at_x, line, mark, outline, text};
+use super::plan_items::{PlanView, at_x, line, mark, outline, text};
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
 
@@ -31,7 +31,7 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
         let bounds = looking.bounds(rect, &whole);
         plot.set_plot_bounds(bounds);
         let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
-        draw(plot, &Drawing { palette, outcome, chosen, bounds, mm_per_point });
+        draw(plot, &PlanView { palette, outcome, chosen, bounds, mm_per_point });
     });
     let response = hover::crest(shown.response, &shown.transform, palette, outcome);
     response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome)));
@@ -51,15 +51,7 @@ pub fn plan_plot<'a>(name: &'static str, palette: &'static Palette, datum_x: f64
     with_axes(plot, palette, Along::From(datum_x), ["", ""])
 }
 
-struct Drawing<'a> {
-    palette: &'static Palette,
-    outcome: &'a Outcome,
-    chosen: usize,
-    bounds: PlotBounds,
-    mm_per_point: f64,
-}
-
-fn draw(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
+fn draw(plot: &mut PlotUi<'_>, d: &PlanView<'_>) {
     let layout = &d.outcome.solution.layout;
     let p = d.palette;
     for blank in &layout.blanks {
@@ -87,7 +79,7 @@ fn draw(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
 }
 
 /// The straight crests, or for a shaped saddle the crest filed from string to string and the slot's centre line.
-fn crest_lines(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
+fn crest_lines(plot: &mut PlotUi<'_>, d: &PlanView<'_>) {
     let is_shaped = matches!(d.outcome.plan.saddle.style, SaddleStyle::Shaped);
     let (colour, style) = if is_shaped {
         (d.palette.quiet, LineStyle::Dashed { length: 5.0 })
@@ -104,14 +96,14 @@ fn crest_lines(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
     }
 }
 
-fn centre_line(plot: &mut PlotUi<'_>, d: &Drawing<'_>) {
+fn centre_line(plot: &mut PlotUi<'_>, d: &PlanView<'_>) {
     let (min, max) = (d.bounds.min(), d.bounds.max());
     let ends = [Point { x: min[0], y: 0.0 }, Point { x: max[0], y: 0.0 }];
     line(plot, &ends, d.palette.edge, 1.0, LineStyle::Dashed { length: 4.0 });
 }
 
 /// The string from the left edge of the view to its crest, with its number.
-fn string_line(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
+fn string_line(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &StringLine) {
     let left = d.bounds.min()[0];
     let start =
         if left > string.nut_edge.x { at_x(string.nut, string.saddle, left) } else { string.nut_edge };
@@ -125,7 +117,7 @@ fn string_line(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &St
 }
 
 /// How far a separate piece may go.
-fn travel(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
+fn travel(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &StringLine) {
     let [least, greatest] = string.travel;
     let colour = d.palette.string(index).gamma_multiply(0.45);
     line(plot, &[least, greatest], colour, 5.0, LineStyle::Solid);
@@ -137,14 +129,14 @@ fn travel(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringL
 }
 
 /// The ideal crest hollow, the existing one as a ring, and the built one filled with its setback beside it.
-fn crest(plot: &mut PlotUi<'_>, d: &Drawing<'_>, index: usize, string: &StringLine) {
+fn crest(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &StringLine) {
     let colour = d.palette.string(index);
     let Some(report) = d.outcome.solution.report.strings.get(index) else { return };
     if let Some(now) = string.as_built {
-        mark(plot, now, 0, d.palette.quiet, false, 4.0);
+        mark(plot, now, 0, d.palette.quiet, false);
     }
-    mark(plot, string.ideal_crest, index, colour, false, 4.5);
-    mark(plot, string.crest, index, colour, true, 4.5);
+    mark(plot, string.ideal_crest, index, colour, false);
+    mark(plot, string.crest, index, colour, true);
     let is_separate = matches!(d.outcome.plan.saddle.style, SaddleStyle::Separate);
     let marks = [
         Some(string.crest),

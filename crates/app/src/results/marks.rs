@@ -1,5 +1,6 @@
 //! The strings' markers and other small things that are painted outside plots.
 
+use eframe::egui::text::{LayoutJob, TextWrapping};
 use eframe::egui::{Align2, Color32, FontId, Painter, Pos2, Shape, Stroke, Vec2, vec2};
 use egui_plot::MarkerShape;
 
@@ -16,6 +17,29 @@ pub fn head(painter: &Painter, at: Pos2, anchor: Align2, words: &str, colour: Co
     for (up, line) in words.lines().rev().enumerate() {
         let font = FontId::proportional(size::SMALL);
         painter.text(at - Vec2::new(0.0, LINE * up as f32), anchor, line, font, colour);
+    }
+}
+
+/// A line of text that ends in an ellipsis where it is wider than `width`.
+pub struct Elided<'a> {
+    /// The text.
+    pub text: &'a str,
+    /// Size of its letters.
+    pub size: f32,
+    /// Its colour.
+    pub colour: Color32,
+    /// The most that it may be wide.
+    pub width: f32,
+}
+
+impl Elided<'_> {
+    /// Paints it; `anchor` says which point of it stands at `at`.
+    pub fn paint(&self, painter: &Painter, at: Pos2, anchor: Align2) {
+        let font = FontId::proportional(self.size);
+        let mut job = LayoutJob::simple_singleline(self.text.to_owned(), font, self.colour);
+        job.wrap = TextWrapping::truncate_at_width(self.width.max(0.0));
+        let galley = painter.layout_job(job);
+        painter.galley(anchor.anchor_size(at, galley.size()).min, galley, self.colour);
     }
 }
 

@@ -15,11 +15,13 @@ use crate::theme::{Palette, size};
 use crate::view::{NoteFigure, View};
 
 /// Least and greatest width of a string's column.
-const COLUMN: [f32; 2] = [70.0, 132.0];
+const COLUMN: [f32; 2] = [50.0, 132.0];
 /// Width of a string's column where the curves stand beside the table.
 const COLUMN_BESIDE: f32 = 92.0;
 /// The least room that the curves are worth.
 const CURVES: f32 = 420.0;
+/// Space on the right of a figure.
+const PAD: f32 = 9.0;
 /// Width of the column of fret numbers.
 const FIRST: f32 = 92.0;
 /// Least and greatest height of a row.
@@ -135,8 +137,8 @@ fn head(ui: &mut Ui, grid: &Grid, index: usize, string: &StringReport) -> Respon
     if response.has_focus() || response.hovered() {
         ui.painter().rect_stroke(rect.shrink(1.0), 3.0, Stroke::new(1.0, palette.accent), StrokeKind::Inside);
     }
-    let right = rect.right() - 12.0;
-    marks::paint(ui.painter(), pos2(rect.left() + 16.0, rect.top() + 13.0), index, palette, 4.5);
+    let right = rect.right() - PAD;
+    marks::paint(ui.painter(), pos2(rect.left() + 13.0, rect.top() + 13.0), index, palette, 4.5);
     let number = FontId::proportional(size::TEXT);
     ui.painter().text(
         pos2(right, rect.top() + 13.0),
@@ -146,10 +148,10 @@ fn head(ui: &mut Ui, grid: &Grid, index: usize, string: &StringReport) -> Respon
         palette.ink,
     );
     if string.name != string.string.to_string() {
-        let clip = rect.shrink2(Vec2::new(4.0, 0.0)).intersect(ui.clip_rect());
-        let small = FontId::proportional(size::SMALL);
         let at = pos2(right, rect.bottom() - 12.0);
-        ui.painter().with_clip_rect(clip).text(at, Align2::RIGHT_CENTER, &string.name, small, palette.quiet);
+        let width = grid.column - PAD - 4.0;
+        let name = marks::Elided { text: &string.name, size: size::SMALL, colour: palette.quiet, width };
+        name.paint(ui.painter(), at, Align2::RIGHT_CENTER);
     }
     response
 }
@@ -214,7 +216,7 @@ fn figure(ui: &Ui, grid: &Grid, rect: Rect, text: &str, ground: Option<Color32>,
         ui.painter().vline(rect.left() + 1.0, rect.y_range(), edge);
         ui.painter().vline(rect.right() - 1.0, rect.y_range(), edge);
     }
-    let at = pos2(rect.right() - 12.0, rect.center().y);
+    let at = pos2(rect.right() - PAD, rect.center().y);
     ui.painter().text(at, Align2::RIGHT_CENTER, text, FontId::proportional(size::TEXT), grid.palette.ink);
 }
 

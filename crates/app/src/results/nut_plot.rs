@@ -7,7 +7,7 @@ use egui_plot::{LineStyle, PlotUi};
 use super::camera::Camera;
 use super::figures;
 use super::layout_plot::{around, plan_plot};
-use super::plan_items::{line, mark, text};
+use super::plan_items::{PlanView, line, mark, text};
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
 
@@ -26,12 +26,13 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
         let bounds = looking.bounds(rect, &whole);
         plot.set_plot_bounds(bounds);
         let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
+        let view = PlanView { palette, outcome, chosen, bounds, mm_per_point };
         line(plot, &layout.nut_line, palette.ink, 1.2, LineStyle::Dashed { length: 9.0 });
         for fret in &layout.frets {
             line(plot, fret, palette.edge, 2.0, LineStyle::Solid);
         }
         for (index, string) in layout.strings.iter().enumerate() {
-            one(plot, palette, outcome, index, string, chosen == index, mm_per_point);
+            nut_end(plot, &view, index, string);
         }
     });
     let response = shown.response;
@@ -39,23 +40,16 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
     camera.follow(ui, &response, &shown.transform, &whole);
 }
 
-fn one(
-    plot: &mut PlotUi<'_>,
-    palette: &Palette,
-    outcome: &Outcome,
-    index: usize,
-    string: &StringLine,
-    is_chosen: bool,
-    mm_per_point: f64,
-) {
-    let colour = palette.string(index);
-    let width = if is_chosen { 2.4 } else { 1.2 };
+/// A string from its nut edge on, with the edge's setback beside it.
+fn nut_end(plot: &mut PlotUi<'_>, view: &PlanView<'_>, index: usize, string: &StringLine) {
+    let colour = view.palette.string(index);
+    let width = if index == view.chosen { 2.4 } else { 1.2 };
     line(plot, &[string.nut_edge, string.saddle], colour, width, LineStyle::Solid);
-    mark(plot, string.nut_edge, index, colour, true, 4.5);
-    let Some(report) = outcome.solution.report.strings.get(index) else { return };
-    let beside =
-        Point { x: string.nut_edge.x + 9.0 * mm_per_point, y: string.nut_edge.y + 1.0 * mm_per_point };
-    text(plot, beside, figures::mm(report.built.nut_setback_mm), palette.ink, Align2::LEFT_BOTTOM);
+    mark(plot, string.nut_edge, index, colour, true);
+    let Some(report) = view.outcome.solution.report.strings.get(index) else { return };
+    let (right, up) = (9.0 * view.mm_per_point, view.mm_per_point);
+    let beside = Point { x: string.nut_edge.x + right, y: string.nut_edge.y + up };
+    text(plot, beside, figures::mm(report.built.nut_setback_mm), view.palette.ink, Align2::LEFT_BOTTOM);
 }
 
 fn in_words(outcome: &Outcome) -> String {

@@ -2,9 +2,27 @@
 
 use crestline_plan::Point;
 use eframe::egui::{Align2, Color32, RichText};
-use egui_plot::{Line, LineStyle, PlotPoint, PlotPoints, PlotUi, Points, Polygon, Text};
+use egui_plot::{Line, LineStyle, PlotBounds, PlotPoint, PlotPoints, PlotUi, Points, Polygon, Text};
 
-use crate::theme::{marker, size};
+use crate::edit::desk::Outcome;
+use crate::theme::{Palette, marker, size};
+
+/// Radius of a crest's marker in points.
+const MARK: f32 = 4.5;
+
+/// A plan view being drawn.
+pub struct PlanView<'a> {
+    /// Colours.
+    pub palette: &'static Palette,
+    /// What is drawn.
+    pub outcome: &'a Outcome,
+    /// The chosen string, 0 first.
+    pub chosen: usize,
+    /// The part that is in view, mm.
+    pub bounds: PlotBounds,
+    /// Its scale.
+    pub mm_per_point: f64,
+}
 
 /// A straight line.
 pub fn line(plot: &mut PlotUi<'_>, ends: &[Point], colour: Color32, width: f32, style: LineStyle) {
@@ -19,9 +37,8 @@ pub fn outline(plot: &mut PlotUi<'_>, corners: &[Point], fill: Color32, edge: Co
 }
 
 /// The marker of string `index`.
-pub fn mark(plot: &mut PlotUi<'_>, at: Point, index: usize, colour: Color32, filled: bool, radius: f32) {
-    let points =
-        Points::new("", [at.x, at.y]).shape(marker(index)).color(colour).filled(filled).radius(radius);
+pub fn mark(plot: &mut PlotUi<'_>, at: Point, index: usize, colour: Color32, filled: bool) {
+    let points = Points::new("", [at.x, at.y]).shape(marker(index)).color(colour).filled(filled).radius(MARK);
     plot.points(points.allow_hover(false));
 }
 

@@ -1,8 +1,6 @@
 //! A table of figures: fixed columns, rows that can be chosen, and each row in words for screen readers.
 
-use eframe::egui::{
-    Align2, Color32, FontId, Rect, Sense, Stroke, StrokeKind, Ui, Vec2, WidgetInfo, accesskit, pos2,
-};
+use eframe::egui::{Align2, Color32, Rect, Sense, Stroke, StrokeKind, Ui, Vec2, WidgetInfo, accesskit, pos2};
 
 use super::marks;
 use crate::theme::{Palette, size};
@@ -130,15 +128,9 @@ fn line(
             x += 16.0;
         }
         let colour = cell.colour.unwrap_or(palette.ink);
-        let clip = Rect::from_x_y_ranges(rect.left() + side[0]..=rect.left() + side[1], rect.y_range());
-        let font = FontId::proportional(size::TEXT - 0.5);
-        ui.painter().with_clip_rect(clip.intersect(ui.clip_rect())).text(
-            pos2(x, rect.center().y),
-            anchor,
-            &cell.text,
-            font,
-            colour,
-        );
+        let width = if column.is_text { rect.left() + side[1] - x } else { side[1] - side[0] - 2.0 };
+        let text = marks::Elided { text: &cell.text, size: size::TEXT - 0.5, colour, width };
+        text.paint(ui.painter(), pos2(x, rect.center().y), anchor);
     }
     response.clicked()
 }

@@ -76,6 +76,10 @@ impl Window {
         commands.extend(self.inputs(ui, palette));
         commands.extend(self.results(ui, palette));
         self.ask(&ctx, palette);
+        if !commands.is_empty() {
+            // What the commands change is shown by the next frame.
+            ctx.request_repaint();
+        }
         for command in commands {
             obey::obey(self, &ctx, command);
         }
@@ -136,6 +140,8 @@ impl Window {
         };
         inputs::show(ui, &mut form, plan, &around);
         let Form { edit, left, commands, .. } = form;
+        // A path that no field has shown by now has none.
+        self.view.going_to = None;
         if let Some(edit) = edit {
             self.desk.settle(&edit);
             ui.ctx().request_repaint();

@@ -89,9 +89,9 @@ impl<'a> Facts<'a> {
     /// The datum in few words, for figures and headings.
     pub fn datum_short(&self) -> &'static str {
         match self.options.datum {
-            Datum::Nut => "nut line",
+            Datum::Nut => "the nut line",
             Datum::TwelfthFret => "fret 12",
-            Datum::SaddleLine => "saddle line",
+            Datum::SaddleLine => "the saddle line",
         }
     }
 

@@ -14,9 +14,10 @@ pub(crate) const TEMPLATE: LayerId = LayerId(8);
 pub(crate) const REGISTER: LayerId = LayerId(9);
 pub(crate) const CHECK: LayerId = LayerId(10);
 pub(crate) const FRAME: LayerId = LayerId(11);
+pub(crate) const NUT: LayerId = LayerId(12);
 
 /// Names and colours in the order of the numbers above.
-const LAYERS: [(&str, Colour); 12] = [
+const LAYERS: [(&str, Colour); 13] = [
     ("NOMINAL", Colour::Green),
     ("STRING", Colour::Grey),
     ("SLOT", Colour::Black),
@@ -29,6 +30,7 @@ const LAYERS: [(&str, Colour); 12] = [
     ("REGISTER", Colour::Violet),
     ("CHECK", Colour::Black),
     ("FRAME", Colour::Black),
+    ("NUT", Colour::Black),
 ];
 
 /// How many layers the machine drawing has.
@@ -63,7 +65,7 @@ mod tests {
         for (id, expected) in [(NOMINAL, "NOMINAL"), (CREST, "CREST"), (SLOT, "SLOT"), (TEXT, "TEXT")] {
             assert_eq!(name(id), Some(expected));
         }
-        assert_eq!((name(REGISTER), name(FRAME)), (Some("REGISTER"), Some("FRAME")));
+        assert_eq!((name(REGISTER), name(NUT)), (Some("REGISTER"), Some("NUT")));
         assert_eq!(machine_drawing("").layers.len(), 6);
     }
 }

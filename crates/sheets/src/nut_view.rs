@@ -4,7 +4,7 @@ use crestline_drawing::{Anchor, Dimension, Measure, Point, clean, lettering, pt,
 
 use crate::block::{Block, CHAIN, THICK, THIN, small};
 use crate::facts::{Facts, StringFacts};
-use crate::layers::{NOMINAL, SLOT, STRING};
+use crate::layers::{NOMINAL, NUT, STRING};
 use crate::plan_view::{LABEL_STEP_MM, longer};
 use crate::spread::spread;
 
@@ -29,7 +29,7 @@ pub(crate) fn nut_view(facts: &Facts<'_>) -> Option<Block> {
     block.line(NOMINAL, CHAIN, from, to);
     block.line(NOMINAL, CHAIN, pt(left_mm - 6.0, 0.0), pt(right_mm + 5.0, 0.0));
     for pair in edges.windows(2) {
-        block.line(SLOT, THICK, pair[0], pair[1]);
+        block.line(NUT, THICK, pair[0], pair[1]);
     }
     for string in &facts.strings {
         let along = string.along();

@@ -12,9 +12,11 @@ const COLUMN_GAP_MM: f64 = 12.0;
 /// The blocks of every sheet in their places within an area.
 pub(crate) fn pack(blocks: Vec<Block>, area: Rect) -> Vec<Vec<Block>> {
     let mut packer = Packer { area, pages: vec![], x: area.min.x, y: area.max.y, row_mm: 0.0 };
-    for block in blocks {
+    let groups = group_heights(&blocks);
+    for (block, group_mm) in blocks.into_iter().zip(groups) {
+        packer.keep_together(group_mm);
         let bounds = block.bounds();
-        let whole = block.clone().with_heading(bounds, area.width().min(bounds.width().max(120.0)));
+        let whole = block.clone().with_heading(bounds, area.width());
         let size = whole.bounds();
         if size.width() <= area.width() && size.height() <= area.height() {
             packer.place(whole, size);
@@ -30,6 +32,28 @@ pub(crate) fn pack(blocks: Vec<Block>, area: Rect) -> Vec<Vec<Block>> {
     }
     packer.pages.retain(|page| !page.is_empty());
     packer.pages
+}
+
+/// For the first block of several with one name (nameless ones go with those before them) the height of all
+/// of them one below the other; 0 for the others.
+fn group_heights(blocks: &[Block]) -> Vec<f64> {
+    const HEADING_MM: f64 = 8.0;
+    let mut heights: Vec<f64> = vec![];
+    let mut first: Option<usize> = None;
+    for (index, block) in blocks.iter().enumerate() {
+        let height_mm = block.bounds().height() + if block.title.is_empty() { 0.0 } else { HEADING_MM };
+        heights.push(0.0);
+        match first {
+            Some(start) if block.name.is_empty() || block.name == blocks[start].name => {
+                heights[start] += ROW_GAP_MM + height_mm;
+            }
+            _ => {
+                first = Some(index);
+                heights[index] = height_mm;
+            }
+        }
+    }
+    heights
 }
 
 struct Packer {
@@ -65,6 +89,15 @@ impl Packer {
         const SLACK_MM: f64 = 1e-6;
         self.x + size.width() <= self.area.max.x + SLACK_MM
             && self.y - size.height() >= self.area.min.y - SLACK_MM
+    }
+
+    /// Starts a sheet where that keeps a group from being torn apart.
+    fn keep_together(&mut self, group_mm: f64) {
+        let below = self.y - if self.row_mm > 0.0 { self.row_mm + ROW_GAP_MM } else { 0.0 };
+        let torn = group_mm > below - self.area.min.y && group_mm > self.y - self.area.min.y;
+        if torn && group_mm <= self.area.height() && self.pages.last().is_some_and(|page| !page.is_empty()) {
+            self.new_page();
+        }
     }
 
     fn new_row(&mut self) {

@@ -87,6 +87,8 @@ fn slanted<'f>(facts: &'f Facts<'_>) -> impl Iterator<Item = (bool, &'f Slot)> {
 /// which nothing is drawn yet.
 pub(crate) fn dimension_slants(block: &mut Block, facts: &Facts<'_>, core: Rect, labels: Rect) -> (f64, f64) {
     const PAST_MM: f64 = 4.0;
+    // Beside the tail of an arrow that stands outside.
+    const TAIL_MM: f64 = 7.0;
     let (mut top_mm, mut bottom_mm) =
         (labels.max.y.max(core.max.y + 5.0), labels.min.y.min(core.min.y - 5.0));
     for (downward, slot) in slanted(facts) {
@@ -102,7 +104,8 @@ pub(crate) fn dimension_slants(block: &mut Block, facts: &Facts<'_>, core: Rect,
         let (start_deg, end_deg) =
             if slant >= 0.0 { (square_deg, square_deg + slant) } else { (square_deg + slant, square_deg) };
         let label_mm = width_mm(&label, lettering::SMALL_MM);
-        let at = pt(vertex.x.max(core.max.x) + 6.0 + label_mm / 2.0, vertex.y + sign * radius_mm);
+        let foot = vertex.toward(Point::direction(square_deg + slant), radius_mm);
+        let at = pt(vertex.x.max(foot.x) + TAIL_MM + label_mm / 2.0, vertex.y + sign * radius_mm);
         let measure = Measure::Angular { vertex, start_deg, end_deg, radius_mm };
         for angle_deg in [square_deg, square_deg + slant] {
             let way = Point::direction(angle_deg);
@@ -142,7 +145,7 @@ fn dimension_from_datum(block: &mut Block, facts: &Facts<'_>, (top_mm, bottom_mm
                 continue;
             }
             match facts.options.datum {
-                Datum::SaddleLine => from_near_datum(block, facts, feature, line_mm),
+                Datum::SaddleLine => from_near_datum(block, facts, feature, (start_mm, line_mm)),
                 Datum::Nut | Datum::TwelfthFret => from_far_datum(block, facts, feature, line_mm, left_mm),
             }
             line_mm += step_mm;
@@ -150,9 +153,10 @@ fn dimension_from_datum(block: &mut Block, facts: &Facts<'_>, (top_mm, bottom_mm
     }
 }
 
-/// A dimension from a datum within the view.
-fn from_near_datum(block: &mut Block, facts: &Facts<'_>, feature: Point, line_mm: f64) {
-    let datum = pt(facts.datum_x_mm, feature.y);
+/// A dimension from a datum within the view. The datum's extension line starts where the view ends,
+/// clear of what stands between.
+fn from_near_datum(block: &mut Block, facts: &Facts<'_>, feature: Point, (start_mm, line_mm): (f64, f64)) {
+    let datum = pt(facts.datum_x_mm, start_mm - (start_mm - feature.y).signum());
     let measure = Measure::Linear { from: datum, to: feature, direction_deg: 0.0, line_at: pt(0.0, line_mm) };
     block.dimension(Dimension::new(measure, facts.x_text(feature.x)));
 }

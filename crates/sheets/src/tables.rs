@@ -10,19 +10,19 @@ use crate::table::{Column, Table};
 /// One row a string.
 pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
     let unit = facts.options.units.sign();
-    let mut block = Block::new("Schedule", format!("Schedule of crests, x from the {}", facts.datum_short()));
+    let mut block = Block::new("Schedule", format!("Schedule of crests, x from {}", facts.datum_short()));
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
     let columns = vec![
-        Column { heading: ["String", ""], unit: "", width_mm: 22.0, number: false },
-        number("Gauge", "w: wound", unit, 20.0),
+        Column { heading: ["String", ""], unit: "", width_mm: 20.0, number: false },
+        number("Gauge", "w wound", unit, 17.5),
         number("Ideal", "setback", unit, 16.0),
         number("Built", "setback", unit, 16.0),
-        number("Crest", "x", unit, 16.0),
-        number("Crest", "y", unit, 15.0),
+        number("Crest", "x", unit, 18.5),
+        number("Crest", "y", unit, 18.5),
         number("Slot", "offset", unit, 14.0),
-        number("Crest", "height", unit, 15.0),
-        number("Fret 12", "error", "cents", 15.0),
-        number("Worst", "error", "cents", 15.0),
+        number("Crest", "height", unit, 14.5),
+        number("Fret 12", "error", "cents", 14.5),
+        number("Worst", "error", "cents", 14.5),
     ];
     let rows = facts.strings.iter().map(|s| {
         let gauge = facts.options.units.gauge(s.gauge_mm);
@@ -50,7 +50,7 @@ pub(crate) fn slots(facts: &Facts<'_>) -> Option<Block> {
     }
     let unit = facts.options.units.sign();
     let what = if facts.plan.saddle.style == SaddleStyle::Separate { "each piece" } else { "the slot" };
-    let title = format!("Centre line of {what}, x from the {}", facts.datum_short());
+    let title = format!("Centre line of {what}, x from {}", facts.datum_short());
     let mut block = Block::new("Slot", title);
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
     let columns = vec![

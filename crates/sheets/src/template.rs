@@ -1,22 +1,25 @@
 //! The template to cut out and glue on: outlines and lines to align, without dimensions.
 
-use crestline_drawing::{Anchor, Shape, pt};
+use crestline_drawing::{Anchor, pt};
 
-use crate::block::{Block, DASHED, THIN, small};
+use crate::block::{Block, DASHED, small};
 use crate::facts::{Facts, crossing_x_mm};
-use crate::layers::{TEMPLATE, TEXT};
-use crate::plan_view::{draw_saddle, saddle_core};
+use crate::layers::TEMPLATE;
+use crate::plan_view::{LABEL_STEP_MM, draw_saddle, saddle_core};
 
 /// Margin of the template around the saddle, mm.
 const MARGIN_MM: f64 = 14.0;
+/// More margin on the side of the nut, for the strings' numbers, mm.
+const LEFT_MM: f64 = 10.0;
 
 /// The template with its cutting line, on a sheet of its own.
 pub(crate) fn template(facts: &Facts<'_>) -> Block {
     let mut block = Block::new("Template", "Cutting template, 1:1");
     block.scale = Some("1:1");
     block.alone = true;
-    let area = saddle_core(facts).grown(MARGIN_MM);
-    draw_saddle(&mut block, facts, area.min.x, area.max.x);
+    let mut area = saddle_core(facts).grown(MARGIN_MM);
+    area.min.x -= LEFT_MM;
+    draw_saddle(&mut block, facts, area.min.x + LEFT_MM, area.max.x);
     let corners = area.corners();
     block.outline(TEMPLATE, DASHED, &corners);
     let words = [
@@ -33,7 +36,16 @@ pub(crate) fn template(facts: &Facts<'_>) -> Block {
         let at = pt(area.min.x, area.min.y - 6.0 - 4.4 * f64::from(row));
         block.text(small(at, Anchor::Start, line));
     }
-    let up = small(pt(area.min.x + 3.0, area.max.y - 5.5), Anchor::Start, "← nut    treble side up");
-    block.add(TEXT, THIN, Shape::Text(up));
+    block.text(small(pt(area.min.x + 3.0, area.max.y - 5.5), Anchor::Start, "← nut"));
+    // The outer strings' numbers tell which way up it lies; with one string, or strings side by side, one will do.
+    let outer = facts.strings.first().into_iter().chain(facts.strings.last());
+    let mut last_y = f64::MAX;
+    for string in outer.filter(|s| s.crest.y.abs() > 2.0 || facts.strings.len() == 1) {
+        if (string.crest.y - last_y).abs() > LABEL_STEP_MM {
+            let at = pt(area.min.x + LEFT_MM - 1.5, string.crest.y - 1.25);
+            block.text(small(at, Anchor::End, string.number.to_string()));
+            last_y = string.crest.y;
+        }
+    }
     block
 }

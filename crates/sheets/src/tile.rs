@@ -81,7 +81,7 @@ impl Seams<'_> {
         }
         let mut level = |first: usize, name: String| {
             let x = self.xs[first].1.midpoint(self.xs[first + 1].0);
-            registration(part, pt(x, window.min.y - beside_mm), &format!("{name}a"));
+            registration_below(part, pt(x, window.min.y - beside_mm), &format!("{name}a"));
             registration(part, pt(x, window.max.y + beside_mm), &format!("{name}b"));
         };
         if column > 0 {
@@ -93,14 +93,23 @@ impl Seams<'_> {
     }
 }
 
-/// A cross in a circle with its name.
+/// A cross in a circle with its name above it.
 fn registration(part: &mut Block, at: Point, name: &str) {
+    named_mark(part, at, name, 2.9);
+}
+
+/// A cross in a circle with its name below it, away from the window.
+fn registration_below(part: &mut Block, at: Point, name: &str) {
+    named_mark(part, at, name, -5.0);
+}
+
+fn named_mark(part: &mut Block, at: Point, name: &str, baseline_mm: f64) {
     let pen = Pen::solid(Width::W025);
     part.add(REGISTER, pen, Shape::Circle { centre: at, radius_mm: 1.5 });
     for arm in [pt(2.5, 0.0), pt(0.0, 2.5)] {
         part.line(REGISTER, pen, at.minus(arm), at.plus(arm));
     }
-    part.add(REGISTER, pen, Shape::Text(small(pt(at.x, at.y + 2.9), Anchor::Middle, name).turned(0.0)));
+    part.add(REGISTER, pen, Shape::Text(small(pt(at.x, at.y + baseline_mm), Anchor::Middle, name)));
 }
 
 /// What of an item lies within a window. Text and arrows are drawn whole or not at all; the overlap is

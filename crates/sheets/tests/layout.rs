@@ -146,3 +146,60 @@ fn nothing_of_the_examples_is_cut() {
         }
     }
 }
+
+/// How far a text's box shrinks before a line through it counts as crossing: lines may touch.
+const LINE_TOUCH_MM: f64 = 0.2;
+
+/// Lines of the same sheet that run through a text.
+fn crossings(drawing: &Drawing) -> Vec<String> {
+    let mut found = vec![];
+    for sheet in &drawing.sheets {
+        let lines: Vec<[Point; 2]> = sheet
+            .primitives()
+            .iter()
+            .filter(|p| !matches!(p.mark, Mark::Text(_)))
+            .flat_map(|p| p.mark.outline(0.01).windows(2).map(|w| [w[0], w[1]]).collect::<Vec<_>>())
+            .collect();
+        for run in texts(sheet) {
+            let b = run.bounds().grown(-LINE_TOUCH_MM);
+            let through = |[a, c]: &[Point; 2]| {
+                (0..=400).any(|i| b.contains(a.plus(c.minus(*a).times(f64::from(i) / 400.0))))
+            };
+            if lines.iter().any(|line| {
+                let around = Rect::around(*line).unwrap();
+                around.min.x < b.max.x
+                    && b.min.x < around.max.x
+                    && around.min.y < b.max.y
+                    && b.min.y < around.max.y
+                    && through(line)
+            }) {
+                found.push(format!("{}: {:?} at {:?}", sheet.name, run.content, run.at));
+            }
+        }
+    }
+    found
+}
+
+#[test]
+fn no_line_runs_through_a_text() {
+    let mut faults = vec![];
+    for case in cases() {
+        for options in options_for(&case) {
+            for drawing in
+                [sheets(&case.plan, &case.solution, &options), machine(&case.plan, &case.solution, &options)]
+            {
+                faults.extend(
+                    crossings(&drawing)
+                        .into_iter()
+                        .map(|f| format!("{} {:?} {:?} {f}", case.name, options.paper, options.datum)),
+                );
+            }
+        }
+    }
+    assert!(
+        faults.is_empty(),
+        "{} faults, such as\n{}",
+        faults.len(),
+        faults.iter().step_by(1 + faults.len() / 40).cloned().collect::<Vec<_>>().join("\n")
+    );
+}

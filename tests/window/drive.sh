@@ -31,12 +31,16 @@ cd "$work"
 start_window "$program" "$plan"
 sleep 1
 
-# At rest the window uses no processor time.
+# At rest the window uses no processor time; on a busy machine it takes a while to come to rest.
 ticks() { awk '{ print $14 + $15 }' "/proc/$process/stat"; }
-began=$(ticks)
-sleep 3
-spent=$(( $(ticks) - began ))
-[ "$spent" -le 2 ] || fail "the window used $spent hundredths of a second in three seconds at rest"
+rests() {
+    local began
+    began=$(ticks)
+    sleep 2
+    [ $(( $(ticks) - began )) -le 1 ]
+}
+for _ in $(seq 15); do rests && rested=yes && break; done
+[ "${rested:-no}" = yes ] || fail "the window does not come to rest"
 
 # The scale is the field behind its label in the group that opens first.
 click 215 144

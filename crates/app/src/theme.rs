@@ -203,6 +203,8 @@ pub fn marker(index: usize) -> MarkerShape {
 /// Puts fonts, sizes and both palettes into the context.
 pub fn install(ctx: &Context) {
     ctx.set_fonts(fonts());
+    // The size of all text is a command of the window's own, with its own limits.
+    ctx.options_mut(|options| options.zoom_with_keyboard = false);
     for theme in [Theme::Light, Theme::Dark] {
         let palette = Palette::of(theme);
         ctx.set_visuals_of(theme, visuals(theme, palette));

@@ -170,6 +170,8 @@ pub struct View {
     pub page: Page,
     /// Light or dark.
     pub theme: ThemeChoice,
+    /// Whether the inputs are shown.
+    pub inputs: bool,
     /// The chosen string, 0 first.
     pub string: usize,
     /// The groups that are folded away.
@@ -197,6 +199,7 @@ impl View {
         Self {
             page: Page::Saddle,
             theme: ThemeChoice::default(),
+            inputs: true,
             string: 0,
             folded: BTreeSet::from([Group::About, Group::Pressing, Group::Nut, Group::Fit, Group::Sheet]),
             drafts: Drafts::default(),

@@ -235,6 +235,26 @@ fn a_plan_is_saved_by_its_key_and_reads_back_the_same() {
 }
 
 #[test]
+fn keys_make_all_text_larger_within_limits_and_usual_again() {
+    let mut opened = open(steel_six(), None);
+    for (modifiers, key) in
+        [(Modifiers::COMMAND, Key::Plus), (Modifiers::COMMAND | Modifiers::SHIFT, Key::Plus)]
+    {
+        let before = opened.ctx.zoom_factor();
+        opened.key_press_modifiers(modifiers, key);
+        opened.run();
+        assert!(opened.ctx.zoom_factor() > before, "{modifiers:?}");
+    }
+    for _ in 0..20 {
+        order(&mut opened, Command::LargerText);
+    }
+    assert_eq!(opened.ctx.zoom_factor(), 2.0);
+    opened.key_press_modifiers(Modifiers::COMMAND, Key::Num0);
+    opened.run();
+    assert_eq!(opened.ctx.zoom_factor(), 1.0);
+}
+
+#[test]
 fn a_drawing_is_written_and_an_existing_file_is_asked_about() {
     let folder = tempfile::tempdir().unwrap();
     let path = folder.path().join("saddle.svg");

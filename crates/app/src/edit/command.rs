@@ -41,6 +41,8 @@ pub enum Command {
     ChooseString(usize),
     /// Show a page.
     ShowPage(Page),
+    /// Show the inputs, or hide them to give the results the whole window.
+    ShowInputs(bool),
     /// Open or fold a group of fields.
     Fold(Group),
     /// Go to the field with this path.
@@ -80,6 +82,8 @@ impl Command {
             Self::MoveStringDown(_) => "Move the string down".into(),
             Self::ChooseString(index) => format!("Choose string {}", index + 1),
             Self::ShowPage(page) => page.name().into(),
+            Self::ShowInputs(true) => "Show the inputs".into(),
+            Self::ShowInputs(false) => "Hide the inputs".into(),
             Self::Fold(group) => group.name().into(),
             Self::GoTo(path) => format!("Go to {path}"),
             Self::Theme(choice) => choice.name().into(),
@@ -102,6 +106,7 @@ impl Command {
             Self::Quit => (Modifiers::COMMAND, Key::Q),
             Self::Undo => (Modifiers::COMMAND, Key::Z),
             Self::Redo => (Modifiers::COMMAND.plus(Modifiers::SHIFT), Key::Z),
+            Self::ShowInputs(_) => (Modifiers::COMMAND, Key::I),
             Self::LargerText => (Modifiers::COMMAND, Key::Plus),
             Self::SmallerText => (Modifiers::COMMAND, Key::Minus),
             Self::UsualText => (Modifiers::COMMAND, Key::Num0),
@@ -109,6 +114,17 @@ impl Command {
             _ => return None,
         };
         Some(KeyboardShortcut::new(modifiers, key))
+    }
+
+    /// A second key that calls it, where hands expect one.
+    #[must_use]
+    pub fn spare_shortcut(&self) -> Option<KeyboardShortcut> {
+        let key = match self {
+            Self::LargerText => Key::Equals,
+            Self::Redo => Key::Y,
+            _ => return None,
+        };
+        Some(KeyboardShortcut::new(Modifiers::COMMAND, key))
     }
 
     /// The commands that keys call. The more particular combination stands before the plainer one,

@@ -77,6 +77,8 @@ impl Camera {
             let mut transform = *transform;
             transform.zoom(Vec2::splat((wheel / WHEEL_POINTS).exp() as f32), at);
             self.chosen = Some(look_of(&transform));
+            // The page around the plot is not to scroll as well.
+            ui.input_mut(|i| i.smooth_scroll_delta = Vec2::ZERO);
         }
         if response.double_clicked() {
             self.reset();

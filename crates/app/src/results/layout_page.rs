@@ -11,19 +11,30 @@ use crate::view::View;
 /// Height of the notices below the schedule.
 const NOTICES: f32 = 46.0;
 
-/// The page.
+/// The least room in which the parts of the page stand side by side, points.
+const SIDE_BY_SIDE: Vec2 = Vec2::new(700.0, 470.0);
+/// Heights of the plan view and of the curves where the parts stand one below the other.
+const STACKED: [f32; 2] = [380.0, 460.0];
+
+/// The page: its parts side by side where there is room, else one below the other.
 pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) -> Vec<Command> {
+    let room = ui.available_size();
+    if room.x < SIDE_BY_SIDE.x || room.y < SIDE_BY_SIDE.y {
+        return stacked(ui, palette, outcome, view);
+    }
     let mut commands = Vec::new();
-    let rows = outcome.plan.strings.len().min(8) as f32;
-    let table_height = table::HEAD + rows * table::ROW + 44.0 + NOTICES;
-    Panel::bottom("schedule")
+    let rows = outcome.plan.strings.len().min(8);
+    let table_height = table::HEAD + rows as f32 * table::ROW + 44.0 + NOTICES;
+    Panel::bottom(("schedule", rows))
         .resizable(true)
         .default_size(table_height)
         .min_size(120.0)
         .show_separator_line(false)
         .frame(sheet(palette))
         .show(ui, |ui| {
-            commands.extend(bottom(ui, palette, outcome, view));
+            ScrollArea::vertical().auto_shrink([false, false]).show(ui, |ui| {
+                commands.extend(bottom(ui, palette, outcome, view));
+            });
         });
     let width = (0.36 * ui.available_width()).clamp(260.0, 620.0);
     Panel::left("plan view")
@@ -32,10 +43,27 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mu
         .min_size(220.0)
         .show_separator_line(false)
         .frame(sheet(palette))
-        .show(ui, |ui| {
-            commands.extend(plan_view(ui, palette, outcome, view));
-        });
-    Frame::new().inner_margin(Margin::same(0)).show(ui, |ui| curves(ui, palette, outcome, view));
+        .show(ui, |ui| commands.extend(plan_view(ui, palette, outcome, view)));
+    sheet(palette).show(ui, |ui| curves(ui, palette, outcome, view));
+    commands
+}
+
+fn stacked(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) -> Vec<Command> {
+    let mut commands = Vec::new();
+    ScrollArea::vertical().auto_shrink([false, false]).show(ui, |ui| {
+        let width = ui.available_width();
+        let part = |ui: &mut Ui, height: f32, contents: &mut dyn FnMut(&mut Ui)| {
+            ui.allocate_ui(Vec2::new(width, height), |ui| {
+                sheet(palette).show(ui, |ui| {
+                    ui.set_min_size(ui.available_size());
+                    contents(ui);
+                });
+            });
+        };
+        part(ui, STACKED[0], &mut |ui| commands.extend(plan_view(ui, palette, outcome, view)));
+        part(ui, STACKED[1], &mut |ui| curves(ui, palette, outcome, view));
+        sheet(palette).show(ui, |ui| commands.extend(bottom(ui, palette, outcome, view)));
+    });
     commands
 }
 
@@ -89,27 +117,26 @@ fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &m
 }
 
 fn curves(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) {
-    let height = ui.available_height();
-    let split = (0.38 * height).max(110.0);
-    sheet(palette).show(ui, |ui| {
-        title(ui, "Errors of the fretted notes");
-        error_plot::choices(ui, palette, outcome, view.string, &mut view.errors);
-        let room = (ui.available_height() - split - 66.0).max(90.0);
-        error_plot::show(ui, palette, outcome, view.string, &mut view.errors, room);
-        title(ui, "Where the error comes from");
-        split_plot::legend(ui, palette, view.string);
-        split_plot::show(ui, palette, outcome, view.string, ui.available_height().max(80.0));
-    });
+    let split = (0.38 * ui.available_height()).max(110.0);
+    title(ui, "Errors of the fretted notes");
+    error_plot::choices(ui, palette, outcome, view.string, &mut view.errors);
+    let room = (ui.available_height() - split - 66.0).max(90.0);
+    error_plot::show(ui, palette, outcome, view.string, &mut view.errors, room);
+    title(ui, "Where the error comes from");
+    split_plot::legend(ui, palette, view.string);
+    split_plot::show(ui, palette, outcome, view.string, ui.available_height().max(80.0));
 }
 
+/// The schedule, which scrolls sideways where it is too narrow, and what is to be said below it.
 fn bottom(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &View) -> Vec<Command> {
     let mut commands = Vec::new();
-    ScrollArea::vertical().auto_shrink([false, false]).show(ui, |ui| {
+    ScrollArea::horizontal().id_salt("schedule").auto_shrink([false, true]).show(ui, |ui| {
+        ui.set_min_width(schedule::LEAST_WIDTH);
         if let Some(string) = schedule::show(ui, palette, outcome, view.string) {
             commands.push(Command::ChooseString(string));
         }
-        schedule::foot(ui, palette, outcome);
-        commands.extend(notices::show(ui, palette, &outcome.solution.report.notices));
     });
+    schedule::foot(ui, palette, outcome);
+    commands.extend(notices::show(ui, palette, &outcome.solution.report.notices));
     commands
 }

@@ -13,6 +13,9 @@ use crate::theme::Palette;
 const NOTED: f64 = 0.60;
 const WARNED: f64 = 0.75;
 
+/// The least width in which the figures stand apart, points.
+pub const LEAST_WIDTH: f32 = 800.0;
+
 /// Said where tensions are shown.
 pub const CAUTION: &str = "Strings under tension can break and bridges can lift. Keep to the makers' ratings, and leave \
                            what carries the load to someone qualified for it.";

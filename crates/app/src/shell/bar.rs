@@ -72,6 +72,8 @@ fn view_menu(ui: &mut Ui, view: &View, commands: &mut Vec<Command>) {
             }
         }
         ui.separator();
+        item(ui, commands, Command::ShowInputs(!view.inputs), true);
+        ui.separator();
         item(ui, commands, Command::LargerText, true);
         item(ui, commands, Command::SmallerText, true);
         item(ui, commands, Command::UsualText, true);

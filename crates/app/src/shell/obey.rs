@@ -73,6 +73,7 @@ fn arrange(window: &mut Window, command: Command) {
         }
         Command::ChooseString(index) => view.string = index,
         Command::ShowPage(page) => view.page = page,
+        Command::ShowInputs(shown) => view.inputs = shown,
         Command::Fold(group) => view.fold(group),
         Command::GoTo(path) => go_to(window, path),
         Command::ResetPlots => {
@@ -107,6 +108,7 @@ fn go_to(window: &mut Window, path: String) {
     if let Some(index) = index {
         choose_string(window, index);
     }
+    window.view.inputs = true;
     window.view.going_to = Some(path);
 }
 

@@ -73,7 +73,9 @@ impl Window {
         if let Some(picker) = &self.picker {
             commands.extend(foot::waiting(ui, palette, picker.purpose.title()));
         }
-        commands.extend(self.inputs(ui, palette));
+        if self.view.inputs {
+            commands.extend(self.inputs(ui, palette));
+        }
         commands.extend(self.results(ui, palette));
         self.ask(&ctx, palette);
         if !commands.is_empty() {
@@ -107,12 +109,12 @@ impl Window {
         if self.question.is_some() {
             return Vec::new();
         }
+        let pressed = |shortcut| ctx.input_mut(|input| input.consume_shortcut(&shortcut));
         let called = |command: &Command| {
-            command
-                .shortcut()
-                .is_some_and(|shortcut| ctx.input_mut(|input| input.consume_shortcut(&shortcut)))
+            command.shortcut().is_some_and(pressed) || command.spare_shortcut().is_some_and(pressed)
         };
-        Command::with_keys().into_iter().filter(called).collect()
+        let inputs = Command::ShowInputs(!self.view.inputs);
+        Command::with_keys().into_iter().chain([inputs]).filter(called).collect()
     }
 
     fn inputs(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {

@@ -64,7 +64,7 @@ pub const SCALE_DIFFERENCE_MM: f64 = 200.0;
 /// The fret that lies square on a fanned neck; beyond these every line is nearly square to nothing.
 pub const SQUARE_FRET: Range = Range::new(0.0, 60.0, "");
 /// Greatest angle of a fanned nut or saddle line from the square to the centre line.
-pub const FAN_SLANT_DEGREES: f64 = 45.0;
+pub const FAN_SLANT_DEGREES: f64 = 60.0;
 /// Number of frets; fret 12 is needed for the action.
 pub const FRETS: Range = Range::new(12.0, 36.0, "");
 /// Measured position of a fret.

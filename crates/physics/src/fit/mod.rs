@@ -263,9 +263,32 @@ fn fit_part(
         nut_travel_mm: options.nut_travel_mm,
     };
     let search = Search { strings: &own, unknowns: &unknowns };
-    let found = search.run(objective(options.rule), &start[part])?;
+    let mut found = search.run(objective(options.rule), &start[part])?;
     let lines = unknowns.lines_at(&found.unknowns);
+    if options.rule == FitRule::Minimax && unknowns.nut_moves() && unknowns.crests != Crests::Free {
+        own_nut_edges(&own, &unknowns, &mut found)?;
+    }
     Ok((found, lines))
+}
+
+/// Gives every nut edge its own smallest largest error where the crest stands: the joint one holds only the worst
+/// strings fast.
+fn own_nut_edges(strings: &[FitString], unknowns: &Unknowns, found: &mut Found) -> Result<(), PhysicsError> {
+    for (index, string) in strings.iter().enumerate() {
+        let contact = found.contacts[index];
+        let own = Unknowns {
+            lines: vec![string.line],
+            crests: Crests::Fixed(vec![contact.saddle_setback_mm]),
+            nut: NutEdges::PerString,
+            saddle_travel_mm: [contact.saddle_setback_mm; 2],
+            ..*unknowns
+        };
+        let search = Search { strings: std::slice::from_ref(string), unknowns: &own };
+        let better = search.run(Objective::LargestError, &[contact])?;
+        found.contacts[index] = better.contacts[0];
+        found.settled &= better.settled;
+    }
+    Ok(())
 }
 
 fn objective(rule: FitRule) -> Objective {

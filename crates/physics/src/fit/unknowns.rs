@@ -9,6 +9,8 @@ use crate::neck::{PlanLine, PlanPoint};
 /// How crests are placed.
 #[derive(Debug, Clone, PartialEq)]
 pub(crate) enum Crests {
+    /// Known setbacks, one a string.
+    Fixed(Vec<f64>),
     /// Each at its own setback.
     Free,
     /// On straight lines, each serving some strings.
@@ -91,6 +93,7 @@ impl Unknowns {
 
     fn crest_count(&self) -> usize {
         match &self.crests {
+            Crests::Fixed(_) => 0,
             Crests::Free => self.lines.len(),
             Crests::Lines(groups) => groups.iter().map(LineGroup::unknowns).sum(),
             Crests::Blank { line, .. } => self.lines.len() + line.unknowns(),
@@ -119,6 +122,7 @@ impl Unknowns {
             .map(|(line, setback)| line.at(line.scale_mm() + setback))
             .collect();
         let mut unknowns = match &self.crests {
+            Crests::Fixed(_) => Vec::new(),
             Crests::Free => setbacks,
             Crests::Lines(groups) => {
                 groups.iter().flat_map(|group| group.through(&crests[group.strings.clone()])).collect()
@@ -138,12 +142,14 @@ impl Unknowns {
     pub fn contacts(&self, unknowns: &[f64]) -> Vec<Contacts> {
         let (crest_part, nut_part) = unknowns.split_at(self.crest_count());
         let mut contacts = vec![Contacts::default(); self.lines.len()];
-        match &self.crests {
-            Crests::Free | Crests::Blank { .. } => {
-                for (contact, setback) in contacts.iter_mut().zip(crest_part) {
-                    contact.saddle_setback_mm = *setback;
-                }
+        let mut place = |setbacks: &[f64]| {
+            for (contact, setback) in contacts.iter_mut().zip(setbacks) {
+                contact.saddle_setback_mm = *setback;
             }
+        };
+        match &self.crests {
+            Crests::Fixed(setbacks) => place(setbacks),
+            Crests::Free | Crests::Blank { .. } => place(crest_part),
             Crests::Lines(groups) => {
                 for (group, points) in self.line_points(groups, crest_part) {
                     for string in group.strings.clone() {
@@ -174,7 +180,7 @@ impl Unknowns {
             })
         };
         match &self.crests {
-            Crests::Free => Vec::new(),
+            Crests::Fixed(_) | Crests::Free => Vec::new(),
             Crests::Lines(groups) => {
                 self.line_points(groups, crest_part).map(|(group, points)| cut(group, points)).collect()
             }

@@ -47,15 +47,15 @@ fn blocks(facts: &Facts<'_>, width_mm: f64) -> Vec<Block> {
     if contents.plan_view {
         blocks.extend([plan_view(facts), legend()]);
     }
+    if contents.tables {
+        blocks.extend(slots(facts));
+        blocks.push(schedule(facts));
+    }
     if contents.nut_view {
         blocks.extend(nut_view(facts));
     }
     if contents.profile {
         blocks.extend(profile(facts, width_mm.min(170.0)));
-    }
-    if contents.tables {
-        blocks.extend(slots(facts));
-        blocks.push(schedule(facts));
     }
     if contents.cautions {
         blocks.push(cautions(facts, width_mm.min(170.0)));

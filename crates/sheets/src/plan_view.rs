@@ -23,7 +23,8 @@ pub(crate) fn plan_view(facts: &Facts<'_>) -> Block {
     block.scale = Some("1:1");
     let core = saddle_core(facts);
     let left_mm = core.min.x - STRING_SHOWN_MM;
-    draw_saddle(&mut block, facts, left_mm, core.max.x + NOMINAL_PAST_MM);
+    block.line(NOMINAL, CHAIN, pt(left_mm, 0.0), pt(core.max.x + NOMINAL_PAST_MM, 0.0));
+    draw_saddle(&mut block, facts, left_mm, NOMINAL_PAST_MM);
     name_strings(&mut block, facts, left_mm);
     dimension_saddle(&mut block, facts, core, left_mm);
     block
@@ -36,10 +37,9 @@ pub(crate) fn saddle_core(facts: &Facts<'_>) -> Rect {
     Rect::around(corners.chain(crests).chain(facts.saddle_line)).unwrap_or(Rect::new(0.0, 0.0, 1.0, 1.0))
 }
 
-/// Nominal line, centre line, strings from the left edge to their crests, slots and crests.
-pub(crate) fn draw_saddle(block: &mut Block, facts: &Facts<'_>, left_mm: f64, right_mm: f64) {
-    block.line(NOMINAL, CHAIN, pt(left_mm, 0.0), pt(right_mm, 0.0));
-    let (from, to) = longer(facts.saddle_line, NOMINAL_PAST_MM);
+/// The nominal line, run on beyond the outer strings, strings from the left edge to their crests, slots and crests.
+pub(crate) fn draw_saddle(block: &mut Block, facts: &Facts<'_>, left_mm: f64, past_mm: f64) {
+    let (from, to) = longer(facts.saddle_line, past_mm);
     block.line(NOMINAL, CHAIN, from, to);
     for string in &facts.strings {
         let from = at_x(string.nut_edge, string.crest, left_mm);

@@ -2,9 +2,9 @@
 
 use crestline_drawing::{Anchor, pt};
 
-use crate::block::{Block, DASHED, small};
+use crate::block::{Block, CHAIN, DASHED, small};
 use crate::facts::{Facts, crossing_x_mm};
-use crate::layers::TEMPLATE;
+use crate::layers::{NOMINAL, TEMPLATE};
 use crate::plan_view::{LABEL_STEP_MM, draw_saddle, saddle_core};
 
 /// Margin of the template around the saddle, mm.
@@ -19,7 +19,9 @@ pub(crate) fn template(facts: &Facts<'_>) -> Block {
     block.alone = true;
     let mut area = saddle_core(facts).grown(MARGIN_MM);
     area.min.x -= LEFT_MM;
-    draw_saddle(&mut block, facts, area.min.x + LEFT_MM, area.max.x);
+    // Both lines run to the cutting line, so that they can be laid on lines drawn on the instrument.
+    block.line(NOMINAL, CHAIN, pt(area.min.x, 0.0), pt(area.max.x, 0.0));
+    draw_saddle(&mut block, facts, area.min.x + LEFT_MM, MARGIN_MM);
     let corners = area.corners();
     block.outline(TEMPLATE, DASHED, &corners);
     let words = [
@@ -37,10 +39,10 @@ pub(crate) fn template(facts: &Facts<'_>) -> Block {
         block.text(small(at, Anchor::Start, line));
     }
     block.text(small(pt(area.min.x + 3.0, area.max.y - 5.5), Anchor::Start, "← nut"));
-    // The outer strings' numbers tell which way up it lies; with one string, or strings side by side, one will do.
+    // The outer strings' numbers tell which way up it lies; on the centre line they would hide it.
     let outer = facts.strings.first().into_iter().chain(facts.strings.last());
     let mut last_y = f64::MAX;
-    for string in outer.filter(|s| s.crest.y.abs() > 2.0 || facts.strings.len() == 1) {
+    for string in outer.filter(|s| s.crest.y.abs() > 2.0) {
         if (string.crest.y - last_y).abs() > LABEL_STEP_MM {
             let at = pt(area.min.x + LEFT_MM - 1.5, string.crest.y - 1.25);
             block.text(small(at, Anchor::End, string.number.to_string()));

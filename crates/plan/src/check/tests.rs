@@ -250,7 +250,7 @@ fn fanned_necks() {
     one_fault(&fanned_plan(950.0, 700.0, 7.0), "instrument.scale_mm", &["250 mm", "within 200 mm"]);
     one_fault(&fanned_plan(690.0, 650.0, 61.0), "instrument.scale_mm.square_fret", &["61", "0 to 60"]);
     one_fault(&fanned_plan(150.0, 210.0, 7.0), "instrument.scale_mm.bass", &["150", "200 to 1500 mm"]);
-    one_fault(&fanned_plan(850.0, 650.0, 12.0), "instrument.scale_mm", &["nut line", "12 square", "60°"]);
+    one_fault(&fanned_plan(780.0, 650.0, 12.0), "instrument.scale_mm", &["nut line", "12 square", "60°"]);
     let mut alone = fanned_plan(690.0, 650.0, 7.0);
     alone.strings.truncate(1);
     one_fault(&alone, "instrument.scale_mm", &["one string"]);

@@ -15,6 +15,8 @@ pub const RELIEF_MM: f64 = 0.0;
 pub const BLANK_THICKNESS_MM: f64 = 3.0;
 /// Margin kept at each edge of the blank's top, mm.
 pub const EDGE_MARGIN_MM: f64 = 0.4;
+/// How far a blank reaches beyond its outer strings, mm (common practice: 3 to 5).
+pub const END_MARGIN_MM: f64 = 4.0;
 /// Travel of a saddle crest, mm.
 pub const SADDLE_TRAVEL_MM: [f64; 2] = [-5.0, 15.0];
 /// Travel of a nut edge, mm.
@@ -69,6 +71,7 @@ impl Saddle {
             style,
             thickness_mm: BLANK_THICKNESS_MM,
             edge_margin_mm: EDGE_MARGIN_MM,
+            end_margin_mm: END_MARGIN_MM,
             split_after: None,
             travel_mm: SADDLE_TRAVEL_MM,
         }

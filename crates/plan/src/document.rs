@@ -292,6 +292,9 @@ pub struct Saddle {
     pub thickness_mm: f64,
     /// Margin kept at each edge of the blank's top, mm.
     pub edge_margin_mm: f64,
+    /// How far the blank reaches beyond its outer strings, along its centre line, 0.5 to 30 mm. A piece for a single
+    /// string reaches as far to both sides, but stays clear of its neighbours.
+    pub end_margin_mm: f64,
     /// Strings 1 to this one lie on the first piece of a two-piece saddle.
     #[serde(skip_serializing_if = "Option::is_none")]
     pub split_after: Option<u32>,

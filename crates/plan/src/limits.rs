@@ -130,6 +130,8 @@ pub const TARGET_CENTS: Range = Range::new(-50.0, 50.0, "cents");
 pub const BLANK_THICKNESS_MM: Range = Range::new(0.5, 30.0, "mm");
 /// Margin kept at each edge of the blank's top; it must stay below half the thickness too.
 pub const EDGE_MARGIN_MM: Range = Range::new(0.0, 15.0, "mm");
+/// How far a blank reaches beyond its outer strings; none would leave a single string's piece without width.
+pub const END_MARGIN_MM: Range = Range::new(0.5, 30.0, "mm");
 /// Travel of a saddle crest.
 pub const SADDLE_TRAVEL_MM: Range = Range::new(-10.0, 30.0, "mm");
 /// Travel of a nut edge.

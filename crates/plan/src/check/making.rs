@@ -65,6 +65,7 @@ pub(super) fn saddle(checker: &mut Checker, plan: &Plan) {
     let saddle = &plan.saddle;
     checker.range("saddle.thickness_mm", saddle.thickness_mm, &limits::BLANK_THICKNESS_MM);
     checker.range("saddle.edge_margin_mm", saddle.edge_margin_mm, &limits::EDGE_MARGIN_MM);
+    checker.range("saddle.end_margin_mm", saddle.end_margin_mm, &limits::END_MARGIN_MM);
     let half_mm = saddle.thickness_mm / 2.0;
     if checker.sound(&["saddle.thickness_mm", "saddle.edge_margin_mm"]) && saddle.edge_margin_mm >= half_mm {
         let allowed = format!("less than half the blank's thickness, {half_mm} mm");

@@ -80,7 +80,7 @@ fn necks_from_a_soprano_ukulele_to_a_long_bass_and_beyond_are_allowed() {
 fn every_single_value_is_held_against_its_range() {
     let nan = f64::NAN;
     type Set = fn(&mut Plan, f64);
-    let cases: [(Set, &str, [f64; 3]); 26] = [
+    let cases: [(Set, &str, [f64; 3]); 27] = [
         (|p, v| p.instrument.scale = Scale::Single(v), "instrument.scale_mm", [199.0, 1501.0, nan]),
         (|p, v| p.instrument.relief_mm = v, "instrument.relief_mm", [-0.1, 3.1, nan]),
         (|p, v| p.instrument.fret_height_mm = v, "instrument.fret_height_mm", [0.05, 3.1, nan]),
@@ -135,6 +135,7 @@ fn every_single_value_is_held_against_its_range() {
         (|p, v| p.strings[1].afterlength_mm.head = v, "strings[1].afterlength_mm.head", [-1.0, 2001.0, nan]),
         (|p, v| p.strings[1].afterlength_mm.tail = v, "strings[1].afterlength_mm.tail", [-1.0, 2001.0, nan]),
         (|p, v| p.saddle.thickness_mm = v, "saddle.thickness_mm", [0.4, 31.0, nan]),
+        (|p, v| p.saddle.end_margin_mm = v, "saddle.end_margin_mm", [0.4, 31.0, nan]),
     ];
     for (set, path, values) in cases {
         for value in values {

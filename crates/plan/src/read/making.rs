@@ -7,7 +7,8 @@ use crate::{
     Sheet, Slip, Supports, Targets, Units, defaults, limits,
 };
 
-const SADDLE_KEYS: &[&str] = &["style", "thickness_mm", "edge_margin_mm", "split_after", "travel_mm"];
+const SADDLE_KEYS: &[&str] =
+    &["style", "thickness_mm", "edge_margin_mm", "end_margin_mm", "split_after", "travel_mm"];
 
 pub(super) fn pressing(spot: &Spot) -> Pressing {
     let fields = spot.object(&["finger_fraction", "depth_mm"]);
@@ -62,6 +63,7 @@ pub(super) fn saddle(spot: &Spot) -> Saddle {
         edge_margin_mm: fields
             .get("edge_margin_mm")
             .number_or(&limits::EDGE_MARGIN_MM, otherwise.edge_margin_mm),
+        end_margin_mm: fields.get("end_margin_mm").number_or(&limits::END_MARGIN_MM, otherwise.end_margin_mm),
         split_after: fields
             .get("split_after")
             .optional(|spot| spot.count("a string number, 1 to one less than the number of strings")),

@@ -67,6 +67,7 @@ fn what_is_left_out_takes_the_values_of_the_format() {
     assert_eq!((plan.fit.rule, plan.fit.frets), (FitRule::LeastSquares, [1, 12]));
     let saddle = &plan.saddle;
     assert_eq!((saddle.thickness_mm, saddle.edge_margin_mm, saddle.split_after), (3.0, 0.4, None));
+    assert_eq!(saddle.end_margin_mm, 4.0);
     assert_eq!(
         (saddle.travel_mm, plan.nut.travel_mm, plan.nut.style),
         ([-5.0, 15.0], [0.0, 3.0], NutStyle::Plain)
@@ -103,7 +104,7 @@ fn every_key_of_the_format_is_read() {
     full["reference_hz"] = json!(442);
     full["fit"] = json!({"rule": "minimax", "frets": [2, 14]});
     full["targets"] = json!({"open_cents": [1, -1], "pitch_class_cents": [0,1,2,3,4,5,6,7,8,9,10,11]});
-    full["saddle"] = json!({"style": "two_piece", "thickness_mm": 4, "edge_margin_mm": 0.5, "split_after": 1, "travel_mm": [-1, 9]});
+    full["saddle"] = json!({"style": "two_piece", "thickness_mm": 4, "edge_margin_mm": 0.5, "end_margin_mm": 5.5, "split_after": 1, "travel_mm": [-1, 9]});
     full["nut"] = json!({"style": "shaped", "travel_mm": [0, 2]});
     full["as_built"] = json!({"saddle_setback_mm": [1, 2], "nut_setback_mm": [0.1, 0.2]});
     full["readings"] = json!([{"string": 2, "fret": 12, "kind": "octave_harmonic", "cents": -1.5}]);

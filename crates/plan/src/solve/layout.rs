@@ -5,13 +5,12 @@ use crestline_physics::neck::PlanPoint;
 use super::Fitted;
 use super::prepare::Prepared;
 use super::report::point;
-use crate::{Checked, Datum, Layout, Point, SaddleStyle, StringLine};
+use crate::{Checked, Datum, Layout, Point, Saddle, SaddleStyle, StringLine};
 
-/// How far a blank reaches beyond its outer strings, mm (common practice: 3 to 5).
-const END_MARGIN_MM: f64 = 4.0;
-/// Widest single piece, mm, and its share of the way to the next string.
-const PIECE_WIDTH_MM: f64 = 8.0;
+/// Greatest share of the way to the next string that single pieces fill.
 const PIECE_SHARE: f64 = 0.7;
+/// Gap left between two pieces where they meet, mm.
+const PIECE_GAP_MM: f64 = 0.5;
 
 /// The plan view of a fitted plan.
 pub(super) fn layout(checked: &Checked, prepared: &Prepared, fitted: &Fitted) -> Layout {
@@ -28,7 +27,7 @@ pub(super) fn layout(checked: &Checked, prepared: &Prepared, fitted: &Fitted) ->
             Datum::TwelfthFret => neck.twelfth_fret_x_mm,
             Datum::SaddleLine => neck.saddle_line_x_mm,
         },
-        blanks: blanks(plan.saddle.style, plan.saddle.thickness_mm, &strings, fitted),
+        blanks: blanks(&plan.saddle, &strings, fitted),
         strings,
     }
 }
@@ -49,21 +48,22 @@ fn string_line(checked: &Checked, prepared: &Prepared, fitted: &Fitted, index: u
     }
 }
 
-fn blanks(style: SaddleStyle, thickness_mm: f64, strings: &[StringLine], fitted: &Fitted) -> Vec<[Point; 4]> {
-    if style == SaddleStyle::Separate {
-        return pieces(thickness_mm, strings);
+fn blanks(saddle: &Saddle, strings: &[StringLine], fitted: &Fitted) -> Vec<[Point; 4]> {
+    if saddle.style == SaddleStyle::Separate {
+        return pieces(saddle, strings);
     }
+    let margin_mm = saddle.end_margin_mm;
     // Where two pieces meet, each reaches half the way to the other.
     let lines = &fitted.built.lines;
     let gap = |index: usize| (strings[index].saddle.y - strings[index + 1].saddle.y).abs();
     let count = lines.len();
     let mut outlines = Vec::new();
     for (index, line) in lines.iter().enumerate() {
-        let split = |after: usize| (0.5 * gap(after) - 0.25).clamp(0.0, END_MARGIN_MM);
+        let split = |after: usize| (0.5 * (gap(after) - PIECE_GAP_MM)).clamp(0.0, margin_mm);
         let boundary = fitted_split(line, strings, index);
-        let at_treble = if index == 0 { END_MARGIN_MM } else { split(boundary) };
-        let at_bass = if index + 1 == count { END_MARGIN_MM } else { split(boundary) };
-        outlines.push(outline(*line, thickness_mm, [at_treble, at_bass]));
+        let at_treble = if index == 0 { margin_mm } else { split(boundary) };
+        let at_bass = if index + 1 == count { margin_mm } else { split(boundary) };
+        outlines.push(outline(*line, saddle.thickness_mm, [at_treble, at_bass]));
     }
     outlines
 }
@@ -102,15 +102,15 @@ fn outline([treble, bass]: [PlanPoint; 2], thickness_mm: f64, margins_mm: [f64; 
 }
 
 /// One piece a string, its crest in the middle, square to the centre line.
-fn pieces(thickness_mm: f64, strings: &[StringLine]) -> Vec<[Point; 4]> {
+fn pieces(saddle: &Saddle, strings: &[StringLine]) -> Vec<[Point; 4]> {
     let neighbours = strings
         .windows(2)
         .map(|pair| (pair[0].saddle.y - pair[1].saddle.y).abs())
         .fold(f64::INFINITY, f64::min);
-    let half = 0.5 * PIECE_WIDTH_MM.min(PIECE_SHARE * neighbours);
+    let half = saddle.end_margin_mm.min(0.5 * PIECE_SHARE * neighbours);
     let piece = |string: &StringLine| {
         let at = PlanPoint::new(string.crest.x, string.crest.y);
-        outline([at, at], thickness_mm, [half, half])
+        outline([at, at], saddle.thickness_mm, [half, half])
     };
     strings.iter().map(piece).collect()
 }

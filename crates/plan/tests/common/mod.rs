@@ -143,14 +143,15 @@ fn travel(range: Range) -> BoxedStrategy<[f64; 2]> {
 }
 
 fn saddle(strings: usize) -> BoxedStrategy<Saddle> {
-    let thickness = within(limits::BLANK_THICKNESS_MM);
-    (word::<SaddleStyle>(), thickness, 0.0..0.49, 1..=15_u32, travel(limits::SADDLE_TRAVEL_MM))
-        .prop_map(move |(style, thickness_mm, margin, split, travel_mm)| {
+    let blank = (within(limits::BLANK_THICKNESS_MM), 0.0..0.49, within(limits::END_MARGIN_MM));
+    (word::<SaddleStyle>(), blank, 1..=15_u32, travel(limits::SADDLE_TRAVEL_MM))
+        .prop_map(move |(style, (thickness_mm, margin, end_margin_mm), split, travel_mm)| {
+            let edge_margin_mm = margin * thickness_mm;
             let last = u32::try_from(strings - 1).unwrap_or(0);
             let style =
                 if last == 0 && style == SaddleStyle::TwoPiece { SaddleStyle::Straight } else { style };
             let split_after = (last > 0).then(|| split.min(last));
-            Saddle { style, thickness_mm, edge_margin_mm: margin * thickness_mm, split_after, travel_mm }
+            Saddle { style, thickness_mm, edge_margin_mm, end_margin_mm, split_after, travel_mm }
         })
         .boxed()
 }

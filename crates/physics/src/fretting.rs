@@ -266,9 +266,12 @@ impl FrettedString {
     }
 }
 
-/// Crowns with their heights z = −4·r·u·(1 − u), u from 0 at the first to 1 at the last.
-fn crowns(fret_mm: &[f64], relief_mm: f64) -> Vec<SidePoint> {
-    let (first, last) = (fret_mm[0], fret_mm[fret_mm.len() - 1]);
+/// Crowns with their heights z = −4·r·u·(1 − u), u = (S_n − S_1)/(S_N − S_1) from 0 at the first to 1 at the last, r
+/// the relief: a parabola, whose greatest dip below the line through the outer crowns is r. Millimetres; no crown
+/// for no position.
+#[must_use]
+pub fn crowns(fret_mm: &[f64], relief_mm: f64) -> Vec<SidePoint> {
+    let (Some(&first), Some(&last)) = (fret_mm.first(), fret_mm.last()) else { return Vec::new() };
     let height = |s_mm: f64| {
         let along = (s_mm - first) / (last - first);
         -4.0 * relief_mm * along * (1.0 - along)

@@ -1,6 +1,8 @@
 //! The open string over the crowns: a plan in which it lies on a fret cannot sound.
 
+use crestline_physics::fretting::crowns;
 use crestline_physics::neck::Neck;
+use crestline_physics::path::SidePoint;
 
 use super::checker::Checker;
 use crate::{Plan, PlanString, limits};
@@ -20,9 +22,9 @@ pub(super) fn clearances(checker: &mut Checker, plan: &Plan, neck: &Neck) {
 }
 
 fn clearance(checker: &mut Checker, path: &str, plan: &Plan, string: &PlanString, fret_mm: &[f64]) {
-    let crowns = crown_heights_mm(fret_mm, plan.instrument.relief_mm);
-    let Some(line) = OpenLine::new(string, fret_mm, &crowns) else { return };
-    let gaps_mm = std::iter::zip(fret_mm, &crowns).map(|(&s_mm, &z_mm)| line.height_mm(s_mm) - z_mm);
+    let crowns = crowns(fret_mm, plan.instrument.relief_mm);
+    let Some(line) = OpenLine::new(string, &crowns) else { return };
+    let gaps_mm = crowns.iter().map(|crown| line.height_mm(crown.s_mm) - crown.z_mm);
     let touched: Vec<(usize, f64)> = (1..).zip(gaps_mm).filter(|(_, gap_mm)| *gap_mm <= 0.0).collect();
     if !touched.is_empty() {
         return checker.fault(path, touched_words(&touched), "an open string above the crown of every fret");
@@ -65,10 +67,11 @@ struct OpenLine {
 
 impl OpenLine {
     /// Through the gaps over fret 1, or the zero fret, and fret 12.
-    fn new(string: &PlanString, fret_mm: &[f64], crowns: &[f64]) -> Option<Self> {
-        let (s_12, z_12) = (fret_mm.get(11)?, crowns.get(11)? + string.action_mm.twelfth);
+    fn new(string: &PlanString, crowns: &[SidePoint]) -> Option<Self> {
+        let twelfth = crowns.get(11)?;
+        let (s_12, z_12) = (twelfth.s_mm, twelfth.z_mm + string.action_mm.twelfth);
         let (s_mm, z_mm) = match string.action_mm.first {
-            Some(gap_mm) => (*fret_mm.first()?, crowns.first()? + gap_mm),
+            Some(gap_mm) => crowns.first().map(|crown| (crown.s_mm, crown.z_mm + gap_mm))?,
             None => (0.0, 0.0),
         };
         Some(Self { s_mm, z_mm, slope: (z_12 - z_mm) / (s_12 - s_mm) })
@@ -77,16 +80,6 @@ impl OpenLine {
     fn height_mm(&self, s_mm: f64) -> f64 {
         self.z_mm + self.slope * (s_mm - self.s_mm)
     }
-}
-
-/// Heights of the crowns: z_n = −4·r·u·(1 − u) with u = (S_n − S_1)/(S_N − S_1).
-fn crown_heights_mm(fret_mm: &[f64], relief_mm: f64) -> Vec<f64> {
-    let (Some(&first), Some(&last)) = (fret_mm.first(), fret_mm.last()) else { return vec![] };
-    let height = |s_mm: &f64| {
-        let u = (s_mm - first) / (last - first);
-        -4.0 * relief_mm * u * (1.0 - u)
-    };
-    fret_mm.iter().map(height).collect()
 }
 
 impl Plan {

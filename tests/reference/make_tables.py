@@ -1,7 +1,7 @@
 """Writes plans/NNN.json and results/NNN.json: `python3 make_tables.py [FIRST LAST]` (default 1 200).
 
 A result whose plan and scripts have not changed comes out the same; numbers are kept to 12 significant
-digits, cents, millimetres and finger forces to 1e-8. Each result names the versions of the libraries that computed it.
+digits, cents, millimetres and finger forces to 1e-7. Each result names the versions of the libraries that computed it.
 """
 
 import json
@@ -29,7 +29,7 @@ PER_FRET = {
 
 
 def rounded(value, key=""):
-    """Numbers to 12 significant digits; cents, lengths and finger forces to eight decimals at most."""
+    """Numbers to 12 significant digits; cents, lengths and finger forces to seven decimals at most."""
     if isinstance(value, dict):
         return {k: rounded(v, k) for k, v in value.items()}
     if isinstance(value, list):
@@ -38,7 +38,7 @@ def rounded(value, key=""):
         return value
     value = float(f"{value:.12g}")
     short = key.endswith(("_cents", "_force_n")) or (key.endswith("_mm") and key != "bending_length_mm")
-    return round(value, 8) + 0.0 if short or key in ("x", "y", "z") else value
+    return round(value, 7) + 0.0 if short or key in ("x", "y", "z") else value
 
 
 def compact(report):

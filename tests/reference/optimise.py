@@ -18,7 +18,9 @@ from scipy.optimize import linprog, nnls
 
 STEP_TOLERANCE = 1e-11
 NOISE_MM = 1e-8
-HELD_SLACK = 2e-10
+HELD_SLACKS = (2e-10, 2e-9, 2e-8)
+# A gain of the largest error that is noise only, cents.
+NOISE_CENTS = 1e-9
 LP_OPTIONS = {"primal_feasibility_tolerance": 1e-10, "dual_feasibility_tolerance": 1e-10}
 # A setback counts as settled by the joint minimax if all optima agree on it within this.
 SETTLED_MM = 1e-4
@@ -73,12 +75,24 @@ def least_squares(problem, start):
 
 
 def minimax_step(residuals, jacobians, held, matrix, bound, reach):
-    """One linear programme: smallest t with |e| <= t for free strings, |e| <= held value for the others."""
+    """One linear programme: smallest t with |e| <= t for free strings, |e| <= held value for the others.
+
+    Held values carry the noise of the errors; where that leaves no room at all, a little more slack does.
+    """
+    for slack in HELD_SLACKS:
+        found = programme(residuals, jacobians, held + slack, matrix, bound, reach)
+        if found[0].status == 0:
+            return found
+    raise ArithmeticError("linear programme: " + found[0].message)
+
+
+def programme(residuals, jacobians, held, matrix, bound, reach):
+    """Sets the linear programme up and hands it to scipy: (answer, owner of each row, rows, right sides)."""
     size = matrix.shape[1]
     rows, right, owner = [], [], []
     for index, (e, j) in enumerate(zip(residuals, jacobians)):
         free = -1.0 if np.isnan(held[index]) else 0.0
-        limit = 0.0 if free else held[index] + HELD_SLACK
+        limit = 0.0 if free else held[index]
         for sign in (1.0, -1.0):
             rows.append(np.hstack([sign * j, np.full((len(e), 1), free)]))
             right.append(limit - sign * e)
@@ -90,8 +104,6 @@ def minimax_step(residuals, jacobians, held, matrix, bound, reach):
     cost[-1] = 1.0
     answer = linprog(cost, A_ub=np.vstack(rows), b_ub=np.concatenate(right),
                      bounds=[(-reach, reach)] * size + [(0.0, None)], method="highs", options=LP_OPTIONS)
-    if answer.status != 0:
-        raise ArithmeticError("linear programme: " + answer.message)
     return answer, np.array(owner), np.vstack(rows)[:, :-1], np.concatenate(right)
 
 
@@ -108,7 +120,7 @@ def minimax_stage(problem, x, held):
         kept = max([np.abs(residuals[i]).max() - held[i] for i in range(len(residuals)) if i not in free] + [0.0])
         met = bool(np.all(bound <= 1e-9)) and kept <= 1e-9
         x = x + step
-        if np.abs(step).max() <= 1e-10 or (met and count > 3 and abs(now - answer.x[-1]) <= 1e-11):
+        if np.abs(step).max() <= 1e-10 or (met and count > 3 and abs(now - answer.x[-1]) <= NOISE_CENTS):
             return x, answer, owner, rows, right
         if count > 8:
             reach = max(0.6 * reach, 1e-6)
@@ -135,7 +147,7 @@ def settled(answer, owner, rows, right, held, tightness):
 
 
 def lexicographic_minimax(problem, start):
-    """(x, worst value of every stage by string, per string: is its crest settled by the joint optimum)."""
+    """(x, worst value of every string, is each crest settled by the joint optimum, is all that strings share)."""
     x = np.array(start, float)
     residuals, _ = problem.evaluate(x)
     held = np.full(len(residuals), np.nan)
@@ -144,14 +156,15 @@ def lexicographic_minimax(problem, start):
         x, answer, owner, rows, right = minimax_stage(problem, x, held)
         weight = np.abs(answer.ineqlin.marginals)
         if determined is None:
-            determined = settled(answer, owner, rows, right, held, problem.crest_forms(x))
+            forms = problem.crest_forms(x), problem.shared_forms(x)
+            determined, shared = (settled(answer, owner, rows, right, held, form) for form in forms)
         binding = {int(i) for i in np.unique(owner[weight > 1e-7]) if i >= 0 and np.isnan(held[i])}
         residuals, _ = problem.evaluate(x)
         if not binding:
             raise ArithmeticError("no string binds")
         for i in binding:
             held[i] = np.abs(residuals[i]).max()
-    return x, held, determined
+    return x, held, determined, all(shared)
 
 
 def narrowest_strip(points):

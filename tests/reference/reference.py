@@ -37,7 +37,7 @@ def slot_report(setting, crests):
 
 
 def built(setting):
-    """(nuts, crests, settled), lines, slot offsets, fits for the plan's own style."""
+    """(nuts, crests, crests settled, shared settled), lines, slot offsets, fits for the plan's own style."""
     if setting.style == "shaped":
         found, fits = setting.in_blank(setting.rule)
         line, offsets = slot_report(setting, found[1])
@@ -102,7 +102,7 @@ def solve(plan):
                 "touched_frets": o["touched"][n - 1],
             } for n in numbers],
         })
-    return {"strings": entries, "saddle": {"lines": lines, "fits": bool(fits)},
+    return {"settled": {"ideal": bool(ideal[3]), "built": bool(made[3])}, "strings": entries, "saddle": {"lines": lines, "fits": bool(fits)},
             "total_tension_n": float(sum(o["open_tension"] for o in none))}
 
 

@@ -74,6 +74,14 @@ class Problem:
         """Jacobian of the crests by the unknowns."""
         return derivative(self.crests, x, 0.05)
 
+    def shared_forms(self, x):
+        """The same for what strings share: crests on a common line or in a common blank, and a common nut."""
+        tied = [self.strip is not None or len(piece) > 1 for piece in self.pieces for _ in piece]
+        rows = [row for row, wanted in zip(self.crest_forms(x), tied) if wanted]
+        if self.nut == "common":
+            rows.append(np.eye(len(x))[-1])
+        return np.array(rows)
+
     def evaluate(self, x):
         """Errors of each member's frets, and their Jacobians by the unknowns."""
         nuts, crests = self.nuts(x), self.crests(x)
@@ -163,24 +171,25 @@ class Setting:
         return float(np.clip(value, *self.saddle_travel))
 
     def solve(self, style, rule, nut=None, nut_values=None, strip=None):
-        """(nut setbacks, saddle setbacks, crest settled by the joint optimum) of a style under a rule."""
+        """(nut setbacks, saddle setbacks, crests settled by the joint optimum, all shared settled) of a style."""
         nut = nut or {"plain": "fixed", "common": "common", "shaped": "each"}[self.nut_style]
         values = np.zeros(self.count) if nut_values is None else nut_values
         pieces = self.pieces(style)
         tied = nut == "common" or strip is not None
         groups = [pieces] if tied else [[piece] for piece in pieces]
         nuts, crests = np.zeros(self.count), np.zeros(self.count)
-        determined = [True] * self.count
+        determined, shared = [True] * self.count, True
         for group in groups:
             problem = Problem(self, group, nut, values, self.octave if rule == "twelfth" else self.fit_frets, strip)
             start = np.clip(np.full(len(problem.lower), 0.1), problem.lower, problem.upper)
             if rule == "minimax":
-                x, _, known = optimise.lexicographic_minimax(problem, start)
+                x, _, known, common = optimise.lexicographic_minimax(problem, start)
+                shared = shared and common
             else:
                 x, known = optimise.least_squares(problem, start), [True] * len(problem.members)
             for i, n, c, k in zip(problem.members, problem.nuts(x), problem.crests(x), known):
                 nuts[i], crests[i], determined[i] = n, c, k
-        return nuts, crests, determined
+        return nuts, crests, determined, shared
 
     def octave_crests(self, nuts):
         """Crests that make fret 12 true, each on its own, with these nut setbacks."""
@@ -204,7 +213,7 @@ class Setting:
 
     def _separate_octaves(self):
         nuts = np.zeros(self.count) if self.nut_style == "plain" else self.separate("least_squares")[0]
-        return nuts, self.octave_crests(nuts), [True] * self.count
+        return nuts, self.octave_crests(nuts), [True] * self.count, True
 
     def on_lines(self, rule):
         """Setbacks on one or two straight crests."""
@@ -229,7 +238,7 @@ class Setting:
             nuts = self.in_blank("least_squares")[0][0]
         crests = self.octave_crests(nuts)
         if self.fits(crests):
-            return (nuts, crests, [True] * self.count), True
+            return (nuts, crests, [True] * self.count, True), True
         return self.solve("shaped", "twelfth", "fixed", nuts, strip=self.strip), False
 
     def slot(self, crests):

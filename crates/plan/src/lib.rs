@@ -20,6 +20,7 @@
 //! # Ok::<(), String>(())
 //! ```
 
+mod bench;
 mod check;
 mod compare;
 pub mod defaults;
@@ -32,8 +33,10 @@ mod read;
 mod solution;
 mod solve;
 mod words;
+mod workshop;
 mod write;
 
+pub use bench::{BenchLayout, BenchPiece, BenchString, bench_layout, bench_layout_from, datum_x_mm};
 pub use check::{Checked, check};
 pub use compare::compare;
 pub use document::*;
@@ -44,4 +47,5 @@ pub use read::{read, read_draft};
 pub use solution::*;
 pub use solve::solve;
 pub use words::Word;
+pub use workshop::{Sensitivity, Step, Workshop, WorkshopLine, WorkshopString, workshop};
 pub use write::write;

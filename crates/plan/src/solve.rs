@@ -12,7 +12,8 @@ use crestline_physics::PhysicsError;
 use crestline_physics::fit::{FitOptions, Setbacks, built_setbacks, ideal_setbacks};
 
 use crate::{Checked, Fault, Solution};
-pub(crate) use prepare::{Prepared, fault, fit_options, prepare};
+pub(crate) use prepare::{Prepared, PreparedString, fault, fit_options, prepare};
+pub(crate) use report::left_over;
 
 /// Ideal and built setbacks for one pair of styles.
 struct Fitted {

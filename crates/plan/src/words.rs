@@ -1,8 +1,8 @@
-//! The words that the plan file uses for every choice, in one place for reader, messages and windows.
+//! The words that plan files and reports use for every choice, in one place for reader, messages and windows.
 
-use crate::{CoreShape, Datum, FitRule, NutStyle, Paper, ReadingKind, SaddleStyle, Units};
+use crate::{CoreShape, Datum, FitRule, NutStyle, Paper, ReadingKind, SaddleStyle, Step, Units};
 
-/// A choice that the plan file writes as one word.
+/// A choice that plan files and reports write as one word or a short one.
 pub trait Word: Copy + PartialEq + 'static {
     /// Every choice in the order in which it is offered.
     const ALL: &'static [Self];
@@ -42,6 +42,9 @@ words! {
     ReadingKind { Fretted = "fretted", Open = "open", OctaveHarmonic = "octave_harmonic" }
     Paper { A4 = "a4", A3 = "a3", Letter = "letter" }
     Units { Mm = "mm", Inch = "inch" }
+    Step {
+        Mm005 = "0.05 mm", Mm01 = "0.1 mm", Mm025 = "0.25 mm", Mm05 = "0.5 mm", Inch64 = "1/64 in", Inch32 = "1/32 in"
+    }
     Datum { Nut = "nut", TwelfthFret = "twelfth_fret", SaddleLine = "saddle_line" }
 }
 
@@ -70,6 +73,7 @@ mod tests {
         reads_what_is_written::<Paper>(3);
         reads_what_is_written::<Units>(2);
         reads_what_is_written::<Datum>(3);
+        reads_what_is_written::<Step>(6);
     }
 
     #[test]

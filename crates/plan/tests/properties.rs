@@ -3,10 +3,9 @@
 
 mod common;
 
-use common::legal_plan;
+use common::{fixed, legal_plan};
 use crestline_plan::{EXAMPLES, Plan, check, read, read_draft, write};
 use proptest::prelude::*;
-use proptest::test_runner::RngSeed;
 use serde_json::{Value, json};
 
 /// Pointers to every value inside `value`, its own first.
@@ -103,7 +102,7 @@ fn strings_rise_in_order(plan: &Plan) {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 128, rng_seed: RngSeed::Fixed(1), failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(fixed(128))]
 
     #[test]
     fn legal_plans_survive_writing_and_reading(plan in legal_plan()) {

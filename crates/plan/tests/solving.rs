@@ -4,10 +4,9 @@
 
 mod common;
 
-use common::{legal_plan, likely_plan};
+use common::{fixed, legal_plan, likely_plan};
 use crestline_plan::{Checked, Fault, Point, check, compare, solve};
 use proptest::prelude::*;
-use proptest::test_runner::RngSeed;
 use serde_json::Value;
 
 /// Keys whose value may be absent.
@@ -62,16 +61,6 @@ fn solves_finitely(checked: &Checked) {
         layout.blanks.iter().flatten().copied().all(finite) && layout.datum_x_mm.is_finite(),
         "{layout:?}"
     );
-}
-
-/// The same cases on every run and machine: a failure here is one anywhere.
-fn fixed(cases: u32) -> ProptestConfig {
-    ProptestConfig {
-        cases,
-        rng_seed: RngSeed::Fixed(1),
-        failure_persistence: None,
-        ..ProptestConfig::default()
-    }
 }
 
 proptest! {

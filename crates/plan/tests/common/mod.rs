@@ -10,6 +10,17 @@ use crestline_plan::{
 use proptest::collection::vec;
 use proptest::option;
 use proptest::prelude::*;
+use proptest::test_runner::RngSeed;
+
+/// The same cases on every run and machine: a failure here is one anywhere.
+pub fn fixed(cases: u32) -> ProptestConfig {
+    ProptestConfig {
+        cases,
+        rng_seed: RngSeed::Fixed(1),
+        failure_persistence: None,
+        ..ProptestConfig::default()
+    }
+}
 
 /// Any value of a range, its ends now and then.
 fn within(range: Range) -> BoxedStrategy<f64> {

@@ -74,6 +74,11 @@ pub(crate) fn text_value(clean: &str) -> String {
             // A caret and a space mean a caret.
             '^' => "^ ".to_owned(),
             '\\' => unicode('\\'),
+            // R12's own codes, and plain signs where they say the same, reach more readers than \U+ does.
+            '°' => "%%d".to_owned(),
+            '±' => "%%p".to_owned(),
+            '⌀' | 'Ø' => "%%c".to_owned(),
+            '−' | '–' => "-".to_owned(),
             ' '..='~' => character.to_string(),
             _ => unicode(character),
         };
@@ -193,6 +198,7 @@ mod tests {
     fn text_cannot_smuggle_codes() {
         assert_eq!(text_value("50 %%c ^J \\P é"), "50 % %c ^ J \\U+005CP \\U+00E9");
         assert_eq!(text_value("%%%%"), "% % % %");
+        assert_eq!(text_value("−2.5° ±1 ⌀3"), "-2.5%%d %%p1 %%c3");
         assert_eq!(text_value("\u{10300}"), "\\U+25A1");
         assert_eq!(figure_value("{\\fArial;<>}"), "(/fArial;--)");
         assert!(text_value(&"é".repeat(300)).len() <= LONGEST_TEXT);

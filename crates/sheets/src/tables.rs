@@ -19,7 +19,7 @@ pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
         number("Built", "setback", unit, 16.0),
         number("Crest", "x", unit, 18.5),
         number("Crest", "y", unit, 18.5),
-        number("Slot", "offset", unit, 14.0),
+        number("Slot", "offset", unit, 15.5),
         number("Crest", "height", unit, 14.5),
         number("Fret 12", "error", "cents", 14.5),
         number("Worst", "error", "cents", 14.5),

@@ -273,13 +273,46 @@ pub enum FitRule {
     Minimax,
 }
 
-/// Wanted offsets from equal temperament, cents. The target ratio of fret n on string i is
-/// 2^(n/12 + (p − o)/1200) with p the offset of the fretted note's pitch class and o the open string's offset.
+/// Wanted offsets from equal temperament, so that a tempered tuning can be compensated for. Key `targets` of the
+/// file; where it is left out every note is wanted in equal temperament on the plan's `reference_hz`.
+///
+/// With f the pitch that the plan names for an open string and o its offset in `open_cents`, the string is tuned to
+/// f·2^(o/1200): tension, and with it the setbacks, follow from that. Its note at fret n is wanted at the ratio
+/// 2^(n/12 + (p − o)/1200) above the open string, p being the offset in `pitch_class_cents` of the fretted note's
+/// pitch class. So a fretted note is wanted p cents from equal temperament, whatever the offset of the open string
+/// that it is played on, and every error in a report is counted from there.
+///
+/// The pitch class of an open string is that of the equal-tempered note nearest to f; every fret is a semitone
+/// higher. The open note's own pitch class does not apply to the open string: only `open_cents` does.
+///
+/// ```
+/// use crestline_plan::{Fault, Plan, Targets, check, example, read, solve};
+///
+/// /// Errors of the B string at frets 1 (C) and 12 (B) with no setback, cents.
+/// fn errors(plan: &Plan) -> Result<[f64; 2], Vec<Fault>> {
+///     let solution = solve(&check(plan)?)?;
+///     Ok([0, 11].map(|fret| solution.report.strings[1].frets[fret].none_cents))
+/// }
+///
+/// let mut plan = read(example("steel_six").map_or("", |example| example.text))?;
+/// let equal = errors(&plan)?;
+/// // Thirds of the chords on C, F and G (the notes E, A and B) 4 cents low.
+/// let mut pitch_class_cents = [0.0; 12];
+/// for class in [4, 9, 11] {
+///     pitch_class_cents[class] = -4.0;
+/// }
+/// plan.targets = Some(Targets { open_cents: vec![0.0; plan.strings.len()], pitch_class_cents });
+/// let tempered = errors(&plan)?;
+/// // C is as sharp as before; B is sharper against its lower target.
+/// assert!((tempered[0] - equal[0]).abs() < 1e-9);
+/// assert!((tempered[1] - equal[1] - 4.0).abs() < 1e-9);
+/// # Ok::<(), Vec<Fault>>(())
+/// ```
 #[derive(Debug, Clone, PartialEq, Serialize)]
 pub struct Targets {
-    /// Offset of every open string from its equal-tempered pitch, string 1 first, −50 to 50.
+    /// Offset of every open string from the pitch that the plan names for it, cents, string 1 first, −50 to 50.
     pub open_cents: Vec<f64>,
-    /// Offset of the twelve pitch classes, C first, then C sharp and so on to B, −50 to 50.
+    /// Offset of fretted notes by their pitch class, cents: C first, then C sharp and so on to B, −50 to 50.
     pub pitch_class_cents: [f64; 12],
 }
 

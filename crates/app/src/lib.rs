@@ -8,6 +8,7 @@
 pub mod edit;
 pub mod fields;
 pub mod inputs;
+pub mod papers;
 pub mod results;
 pub mod shell;
 pub mod theme;

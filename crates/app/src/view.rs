@@ -3,6 +3,7 @@
 use std::collections::BTreeSet;
 
 use crate::fields::draft::Drafts;
+use crate::papers::preview::Preview;
 use crate::results::camera::Camera;
 use crate::results::error_plot::ErrorChoice;
 
@@ -13,11 +14,13 @@ pub enum Page {
     Saddle,
     /// The errors of every fretted note as a table.
     FrettedNotes,
+    /// The drawing as it prints, and its files.
+    Sheets,
 }
 
 impl Page {
     /// All pages in the order of their tabs.
-    pub const ALL: [Self; 2] = [Self::Saddle, Self::FrettedNotes];
+    pub const ALL: [Self; 3] = [Self::Saddle, Self::FrettedNotes, Self::Sheets];
 
     /// The word on its tab.
     #[must_use]
@@ -25,6 +28,7 @@ impl Page {
         match self {
             Self::Saddle => "Saddle",
             Self::FrettedNotes => "Fretted notes",
+            Self::Sheets => "Sheets",
         }
     }
 }
@@ -188,6 +192,8 @@ pub struct View {
     pub saddle_camera: Camera,
     /// Where the nut end is looked at from.
     pub nut_camera: Camera,
+    /// What is shown of the sheets.
+    pub preview: Preview,
     /// What has just been done.
     pub message: Option<Message>,
 }
@@ -208,6 +214,7 @@ impl View {
             note_figure: NoteFigure::Built,
             saddle_camera: Camera::default(),
             nut_camera: Camera::default(),
+            preview: Preview::default(),
             message: None,
         }
     }

@@ -4,6 +4,7 @@
 use std::path::PathBuf;
 
 use crestline_plan::{EXAMPLES, Pitch, Plan, Scale, example, read, write};
+use crestline_sheets::Format;
 use crestline_window::edit::command::Command;
 use crestline_window::shell::ask::{Question, Reply};
 use crestline_window::shell::obey::{obey, take_reply};
@@ -260,7 +261,7 @@ fn a_drawing_is_written_and_an_existing_file_is_asked_about() {
     let path = folder.path().join("saddle.svg");
     std::fs::write(&path, "old").unwrap();
     let mut opened = open(steel_six(), None);
-    answer(&mut opened, Reply::Propose(Purpose::Drawing, path.clone()));
+    answer(&mut opened, Reply::Propose(Purpose::Write(Format::Svg), path.clone()));
     assert!(matches!(opened.state().question, Some(Question::Replace(..))));
     assert_eq!(std::fs::read_to_string(&path).unwrap(), "old");
     opened.get_by_label("Replace").click();

@@ -2,6 +2,7 @@
 
 use std::path::PathBuf;
 
+use crestline_sheets::Format;
 use eframe::egui::{Key, KeyboardShortcut, Modifiers};
 
 use crate::view::{Group, Page, ThemeChoice};
@@ -19,8 +20,8 @@ pub enum Command {
     Save,
     /// Ask for a file and save to it.
     SaveAs,
-    /// Ask for a file and write the drawing to it.
-    ExportDrawing,
+    /// Ask for a file and write the drawing or the schedule to it.
+    Export(Format),
     /// Type the path in the window instead of waiting for a file dialog.
     TypePath,
     /// Close the window.
@@ -71,7 +72,10 @@ impl Command {
             Self::OpenFile(path) => format!("Open {}", path.display()),
             Self::Save => "Save".into(),
             Self::SaveAs => "Save as…".into(),
-            Self::ExportDrawing => "Export drawing…".into(),
+            Self::Export(Format::Pdf) => "Write PDF…".into(),
+            Self::Export(Format::Svg) => "Write SVG…".into(),
+            Self::Export(Format::Dxf) => "Write DXF for a machine…".into(),
+            Self::Export(Format::Csv) => "Write schedule CSV…".into(),
             Self::TypePath => "Type the path here instead".into(),
             Self::Quit => "Quit".into(),
             Self::Undo => "Undo".into(),
@@ -102,7 +106,7 @@ impl Command {
             Self::Open => (Modifiers::COMMAND, Key::O),
             Self::Save => (Modifiers::COMMAND, Key::S),
             Self::SaveAs => (Modifiers::COMMAND.plus(Modifiers::SHIFT), Key::S),
-            Self::ExportDrawing => (Modifiers::COMMAND, Key::E),
+            Self::Export(Format::Pdf) => (Modifiers::COMMAND, Key::E),
             Self::Quit => (Modifiers::COMMAND, Key::Q),
             Self::Undo => (Modifiers::COMMAND, Key::Z),
             Self::Redo => (Modifiers::COMMAND.plus(Modifiers::SHIFT), Key::Z),
@@ -136,7 +140,7 @@ impl Command {
             Self::Redo,
             Self::Open,
             Self::Save,
-            Self::ExportDrawing,
+            Self::Export(Format::Pdf),
             Self::Quit,
             Self::Undo,
             Self::LargerText,

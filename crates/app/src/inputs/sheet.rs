@@ -7,6 +7,7 @@ use crate::edit::command::Command;
 use crate::fields::choice::{self, Choice};
 use crate::fields::form::Form;
 use crate::fields::row::row;
+use crate::view::Page;
 
 const PAPERS: [Choice<Paper>; 3] = [
     (Paper::A4, "A4", "210 × 297 mm"),
@@ -26,7 +27,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
     row(ui, "Paper", |ui| choice::buttons(ui, form, "sheet.paper", "Paper", &PAPERS, &mut plan.sheet.paper));
     row(ui, "Units", |ui| choice::buttons(ui, form, "sheet.units", "Units", &UNITS, &mut plan.sheet.units));
     row(ui, "Datum", |ui| choice::buttons(ui, form, "sheet.datum", "Datum", &DATUMS, &mut plan.sheet.datum));
-    if ui.button(Command::ExportDrawing.name()).clicked() {
-        form.commands.push(Command::ExportDrawing);
+    if ui.button("Show the sheets").clicked() {
+        form.commands.push(Command::ShowPage(Page::Sheets));
     }
 }

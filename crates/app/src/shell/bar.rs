@@ -1,6 +1,7 @@
 //! The bar at the top: menus, pages, and the plan's name.
 
 use crestline_plan::EXAMPLES;
+use crestline_sheets::Format;
 use eframe::egui::{
     Button, CornerRadius, Frame, Margin, MenuBar, Panel, RichText, Stroke, Ui, Vec2, accesskit,
 };
@@ -43,7 +44,10 @@ fn file_menu(ui: &mut Ui, commands: &mut Vec<Command>) {
         ui.separator();
         item(ui, commands, Command::Save, true);
         item(ui, commands, Command::SaveAs, true);
-        item(ui, commands, Command::ExportDrawing, true);
+        ui.separator();
+        for format in [Format::Pdf, Format::Svg, Format::Dxf, Format::Csv] {
+            item(ui, commands, Command::Export(format), true);
+        }
         ui.separator();
         item(ui, commands, Command::Quit, true);
     });

@@ -7,8 +7,6 @@ use crestline_plan::Plan;
 
 /// Ending of plan files.
 pub const PLAN_ENDING: &str = "json";
-/// Ending of the drawing.
-pub const DRAWING_ENDING: &str = "svg";
 
 /// Reads a plan file. A plan with values out of range is read as well: its fields are then marked.
 ///

@@ -3,7 +3,7 @@
 use std::path::{Path, PathBuf};
 
 use crestline_plan::{example, read_draft};
-use crestline_sheets::{Format, SheetOptions, export};
+use crestline_sheets::{Format, export};
 use eframe::egui::{Context, ViewportCommand};
 
 use super::ask::{Question, Reply};
@@ -35,7 +35,7 @@ pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
         Command::OpenFile(path) => open(window, &path),
         Command::Save => save(window, ctx),
         Command::SaveAs => pick(window, ctx, Purpose::Save),
-        Command::ExportDrawing => ask_for_drawing(window, ctx),
+        Command::Export(format) => ask_for_drawing(window, ctx, format),
         Command::Quit => ctx.send_viewport_cmd(ViewportCommand::Close),
         Command::Undo => step(window, true),
         Command::Redo => step(window, false),
@@ -191,10 +191,10 @@ fn save_to(window: &mut Window, path: PathBuf) -> bool {
     }
 }
 
-fn ask_for_drawing(window: &mut Window, ctx: &Context) {
+fn ask_for_drawing(window: &mut Window, ctx: &Context, format: Format) {
     let is_current = window.desk.faults().is_empty() && window.view.drafts.errors().next().is_none();
     if is_current && window.desk.outcome().is_some() {
-        pick(window, ctx, Purpose::Drawing);
+        pick(window, ctx, Purpose::Write(format));
     } else {
         window.view.complain("The drawing is not written while fields are to be mended.");
     }
@@ -279,7 +279,7 @@ fn use_path(window: &mut Window, ctx: &Context, purpose: Purpose, path: PathBuf)
                 obey(window, ctx, next);
             }
         }
-        Purpose::Drawing => write_drawing(window, &path),
+        Purpose::Write(_) => write_drawing(window, &path),
     }
 }
 
@@ -292,10 +292,11 @@ fn write_drawing(window: &mut Window, path: &Path) {
         window.view.complain(format!("A drawing cannot be written as .{ending}; endings that can: {known}"));
         return;
     };
-    let options = SheetOptions::for_plan(&outcome.plan);
+    let options = window.view.preview.options(&outcome.plan);
     let bytes = export(format, &outcome.plan, &outcome.solution, &options);
+    let what = if format == Format::Csv { "Schedule" } else { "Drawing" };
     match files::write(path, &bytes) {
-        Ok(()) => window.view.say(format!("Drawing written to {}", path.display())),
+        Ok(()) => window.view.say(format!("{what} written to {}", path.display())),
         Err(words) => window.view.complain(words),
     }
 }

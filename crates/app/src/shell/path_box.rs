@@ -42,7 +42,7 @@ impl PathBox {
         let whole = folder.join(suggested);
         let start = match purpose {
             Purpose::Open => whole.parent().map_or(folder, Path::to_owned).join(""),
-            Purpose::Save | Purpose::Drawing => whole,
+            Purpose::Save | Purpose::Write(_) => whole,
         };
         Self { purpose, text: start.display().to_string(), error: None, listing: Listing::default() }
     }
@@ -88,7 +88,7 @@ impl PathBox {
             _ if typed.is_empty() => Some("a path is wanted here".to_owned()),
             _ if path.is_dir() => Some("this is a folder; give the name of a file in it".to_owned()),
             Purpose::Open if !path.exists() => Some("there is no such file".to_owned()),
-            Purpose::Save | Purpose::Drawing if !folder_of(&path).is_dir() => {
+            Purpose::Save | Purpose::Write(_) if !folder_of(&path).is_dir() => {
                 Some("there is no such folder".to_owned())
             }
             _ => None,

@@ -13,6 +13,7 @@ use std::task::{Context, Poll, Wake, Waker};
 use std::thread::{self, Thread};
 use std::time::{Duration, Instant};
 
+use crestline_sheets::Format;
 use eframe::egui;
 
 /// No hand closes a dialog this soon after it was asked for.
@@ -25,8 +26,8 @@ pub enum Purpose {
     Open,
     /// To save the plan.
     Save,
-    /// To write the drawing.
-    Drawing,
+    /// To write the drawing or the schedule.
+    Write(Format),
 }
 
 impl Purpose {
@@ -36,7 +37,8 @@ impl Purpose {
         match self {
             Self::Open => "Open a plan",
             Self::Save => "Save the plan as",
-            Self::Drawing => "Write the drawing to",
+            Self::Write(Format::Csv) => "Write the schedule to",
+            Self::Write(_) => "Write the drawing to",
         }
     }
 
@@ -46,7 +48,7 @@ impl Purpose {
         match self {
             Self::Open => "Open",
             Self::Save => "Save",
-            Self::Drawing => "Write",
+            Self::Write(_) => "Write",
         }
     }
 
@@ -55,7 +57,7 @@ impl Purpose {
     pub fn ending(self) -> &'static str {
         match self {
             Self::Open | Self::Save => super::files::PLAN_ENDING,
-            Self::Drawing => super::files::DRAWING_ENDING,
+            Self::Write(format) => format.ending(),
         }
     }
 }
@@ -119,12 +121,12 @@ fn ask(purpose: Purpose, suggested: &Path) -> Asking {
     let mut dialog = rfd::AsyncFileDialog::new().set_title(purpose.title());
     dialog = match purpose {
         Purpose::Open | Purpose::Save => dialog.add_filter("Plans", &[super::files::PLAN_ENDING]),
-        Purpose::Drawing => dialog.add_filter("SVG drawings", &[super::files::DRAWING_ENDING]),
+        Purpose::Write(format) => dialog.add_filter(format.ending().to_uppercase(), &[format.ending()]),
     };
     if let Some(folder) = suggested.parent().filter(|folder| folder.is_dir()) {
         dialog = dialog.set_directory(folder);
     }
-    if let (Purpose::Save | Purpose::Drawing, Some(name)) = (purpose, suggested.file_name()) {
+    if let (Purpose::Save | Purpose::Write(_), Some(name)) = (purpose, suggested.file_name()) {
         dialog = dialog.set_file_name(name.to_string_lossy());
     }
     match purpose {
@@ -132,7 +134,7 @@ fn ask(purpose: Purpose, suggested: &Path) -> Asking {
             let picked = dialog.pick_file();
             Box::pin(async { picked.await.map(|file| file.path().to_owned()) })
         }
-        Purpose::Save | Purpose::Drawing => {
+        Purpose::Save | Purpose::Write(_) => {
             let picked = dialog.save_file();
             Box::pin(async { picked.await.map(|file| file.path().to_owned()) })
         }

@@ -16,6 +16,7 @@ use crate::edit::command::Command;
 use crate::edit::desk::Desk;
 use crate::fields::form::Form;
 use crate::inputs::{self, Surroundings};
+use crate::papers::page;
 use crate::results::{layout_page, notes_page, notices};
 use crate::theme::{self, Palette};
 use crate::view::{Page, View};
@@ -178,6 +179,7 @@ impl Window {
             commands.extend(match view.page {
                 Page::Saddle => layout_page::show(ui, palette, outcome, view),
                 Page::FrettedNotes => notes_page::show(ui, palette, outcome, view),
+                Page::Sheets => page::show(ui, palette, outcome, &mut view.preview),
             });
         });
         commands

@@ -36,3 +36,20 @@ stop_window() {
     wait "$process" 2>/dev/null || true
     process=
 }
+
+# Processor time that the program has used, in hundredths of a second.
+ticks() { awk '{ print $14 + $15 }' "/proc/$process/stat" 2>/dev/null || echo 0; }
+
+# Waits until the program has done what it was asked, so that a slow machine only makes a script slower:
+# three tenths of a second without any work, or ten seconds at most.
+come_to_rest() {
+    local before now=-1 quiet=0
+    for _ in $(seq 100); do
+        before=$now
+        sleep 0.1
+        now=$(ticks)
+        if [ "$now" = "$before" ]; then quiet=$(( quiet + 1 )); else quiet=0; fi
+        [ "$quiet" -ge 3 ] && return 0
+    done
+    return 0
+}

@@ -14,8 +14,7 @@ for run in 1 2 3 4 5; do
     stop_window
 done
 start_window "$program" ${plan:+"$plan"}
-sleep 1
-ticks() { awk '{ print $14 + $15 }' "/proc/$process/stat"; }
+come_to_rest
 began=$(ticks)
 sleep 10
 echo "at rest: $(( $(ticks) - began )) hundredths of a second of processor time in 10 s"

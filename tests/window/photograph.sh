@@ -15,7 +15,7 @@ start_display
 photograph() {
     local page=$1 theme=$2 size=$3
     CRESTLINE_PAGE=$page CRESTLINE_THEME=$theme CRESTLINE_SIZE=$size start_window "$program" ${plan:+"$plan"}
-    sleep 1.2
+    come_to_rest
     local picture=$folder/$page-$theme-$size.png
     import -window "$window" "$picture"
     # A blank or half-drawn window has few colours.
@@ -23,7 +23,7 @@ photograph() {
     stop_window
 }
 
-for page in ${CRESTLINE_PAGES:-saddle fretted-notes}; do
+for page in ${CRESTLINE_PAGES:-saddle fretted-notes sheets}; do
     for size in ${CRESTLINE_SIZES:-1280x800 1920x1080}; do
         for theme in ${CRESTLINE_THEMES:-light dark}; do
             photograph "$page" "$theme" "$size"

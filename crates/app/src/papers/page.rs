@@ -50,7 +50,6 @@ pub fn show(
 /// Buttons that write files.
 fn writing(ui: &mut Ui, commands: &mut Vec<Command>) {
     ui.horizontal_wrapped(|ui| {
-        ui.label("Write");
         for format in [Format::Pdf, Format::Svg, Format::Dxf, Format::Csv] {
             let command = Command::Export(format);
             if ui.button(command.name()).on_hover_text(meaning(format)).clicked() {

@@ -37,19 +37,40 @@ stop_window() {
     process=
 }
 
-# Processor time that the program has used, in hundredths of a second.
-ticks() { awk '{ print $14 + $15 }' "/proc/$process/stat" 2>/dev/null || echo 0; }
+# Sets `used` to the processor time that the program has used, in hundredths of a second, and `runs` to
+# whether one of its threads runs or waits for a processor.
+look() {
+    local fields task
+    used=0 runs=no
+    read -r -a fields <"/proc/$process/stat" 2>/dev/null || return 0
+    used=$(( fields[13] + fields[14] ))
+    for task in /proc/"$process"/task/*/stat; do
+        read -r -a fields <"$task" 2>/dev/null || continue
+        [ "${fields[2]}" = R ] && runs=yes
+    done
+    return 0
+}
 
 # Waits until the program has done what it was asked, so that a slow machine only makes a script slower:
-# three tenths of a second without any work, or ten seconds at most.
+# three tenths of a second without any work, or twenty seconds at most.
 come_to_rest() {
-    local before now=-1 quiet=0
-    for _ in $(seq 100); do
-        before=$now
+    local before=-1 quiet=0 turn
+    for (( turn = 0; turn < 200; turn++ )); do
         sleep 0.1
-        now=$(ticks)
-        if [ "$now" = "$before" ]; then quiet=$(( quiet + 1 )); else quiet=0; fi
+        look
+        if [ "$used" = "$before" ] && [ "$runs" = no ]; then quiet=$(( quiet + 1 )); else quiet=0; fi
+        before=$used
         [ "$quiet" -ge 3 ] && return 0
     done
     return 0
+}
+
+# Waits until a command succeeds; fails where it does not within ten seconds.
+eventually() {
+    local turn
+    for (( turn = 0; turn < 50; turn++ )); do
+        "$@" && return 0
+        sleep 0.2
+    done
+    return 1
 }

@@ -15,7 +15,9 @@ for run in 1 2 3 4 5; do
 done
 start_window "$program" ${plan:+"$plan"}
 come_to_rest
-began=$(ticks)
+look
+began=$used
 sleep 10
-echo "at rest: $(( $(ticks) - began )) hundredths of a second of processor time in 10 s"
+look
+echo "at rest: $(( used - began )) hundredths of a second of processor time in 10 s"
 awk '/VmRSS/ { print "resident: " $2 / 1000 " MB" }' "/proc/$process/status"

@@ -2,6 +2,7 @@
 
 use std::collections::BTreeSet;
 
+use crate::choices::study::Study;
 use crate::fields::draft::Drafts;
 use crate::papers::preview::Preview;
 use crate::results::camera::Camera;
@@ -14,13 +15,15 @@ pub enum Page {
     Saddle,
     /// The errors of every fretted note as a table.
     FrettedNotes,
+    /// Every way to make saddle and nut, and figures for setting out.
+    Compare,
     /// The drawing as it prints, and its files.
     Sheets,
 }
 
 impl Page {
     /// All pages in the order of their tabs.
-    pub const ALL: [Self; 3] = [Self::Saddle, Self::FrettedNotes, Self::Sheets];
+    pub const ALL: [Self; 4] = [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets];
 
     /// The word on its tab.
     #[must_use]
@@ -28,6 +31,7 @@ impl Page {
         match self {
             Self::Saddle => "Saddle",
             Self::FrettedNotes => "Fretted notes",
+            Self::Compare => "Compare",
             Self::Sheets => "Sheets",
         }
     }
@@ -192,6 +196,8 @@ pub struct View {
     pub saddle_camera: Camera,
     /// Where the nut end is looked at from.
     pub nut_camera: Camera,
+    /// The comparison and the figures for setting out.
+    pub study: Study,
     /// What is shown of the sheets.
     pub preview: Preview,
     /// What has just been done.
@@ -214,6 +220,7 @@ impl View {
             note_figure: NoteFigure::Built,
             saddle_camera: Camera::default(),
             nut_camera: Camera::default(),
+            study: Study::default(),
             preview: Preview::default(),
             message: None,
         }

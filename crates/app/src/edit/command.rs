@@ -2,6 +2,7 @@
 
 use std::path::PathBuf;
 
+use crestline_plan::{NutStyle, SaddleStyle};
 use crestline_sheets::Format;
 use eframe::egui::{Key, KeyboardShortcut, Modifiers};
 
@@ -40,6 +41,8 @@ pub enum Command {
     MoveStringDown(usize),
     /// Choose the string (0 first) for the detail editor and the plots.
     ChooseString(usize),
+    /// Make saddle and nut of these styles, a two-piece saddle split after this string.
+    TakeStyle(SaddleStyle, NutStyle, Option<u32>),
     /// Show a page.
     ShowPage(Page),
     /// Show the inputs, or hide them to give the results the whole window.
@@ -85,6 +88,7 @@ impl Command {
             Self::MoveStringUp(_) => "Move the string up".into(),
             Self::MoveStringDown(_) => "Move the string down".into(),
             Self::ChooseString(index) => format!("Choose string {}", index + 1),
+            Self::TakeStyle(..) => "Take this saddle and nut into the plan".into(),
             Self::ShowPage(page) => page.name().into(),
             Self::ShowInputs(true) => "Show the inputs".into(),
             Self::ShowInputs(false) => "Hide the inputs".into(),

@@ -71,6 +71,12 @@ fn arrange(window: &mut Window, command: Command) {
         Command::MoveStringDown(index) => {
             change_strings(window, index + 1, "Move string", |plan| strings::swap(plan, index, index + 1));
         }
+        Command::TakeStyle(saddle, nut, split_after) => {
+            let plan = &mut window.desk.plan;
+            (plan.saddle.style, plan.nut.style) = (saddle, nut);
+            plan.saddle.split_after = split_after.or(plan.saddle.split_after);
+            window.desk.settle(&Edit::whole("Take saddle and nut"));
+        }
         Command::ChooseString(index) => view.string = index,
         Command::ShowPage(page) => view.page = page,
         Command::ShowInputs(shown) => view.inputs = shown,

@@ -12,11 +12,12 @@ use super::obey;
 use super::options::Options;
 use super::picker::Picker;
 use super::{bar, foot};
+use crate::choices;
 use crate::edit::command::Command;
 use crate::edit::desk::Desk;
 use crate::fields::form::Form;
 use crate::inputs::{self, Surroundings};
-use crate::papers::page;
+use crate::papers;
 use crate::results::{layout_page, notes_page, notices};
 use crate::theme::{self, Palette};
 use crate::view::{Page, View};
@@ -179,7 +180,8 @@ impl Window {
             commands.extend(match view.page {
                 Page::Saddle => layout_page::show(ui, palette, outcome, view),
                 Page::FrettedNotes => notes_page::show(ui, palette, outcome, view),
-                Page::Sheets => page::show(ui, palette, outcome, &mut view.preview),
+                Page::Compare => choices::page::show(ui, palette, outcome, view.string, &mut view.study),
+                Page::Sheets => papers::page::show(ui, palette, outcome, &mut view.preview),
             });
         });
         commands

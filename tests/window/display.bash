@@ -42,10 +42,10 @@ stop_window() {
 look() {
     local fields task
     used=0 runs=no
-    read -r -a fields <"/proc/$process/stat" 2>/dev/null || return 0
+    { read -r -a fields <"/proc/$process/stat"; } 2>/dev/null || return 0
     used=$(( fields[13] + fields[14] ))
     for task in /proc/"$process"/task/*/stat; do
-        read -r -a fields <"$task" 2>/dev/null || continue
+        { read -r -a fields <"$task"; } 2>/dev/null || continue
         [ "${fields[2]}" = R ] && runs=yes
     done
     return 0

@@ -11,7 +11,7 @@ use crate::furniture::{Page, TitleBlock, paper_name};
 use crate::layers::paper_drawing;
 use crate::legend::legend;
 use crate::nut_view::nut_view;
-use crate::pack::pack;
+use crate::pack::{column_width_mm, pack};
 use crate::plan_view::plan_view;
 use crate::profile::profile;
 use crate::tables::{schedule, slots};
@@ -23,7 +23,7 @@ use crate::template::template;
 pub fn sheets(plan: &Plan, solution: &Solution, options: &SheetOptions) -> Drawing {
     let facts = Facts::new(plan, solution, options);
     let page = Page::new(options.paper);
-    let mut pages = pack(blocks(&facts, page.content.width()), page.content);
+    let mut pages = pack(blocks(&facts, column_width_mm(page.content)), page.content);
     if pages.is_empty() {
         pages.push(vec![]);
     }

@@ -49,9 +49,13 @@ pub(crate) fn slots(facts: &Facts<'_>) -> Option<Block> {
         return None;
     }
     let unit = facts.options.units.sign();
-    let what = if facts.plan.saddle.style == SaddleStyle::Separate { "each piece" } else { "the slot" };
+    let (name, what) = match facts.plan.saddle.style {
+        SaddleStyle::Separate => ("Pieces", "each piece"),
+        _ if facts.slots.len() > 1 => ("Slots", "each slot"),
+        _ => ("Slot", "the slot"),
+    };
     let title = format!("Centre line of {what}, x from {}", facts.datum_short());
-    let mut block = Block::new("Slot", title);
+    let mut block = Block::new(name, title);
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
     let columns = vec![
         Column { heading: ["", ""], unit: "", width_mm: 26.0, number: false },

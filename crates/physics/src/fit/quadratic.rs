@@ -37,6 +37,27 @@ impl Quadratic {
     /// # Errors
     /// [`PhysicsError::NotSettled`] where there is no feasible point, or rounding keeps it from being reached.
     pub fn minimise(&self) -> Result<DVector<f64>, PhysicsError> {
+        self.scaled().follow_path()
+    }
+
+    /// The same programme with an objective and constraints of size 1, which moves no minimiser: slacks and duals
+    /// then start from a like size whatever the units.
+    fn scaled(&self) -> Self {
+        let objective = self.gradient.amax().max(self.hessian.amax()).max(f64::MIN_POSITIVE);
+        let mut scaled = self.clone();
+        scaled.hessian /= objective;
+        scaled.gradient /= objective;
+        for (mut row, limit) in scaled.rows.row_iter_mut().zip(scaled.limits.iter_mut()) {
+            let size = row.norm();
+            if size > 0.0 {
+                row /= size;
+                *limit /= size;
+            }
+        }
+        scaled
+    }
+
+    fn follow_path(&self) -> Result<DVector<f64>, PhysicsError> {
         let count = self.limits.len();
         let mut at = Iterate {
             x: DVector::zeros(self.gradient.len()),
@@ -134,17 +155,34 @@ mod tests {
     #![allow(clippy::unwrap_used)]
     use super::*;
 
-    #[test]
-    fn a_textbook_quadratic_programme() {
-        // Nocedal and Wright, example 16.4: minimum of (x − 1)² + (y − 2.5)² is at (1.4, 1.7).
-        let programme = Quadratic {
+    /// Nocedal and Wright, example 16.4: minimum of (x − 1)² + (y − 2.5)² is at (1.4, 1.7).
+    fn textbook() -> Quadratic {
+        Quadratic {
             hessian: DMatrix::from_diagonal_element(2, 2, 2.0),
             gradient: DVector::from_vec(vec![-2.0, -5.0]),
             rows: DMatrix::from_row_slice(5, 2, &[-1.0, 2.0, 1.0, 2.0, 1.0, -2.0, -1.0, 0.0, 0.0, -1.0]),
             limits: DVector::from_vec(vec![2.0, 6.0, 2.0, 0.0, 0.0]),
-        };
-        let x = programme.minimise().unwrap();
+        }
+    }
+
+    #[test]
+    fn a_textbook_quadratic_programme() {
+        let x = textbook().minimise().unwrap();
         assert!((x[0] - 1.4).abs() < 1e-9 && (x[1] - 1.7).abs() < 1e-9, "{x}");
+    }
+
+    #[test]
+    fn units_of_any_size_make_no_difference() {
+        let base = textbook();
+        for size in [1e-9, 1e-4, 1e4, 1e9] {
+            let mut programme = textbook();
+            programme.hessian *= size;
+            programme.gradient *= size;
+            programme.rows.row_mut(1).scale_mut(size);
+            programme.limits[1] *= size;
+            let (x, expected) = (programme.minimise().unwrap(), base.minimise().unwrap());
+            assert!((&x - &expected).amax() < 1e-9, "{size}: {x}");
+        }
     }
 
     #[test]

@@ -12,12 +12,20 @@ use crate::{Contacts, PhysicsError};
 const MAX_STEPS: usize = 40;
 /// Step at which a search has settled, mm.
 const SETTLED_MM: f64 = 1e-8;
+/// What rounding may add to what is made small, as a share of it (and at least of 1 cent or 1 cent²).
+const HAIR: f64 = 1e-9;
+/// Gain of a step, as such a share, at which a search has settled too: where unknowns outnumber what they can mend the
+/// bottom is flat, and every place there is as good. For squared errors, which grow with the square of the way from
+/// their least, and for the largest error, which grows with the way itself.
+const FLAT_SQUARES: f64 = 1e-13;
+const FLAT_LARGEST: f64 = 1e-9;
 /// Derivatives are taken anew after a step longer than this, mm: what an older one would shift the optimum by is
 /// below 1e-6 mm.
 const FRESH_MM: f64 = 1e-4;
 /// Step of the derivatives of errors with respect to contacts, mm: rounding and curvature each cost about 1e-6.
 const DIFFERENCE_MM: f64 = 1e-4;
-/// How far a limit may be overstepped before the constrained step is taken, mm.
+/// How far a limit may be overstepped before the constrained step is taken, and for nothing, mm: constrained steps end
+/// about so near to a limit.
 const FEASIBLE_MM: f64 = 1e-9;
 /// Width left to the largest error while ties are settled, cents; moves a crest by less than 1e-6 mm.
 const TIE_CENTS: f64 = 1e-6;
@@ -61,7 +69,7 @@ impl Search<'_> {
     /// [`PhysicsError`] where the start itself cannot be worked out.
     pub fn run(&self, objective: Objective, start: &[Contacts]) -> Result<Found, PhysicsError> {
         let start = self.unknowns.near(start);
-        let found = self.descend(start, squared, |near, errors, excesses| {
+        let found = self.descend(start, squared, FLAT_SQUARES, |near, errors, excesses| {
             self.least_squares_step(near, errors, excesses, None)
         })?;
         // Without a note there is no largest error, and the place is kept.
@@ -69,7 +77,7 @@ impl Search<'_> {
         {
             return Ok(found);
         }
-        let found = self.descend(found.unknowns, largest, |near, errors, excesses| {
+        let found = self.descend(found.unknowns, largest, FLAT_LARGEST, |near, errors, excesses| {
             self.minimax_step(near, errors, excesses)
         })?;
         if self.unknowns.count() == 1 {
@@ -77,7 +85,7 @@ impl Search<'_> {
         }
         let bound = largest(&self.errors(&found.unknowns)?) + TIE_CENTS;
         let merit = |errors: &DVector<f64>| squared(errors) + 1e6 * (largest(errors) - bound).max(0.0);
-        self.descend(found.unknowns, merit, |near, errors, excesses| {
+        self.descend(found.unknowns, merit, FLAT_SQUARES, |near, errors, excesses| {
             self.least_squares_step(near, errors, excesses, Some(bound))
         })
     }
@@ -86,6 +94,7 @@ impl Search<'_> {
         &self,
         mut at: Vec<f64>,
         merit: impl Fn(&DVector<f64>) -> f64,
+        flat_share: f64,
         step: impl Fn(&Near, &DVector<f64>, &DVector<f64>) -> Result<DVector<f64>, PhysicsError>,
     ) -> Result<Found, PhysicsError> {
         let mut errors = self.errors(&at)?;
@@ -96,26 +105,30 @@ impl Search<'_> {
         for _ in 0..MAX_STEPS {
             let excesses = DVector::from_vec(self.unknowns.excesses_mm(&at));
             let total = |errors: &DVector<f64>, excesses: &DVector<f64>| {
-                merit(errors) + price * excesses.iter().map(|excess| excess.max(0.0)).sum::<f64>()
+                merit(errors)
+                    + price * excesses.iter().map(|excess| (excess - FEASIBLE_MM).max(0.0)).sum::<f64>()
             };
             let before = total(&errors, &excesses);
             let Ok(mut change) = step(&near, &errors, &excesses) else { break };
-            let mut accepted = false;
-            for _ in 0..12 {
+            let (mut accepted, mut flat) = (false, false);
+            for halvings in 0..12 {
                 let next: Vec<f64> = std::iter::zip(&at, change.iter()).map(|(a, b)| a + b).collect();
                 let after = self.errors(&next).ok().filter(|errors| errors.iter().all(|e| e.is_finite()));
                 if let Some(after) = after {
                     let excesses = DVector::from_vec(self.unknowns.excesses_mm(&next));
-                    // Rounding may lift the merit by a hair at the optimum itself.
-                    if total(&after, &excesses) <= before + 1e-9 * (1.0 + before.abs()) {
+                    let left = total(&after, &excesses);
+                    // Rounding may lift the merit by a hair where a whole step ends at the optimum itself.
+                    let hair = if halvings == 0 { HAIR } else { flat_share } * (1.0 + before.abs());
+                    if left <= before + hair {
                         (at, errors, accepted) = (next, after, true);
+                        flat = before - left <= flat_share * (1.0 + before.abs());
                         break;
                     }
                 }
                 change *= 0.5;
             }
             last_step_mm = if change.is_empty() { 0.0 } else { change.amax() };
-            settled = last_step_mm < SETTLED_MM || (!accepted && last_step_mm < 1e2 * SETTLED_MM);
+            settled = flat || last_step_mm < SETTLED_MM || (!accepted && last_step_mm < 1e2 * SETTLED_MM);
             if !accepted || settled {
                 break;
             }

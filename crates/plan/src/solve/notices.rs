@@ -2,6 +2,9 @@
 
 use std::fmt::Write;
 
+use crestline_physics::Contacts;
+use crestline_physics::fit::Setbacks;
+
 use super::Fitted;
 use super::prepare::{Prepared, PreparedString};
 use crate::{Checked, FitRule, Notice, NutStyle, Plan, Report, SaddleStyle, Severity};
@@ -32,8 +35,9 @@ pub(super) fn notices(
     blank(plan, fitted, &mut notices);
     for (words, setbacks) in [("ideal", &fitted.ideal), ("built", &fitted.built)] {
         if !setbacks.settled {
+            let why = edge(plan, prepared, setbacks).unwrap_or_default();
             let text = format!(
-                "the search for the {words} setbacks stopped before it came to rest: its last step was {:.4} mm",
+                "the search for the {words} setbacks stopped before it came to rest: its last step was {:.4} mm{why}",
                 setbacks.last_step_mm
             );
             notices.push(warning("fit", text));
@@ -56,6 +60,30 @@ fn called(plan: &Plan, index: usize) -> String {
     let number = (index + 1).to_string();
     let name = &plan.strings[index].name;
     if *name == number { format!("string {number}") } else { format!("string {number} ({name})") }
+}
+
+/// Says so where a search stopped because a note of the fit buzzes a little further on: there its error leaps.
+fn edge(plan: &Plan, prepared: &Prepared, setbacks: &Setbacks) -> Option<String> {
+    /// How far to look beyond the last step, mm.
+    const FURTHER_MM: f64 = 0.01;
+    let reach_mm = setbacks.last_step_mm + FURTHER_MM;
+    for (index, (string, at)) in prepared.strings.iter().zip(&setbacks.contacts).enumerate() {
+        for (saddle_mm, nut_mm) in [(reach_mm, 0.0), (-reach_mm, 0.0), (0.0, reach_mm), (0.0, -reach_mm)] {
+            let beyond = Contacts {
+                saddle_setback_mm: at.saddle_setback_mm + saddle_mm,
+                nut_setback_mm: at.nut_setback_mm + nut_mm,
+            };
+            let Ok(notes) = string.string.notes(beyond) else { continue };
+            if let Some(&fret) = string.frets.iter().find(|&&fret| notes[fret].touches_fret.is_some()) {
+                let whose = called(plan, index);
+                return Some(format!(
+                    "; a little further on {whose} buzzes where it is pressed at fret {}",
+                    fret + 1
+                ));
+            }
+        }
+    }
+    None
 }
 
 fn buzzes(plan: &Plan, index: usize, string: &PreparedString, notices: &mut Vec<Notice>) {

@@ -1,9 +1,11 @@
 //! The command line in one process: exit statuses, streams, messages and files.
 
+mod bench_files;
 mod example_files;
 mod faults;
 mod report;
 mod status;
+mod tables;
 
 use std::io::{self, Write};
 

@@ -9,6 +9,8 @@ mod command_line;
 #[cfg(test)]
 mod places;
 #[cfg(test)]
+mod program;
+#[cfg(test)]
 mod published;
 #[cfg(test)]
 mod reference;

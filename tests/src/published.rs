@@ -8,6 +8,7 @@ mod frets_and_stretch;
 mod materials;
 mod stiff_strings;
 mod tension_and_mass;
+mod trade;
 
 /// An inch in millimetres, by definition.
 const INCH_MM: f64 = 25.4;

@@ -3,7 +3,7 @@
 use std::path::{Path, PathBuf};
 
 use clap::{Args, Parser, Subcommand};
-use crestline_plan::{Datum, Paper, Word};
+use crestline_plan::{Datum, Paper, Step, Word};
 use crestline_sheets::{Format, LengthUnits};
 
 /// Works out where each string's saddle crest must stand so that fretted notes are in tune.
@@ -36,6 +36,12 @@ pub(crate) enum Command {
     Example(Example),
     /// Set every way to make saddle and nut side by side.
     Compare(Compare),
+    /// Print where everything stands from the datum, and how each blank's top is shaped.
+    Bench(Bench),
+    /// Print setbacks rounded to a step, what that costs, and what a slip costs.
+    Workshop(Rounding),
+    /// Find from tuner readings what is wrong with an instrument, and what cures it.
+    Diagnose(Diagnose),
     /// Write the dimensioned drawing at 1:1.
     Sheet(Sheet),
     /// Write the schedule for the jig as CSV.
@@ -79,6 +85,42 @@ pub(crate) struct Compare {
     #[command(flatten)]
     pub plan: PlanArgument,
     /// Print the comparison as JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `bench`
+#[derive(Debug, Args)]
+pub(crate) struct Bench {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// Where x is measured from: nut, twelfth_fret or saddle_line. The plan's own where left out.
+    #[arg(long, value_parser = word::<Datum>)]
+    pub datum: Option<Datum>,
+    /// Print the layout as JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `workshop`
+#[derive(Debug, Args)]
+pub(crate) struct Rounding {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// Step to round to: 0.05mm, 0.1mm, 0.25mm, 0.5mm, 1/64in or 1/32in.
+    #[arg(long, value_parser = step, default_value = "0.1mm")]
+    pub step: Step,
+    /// Print the figures as JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `diagnose`
+#[derive(Debug, Args)]
+pub(crate) struct Diagnose {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// Print the diagnosis as JSON.
     #[arg(long)]
     pub json: bool,
 }
@@ -129,6 +171,13 @@ pub(crate) struct Frame {
 
 fn word<T: Word>(text: &str) -> Result<T, String> {
     T::from_word(text).ok_or_else(|| format!("allowed: {}", T::all_words()))
+}
+
+/// A step by its word, with or without the space before the unit.
+fn step(text: &str) -> Result<Step, String> {
+    let bare = |word: &str| word.replace(' ', "");
+    let found = Step::ALL.iter().find(|step| bare(step.word()) == bare(text));
+    found.copied().ok_or_else(|| format!("allowed: {}", Step::all_words()))
 }
 
 fn units(text: &str) -> Result<LengthUnits, String> {

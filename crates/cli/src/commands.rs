@@ -7,9 +7,13 @@ use clap::Parser;
 use clap::error::ErrorKind;
 use crestline_plan::{Checked, EXAMPLES, Solution};
 
-use crate::arguments::{Arguments, Command, Compare, Example, Solve, is_standard};
+use crate::arguments::{Arguments, Bench, Command, Compare, Example, Rounding, Solve, is_standard};
 use crate::failure::{STATUS_DONE, STATUS_REFUSED};
-use crate::{Failure, Streams, bench_files, files, fret_errors, print, solve_table, styles};
+use crate::text::safe;
+use crate::{
+    Failure, Streams, bench_files, bench_table, diagnosis, files, fret_errors, print, solve_table, styles,
+    workshop_table,
+};
 
 /// What the arguments ask for.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -61,14 +65,22 @@ fn reported(failure: &Failure, streams: &mut Streams<'_>) -> u8 {
     failure.status()
 }
 
-/// The plan for the window, which cannot save to a stream and so does not open one.
+/// The plan for the window. The window cannot save to a stream and so does not open one; and a bare word that is no
+/// file is more likely a command misspelt.
 fn window_plan(plan: Option<PathBuf>) -> Result<Option<PathBuf>, Failure> {
-    match plan {
-        Some(path) if is_standard(&path) => Err(Failure::Argument(
-            "the window opens a plan file; a command such as `solve -` reads standard input".into(),
-        )),
-        plan => Ok(plan),
+    let Some(path) = plan else { return Ok(None) };
+    if is_standard(&path) {
+        let words = "the window opens a plan file; a command such as `solve -` reads standard input";
+        return Err(Failure::Argument(words.to_owned()));
     }
+    let is_bare_word = path.components().count() == 1 && path.extension().is_none();
+    if is_bare_word && !path.exists() {
+        let word = safe(&path.display().to_string());
+        return Err(Failure::Argument(format!(
+            "{word} is neither a command nor a file; see crestline --help"
+        )));
+    }
+    Ok(Some(path))
 }
 
 fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failure> {
@@ -77,6 +89,9 @@ fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failur
         Command::Check(options) => check(&options.plan, streams),
         Command::Example(options) => example(options, streams),
         Command::Compare(options) => compare(options, streams),
+        Command::Bench(options) => bench(options, streams),
+        Command::Workshop(options) => workshop(options, streams),
+        Command::Diagnose(options) => diagnosis::diagnose(options, streams),
         Command::Sheet(options) => bench_files::sheet(options, streams),
         Command::Schedule(options) => bench_files::schedule(options, streams),
     }
@@ -99,7 +114,7 @@ fn solve(options: &Solve, streams: &mut Streams<'_>) -> Result<(), Failure> {
 fn check(path: &Path, streams: &mut Streams<'_>) -> Result<(), Failure> {
     let (_, solution) = solved(path, streams)?;
     print::notices(streams, &solution.report.notices);
-    print::result(streams, format!("{}: no fault\n", crate::text::safe(&shown_name(path))).as_bytes())
+    print::result(streams, format!("{}: no fault\n", safe(&shown_name(path))).as_bytes())
 }
 
 fn example(options: &Example, streams: &mut Streams<'_>) -> Result<(), Failure> {
@@ -108,7 +123,7 @@ fn example(options: &Example, streams: &mut Streams<'_>) -> Result<(), Failure> 
     };
     let found = EXAMPLES.iter().find(|example| example.name == name);
     let example = found.ok_or_else(|| {
-        let name = crate::text::safe(name);
+        let name = safe(name);
         Failure::Argument(format!(
             "there is no example {name}; the examples are\n{}",
             example_list().trim_end()
@@ -132,6 +147,30 @@ fn compare(options: &Compare, streams: &mut Streams<'_>) -> Result<(), Failure> 
     print::result(streams, styles::text(checked.plan(), &comparison).as_bytes())
 }
 
+fn bench(options: &Bench, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let (checked, solution) = solved(&options.plan.plan, streams)?;
+    let plan = checked.plan();
+    let layout =
+        crestline_plan::bench_layout_from(plan, &solution, options.datum.unwrap_or(plan.sheet.datum));
+    print::notices(streams, &solution.report.notices);
+    if options.json {
+        return print::json(streams, &layout);
+    }
+    print::result(streams, bench_table::text(&layout).as_bytes())
+}
+
+fn workshop(options: &Rounding, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let path = &options.plan.plan;
+    let (checked, solution) = solved(path, streams)?;
+    let workshop = crestline_plan::workshop(&checked, &solution, options.step)
+        .map_err(|faults| refused(path, faults))?;
+    print::notices(streams, &solution.report.notices);
+    if options.json {
+        return print::json(streams, &workshop);
+    }
+    print::result(streams, workshop_table::text(checked.plan(), &workshop).as_bytes())
+}
+
 /// Reads, checks and solves a plan.
 pub(crate) fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked, Solution), Failure> {
     let checked = checked(path, streams)?;
@@ -140,7 +179,7 @@ pub(crate) fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked,
 }
 
 /// Reads and checks a plan.
-fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
+pub(crate) fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
     let text = if is_standard(path) {
         files::plan_text(&shown_name(path), streams.input)
     } else {
@@ -150,7 +189,7 @@ fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
     crestline_plan::check(&plan).map_err(|faults| refused(path, faults))
 }
 
-fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
+pub(crate) fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
     Failure::Faults { name: shown_name(path), faults }
 }
 

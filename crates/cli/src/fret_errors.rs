@@ -5,15 +5,17 @@ use crestline_plan::{FretReport, Report, StringReport};
 use crate::numbers::{force, length, signed_cents};
 use crate::solve_table::NAME_LIMIT;
 use crate::table::{Column, rendered};
-use crate::text::{clipped, safe};
+use crate::text::{clipped, push_paragraph, safe};
 
 /// One table a string: the errors with no setback, with the ideal and with the built setbacks, and the
 /// parts of the first.
 pub(crate) fn text(report: &Report) -> String {
-    let mut text =
-        "\nErrors in cents, positive is sharp. Length, tension, mass and stiffness are the parts of the\n\
-                    error with no setback; the finger's force is in N.\n"
-            .to_owned();
+    let mut text = "\n".to_owned();
+    push_paragraph(
+        &mut text,
+        "Errors in cents, positive is sharp. Length, tension, mass and stiffness are the parts of the error with no \
+         setback; the finger's force is in N.",
+    );
     for string in &report.strings {
         text.push_str(&format!("\nString {}, {}\n", string.string, clipped(&safe(&string.name), NAME_LIMIT)));
         text.push_str(&string_table(string));

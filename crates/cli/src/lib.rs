@@ -17,7 +17,9 @@
 
 mod arguments;
 mod bench_files;
+mod bench_table;
 mod commands;
+mod diagnosis;
 mod failure;
 pub mod files;
 mod fret_errors;
@@ -28,6 +30,7 @@ mod streams;
 mod styles;
 mod table;
 mod text;
+mod workshop_table;
 
 pub use commands::{Outcome, run};
 pub use failure::{Failure, STATUS_DONE, STATUS_FAILED, STATUS_REFUSED};

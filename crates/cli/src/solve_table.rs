@@ -1,18 +1,18 @@
 //! A solution as a table for people.
 
-use crestline_plan::{Datum, FitRule, NutStyle, Plan, SaddleLine, SaddleStyle, Solution, StringReport};
+use crestline_plan::{
+    Datum, FitRule, NutStyle, Plan, SaddleLine, SaddleStyle, Solution, StringLine, StringReport,
+};
 
 use crate::numbers::{cents, fixed, force, length, percent};
 use crate::print::notice_line;
 use crate::table::{Column, rendered};
-use crate::text::{clipped, safe, wrapped};
+use crate::text::{PAGE_WIDTH, clipped, push_paragraph, safe};
 
-/// The widest line, which fits most terminals and a printed page.
-pub(crate) const PAGE_WIDTH: usize = 100;
-/// The widest string name beside the columns of a compensated nut.
-const NAME_WIDTH_WITH_NUT: usize = 8;
+/// The widest string name in a table of many columns.
+pub(crate) const NARROW_NAME: usize = 8;
 /// The widest string name otherwise.
-pub(crate) const NAME_LIMIT: usize = 18;
+pub(crate) const NAME_LIMIT: usize = 14;
 
 /// What stands below every table that shows tensions.
 const CAUTION: &str = "Caution: strings under tension can break and bridges can lift. The string maker's ratings and \
@@ -22,33 +22,27 @@ const CAUTION: &str = "Caution: strings under tension can break and bridges can 
 pub(crate) fn text(plan: &Plan, solution: &Solution) -> String {
     let mut text = heading(plan);
     text.push('\n');
-    text.push_str(&string_table(plan, solution));
+    text.push_str(&string_table(solution));
     text.push('\n');
+    if plan.nut.style != NutStyle::Plain {
+        text.push_str(&nut_table(solution));
+        text.push('\n');
+    }
     text.push_str(&saddle_lines(solution));
     text.push_str(&format!("Total pull on the bridge: {} N\n", force(solution.report.total_tension_n)));
     for notice in &solution.report.notices {
-        push_wrapped(&mut text, &notice_line(notice));
+        push_paragraph(&mut text, &notice_line(notice));
     }
     text.push('\n');
-    push_wrapped(&mut text, CAUTION);
+    push_paragraph(&mut text, CAUTION);
     text
-}
-
-/// Adds a sentence, broken into lines of the page's width, the later ones indented.
-fn push_wrapped(text: &mut String, sentence: &str) {
-    const INDENT: &str = "  ";
-    for (number, line) in wrapped(sentence, PAGE_WIDTH - INDENT.len()).iter().enumerate() {
-        text.push_str(if number == 0 { "" } else { INDENT });
-        text.push_str(line);
-        text.push('\n');
-    }
 }
 
 /// The title and what was asked for.
 fn heading(plan: &Plan) -> String {
     let title = if plan.title.trim().is_empty() { "Plan without a title" } else { plan.title.trim() };
     let mut text = String::new();
-    push_wrapped(&mut text, &clipped(&safe(title), 3 * PAGE_WIDTH));
+    push_paragraph(&mut text, &clipped(&safe(title), 3 * PAGE_WIDTH));
     let [first, last] = plan.fit.frets;
     let asked = format!(
         "Saddle {}, nut {}; {} over frets {first} to {last}.",
@@ -56,19 +50,18 @@ fn heading(plan: &Plan) -> String {
         nut_words(plan.nut.style),
         rule_words(plan.fit.rule),
     );
-    push_wrapped(&mut text, &asked);
+    push_paragraph(&mut text, &asked);
     let frame = format!(
-        "Lengths in mm, errors in cents. Crest x from {}, y from the centre line (positive: treble side), \
+        "Setbacks and lengths in mm, errors in cents. Crest x from {}, y from the centre line (positive: treble side), \
          z above the plane of the outer frets' crowns.",
         datum_words(plan.sheet.datum),
     );
-    push_wrapped(&mut text, &frame);
+    push_paragraph(&mut text, &frame);
     text
 }
 
-fn string_table(plan: &Plan, solution: &Solution) -> String {
-    let with_nut = plan.nut.style != NutStyle::Plain;
-    let mut columns = vec![
+fn string_table(solution: &Solution) -> String {
+    let columns = [
         Column::numbers("No.", ""),
         Column::words("Name", ""),
         Column::numbers("Pitch", "Hz"),
@@ -76,45 +69,57 @@ fn string_table(plan: &Plan, solution: &Solution) -> String {
         Column::numbers("Load", "%"),
         Column::numbers("Setback", "ideal"),
         Column::numbers("Setback", "built"),
-    ];
-    if with_nut {
-        columns.extend([Column::numbers("Nut", "ideal"), Column::numbers("Nut", "built")]);
-    }
-    columns.extend([
         Column::numbers("Crest", "x"),
         Column::numbers("Crest", "y"),
         Column::numbers("Crest", "z"),
         Column::numbers("Error", "rms"),
         Column::numbers("Error", "worst"),
-    ]);
+    ];
     let datum_x_mm = solution.layout.datum_x_mm;
     let strings = solution.report.strings.iter();
-    rendered(&columns, &strings.map(|string| string_row(string, datum_x_mm, with_nut)).collect::<Vec<_>>())
+    rendered(&columns, &strings.map(|string| string_row(string, datum_x_mm)).collect::<Vec<_>>())
 }
 
-fn string_row(string: &StringReport, datum_x_mm: f64, with_nut: bool) -> Vec<String> {
-    let name_width = if with_nut { NAME_WIDTH_WITH_NUT } else { NAME_LIMIT };
-    let (ideal, built) = (&string.ideal, &string.built);
-    let mut row = vec![
+fn string_row(string: &StringReport, datum_x_mm: f64) -> Vec<String> {
+    let built = &string.built;
+    vec![
         string.string.to_string(),
-        clipped(&safe(&string.name), name_width),
+        clipped(&safe(&string.name), NAME_LIMIT),
         fixed(string.frequency_hz, 2),
         force(string.tension_n),
         string.breaking_fraction.map_or_else(|| "-".to_owned(), percent),
-        length(ideal.saddle_setback_mm),
+        length(string.ideal.saddle_setback_mm),
         length(built.saddle_setback_mm),
-    ];
-    if with_nut {
-        row.extend([length(ideal.nut_setback_mm), length(built.nut_setback_mm)]);
-    }
-    row.extend([
         length(built.crest_mm.x - datum_x_mm),
         length(built.crest_mm.y),
         length(built.crest_mm.z),
         cents(built.rms_cents),
         cents(built.max_cents),
-    ]);
-    row
+    ]
+}
+
+/// Setbacks of the nut, which only a compensated one has, and where each edge stands from the datum.
+fn nut_table(solution: &Solution) -> String {
+    let columns = [
+        Column::numbers("No.", ""),
+        Column::words("Name", ""),
+        Column::numbers("Nut setback", "ideal"),
+        Column::numbers("Nut setback", "built"),
+        Column::numbers("Nut edge", "x"),
+        Column::numbers("Nut edge", "y"),
+    ];
+    let row = |(string, line): (&StringReport, &StringLine)| {
+        vec![
+            string.string.to_string(),
+            clipped(&safe(&string.name), NAME_LIMIT),
+            length(string.ideal.nut_setback_mm),
+            length(string.built.nut_setback_mm),
+            length(line.nut_edge.x - solution.layout.datum_x_mm),
+            length(line.nut_edge.y),
+        ]
+    };
+    let strings = solution.report.strings.iter().zip(&solution.layout.strings);
+    rendered(&columns, &strings.map(row).collect::<Vec<_>>())
 }
 
 /// The ends and slant of every straight line of the saddle, and whether the crests fit.
@@ -174,7 +179,8 @@ fn rule_words(rule: FitRule) -> &'static str {
     }
 }
 
-fn datum_words(datum: Datum) -> &'static str {
+/// A datum in words that follow "from".
+pub(crate) fn datum_words(datum: Datum) -> &'static str {
     match datum {
         Datum::Nut => "the nominal nut line",
         Datum::TwelfthFret => "the crown of fret 12",

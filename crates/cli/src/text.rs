@@ -5,6 +5,9 @@ use unicode_width::{UnicodeWidthChar, UnicodeWidthStr};
 /// What stands for a character that must not reach a terminal.
 const SUBSTITUTE: char = '\u{fffd}';
 
+/// The widest line of a table or a paragraph, which fits most terminals and a printed page.
+pub(crate) const PAGE_WIDTH: usize = 100;
+
 /// The text with a visible substitute for every character that would move the cursor, break the line or
 /// turn the writing direction.
 pub(crate) fn safe(text: &str) -> String {
@@ -43,7 +46,7 @@ pub(crate) fn clipped(text: &str, columns: usize) -> String {
 }
 
 /// The text broken at spaces into lines of at most `columns` terminal columns; a longer word stands alone.
-pub(crate) fn wrapped(text: &str, columns: usize) -> Vec<String> {
+fn wrapped(text: &str, columns: usize) -> Vec<String> {
     let mut lines = vec![String::new()];
     for word in text.split_whitespace() {
         let last = lines.last().map_or(0, |line| width(line));
@@ -58,6 +61,16 @@ pub(crate) fn wrapped(text: &str, columns: usize) -> Vec<String> {
         }
     }
     lines
+}
+
+/// Adds a paragraph, broken into lines of the page's width, the later ones indented.
+pub(crate) fn push_paragraph(text: &mut String, paragraph: &str) {
+    const INDENT: &str = "  ";
+    for (number, line) in wrapped(paragraph, PAGE_WIDTH - INDENT.len()).iter().enumerate() {
+        text.push_str(if number == 0 { "" } else { INDENT });
+        text.push_str(line);
+        text.push('\n');
+    }
 }
 
 #[cfg(test)]

@@ -62,7 +62,7 @@ impl Tags {
     }
 }
 
-/// Clean text as the value of a TEXT entity: other than ASCII as `\U+XXXX`, and nothing that R12 or a later
+/// Clean text as the value of a TEXT entity: other than ASCII as `\U+hhhh`, and nothing that R12 or a later
 /// reader would take for a code (`%%c`, `^J`, `\P`).
 pub(crate) fn text_value(clean: &str) -> String {
     let mut out = String::new();

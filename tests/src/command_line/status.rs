@@ -18,6 +18,8 @@ fn without_a_command_a_window_is_wanted() {
     assert_eq!(outcome(&["crestline"]), Outcome::Window(None));
     assert_eq!(outcome(&["crestline", "a plan.json"]), Outcome::Window(Some(PathBuf::from("a plan.json"))));
     assert_eq!(outcome(&["crestline", "./solve"]), Outcome::Window(Some(PathBuf::from("./solve"))));
+    // Under the tests' own folder there is a file of this name, so it is a plan and no misspelt command.
+    assert_eq!(outcome(&["crestline", "run"]), Outcome::Window(Some(PathBuf::from("run"))));
 }
 
 #[test]
@@ -28,7 +30,7 @@ fn help_and_version_are_results() {
         assert!(!ran.out.is_empty());
     }
     let help = crestline(&["--help"], "").out;
-    for command in ["solve", "check", "example", "compare"] {
+    for command in ["solve", "check", "example", "compare", "bench", "workshop", "sheet", "schedule"] {
         assert!(help.contains(command), "the help names {command}");
     }
 }
@@ -45,6 +47,7 @@ fn refused_arguments_give_two_and_leave_the_output_empty() {
         &["example", "no_such_instrument"],
         &["example", "-o", "x.json"],
         &["-"],
+        &["slove"],
     ] {
         let ran = crestline(arguments, "");
         assert_eq!(ran.status, 2, "{arguments:?}: {}", ran.err);

@@ -2,7 +2,8 @@
 //!
 //! [`read`] turns a file's text into a [`Plan`], or lists every fault of it; [`write`] turns a plan into a file's
 //! text; [`check`] turns a plan, which may be wrong while someone edits it, into a [`Checked`] one or lists every
-//! fault; [`solve`] turns a checked plan into a [`Solution`]. Nothing here reads a file or a clock, or draws.
+//! fault; [`solve`] turns a checked plan into a [`Solution`]. [`diagnose`] goes the other
+//! way, from tuner readings to what is wrong with an instrument. Nothing here reads a file or a clock, or draws.
 //!
 //! Lengths are millimetres, moduli gigapascals, densities kg/m³, frequencies hertz, unless a name says otherwise.
 //!
@@ -24,6 +25,8 @@ mod bench;
 mod check;
 mod compare;
 pub mod defaults;
+mod diagnose;
+mod diagnosis;
 mod document;
 mod examples;
 mod fault;
@@ -39,6 +42,9 @@ mod write;
 pub use bench::{BenchLayout, BenchPiece, BenchString, bench_layout, bench_layout_from, datum_x_mm};
 pub use check::{Checked, check};
 pub use compare::compare;
+pub use crestline_physics::diagnose::Priors;
+pub use diagnose::{diagnose, fitted_plan, readings_from_csv, suggested_frets};
+pub use diagnosis::*;
 pub use document::*;
 pub use examples::{EXAMPLES, Example, example};
 pub use fault::Fault;

@@ -74,8 +74,8 @@ def published_modes():
     return worst
 
 
-def beam(e, left, right, count=300):
-    """First mode over that of the flexible string by Hermite finite elements, graded toward the ends."""
+def beam(e, left, right, count=300, order=1):
+    """Mode number `order` over the first one of the flexible string by Hermite finite elements, graded toward the ends."""
     nodes = 0.5 * (1.0 - np.cos(np.pi * np.linspace(0.0, 1.0, count + 1)))
     size = 2 * (count + 1)
     stiff, mass = np.zeros((size, size)), np.zeros((size, size))
@@ -100,7 +100,7 @@ def beam(e, left, right, count=300):
     # Each freedom in its own unit, and the largest of 1/w^2: so the lowest mode keeps its digits.
     unit = 1.0 / np.sqrt(np.diag(stiff)[keep])
     scaled = [m[np.ix_(keep, keep)] * np.outer(unit, unit) for m in (mass, stiff)]
-    value = eigh(*scaled, eigvals_only=True, subset_by_index=[len(keep) - 1, len(keep) - 1])[0]
+    value = eigh(*scaled, eigvals_only=True, subset_by_index=[len(keep) - order, len(keep) - order])[0]
     return 1.0 / (math.sqrt(value) * math.pi)
 
 

@@ -137,7 +137,6 @@ fn few_frets_are_suggested() {
         let frets = suggested_frets(&check(&plan(name)).unwrap()).unwrap();
         assert!((3..=8).contains(&frets.len()), "{name}: {frets:?}");
         assert!(frets.contains(&12) && frets.is_sorted(), "{name}: {frets:?}");
-        println!("{name}: {frets:?}");
     }
 }
 

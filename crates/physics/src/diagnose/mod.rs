@@ -116,6 +116,8 @@ pub struct DiagnosedString {
     pub frets: Vec<usize>,
     /// Fretted errors of the string as found at these frets, cents.
     pub errors_cents: Vec<f64>,
+    /// Their standard deviations, cents.
+    pub errors_sd_cents: Vec<f64>,
     /// Reading less prediction, one a reading, cents.
     pub residuals_cents: Vec<f64>,
     /// Root mean square of the residuals, cents; 0 without readings.

@@ -88,6 +88,7 @@ impl Posterior {
             action_higher_mm: scaled(ACTION),
             tuning_cents: scaled(TUNING),
             errors_cents: errors.iter().take(frets.len()).copied().collect(),
+            errors_sd_cents: self.errors_sd_cents(unknowns, string),
             frets,
             residual_rms_cents: rms(residuals_cents.iter().copied()),
             residuals_cents,
@@ -105,6 +106,23 @@ impl Posterior {
         })
     }
 
+    /// Slopes of a string's fretted errors and the covariance of what they go with.
+    fn known(&self, unknowns: &Unknowns, string: usize) -> (DMatrix<f64>, DMatrix<f64>) {
+        let slopes = self.found.slopes[string].rows(0, unknowns.pressed[string].len()).into_owned();
+        let columns: Vec<usize> = unknowns.columns(string).collect();
+        let covariance = DMatrix::from_fn(columns.len(), columns.len(), |row, column| {
+            self.found.covariance[(columns[row], columns[column])]
+        });
+        (slopes, covariance)
+    }
+
+    fn errors_sd_cents(&self, unknowns: &Unknowns, string: usize) -> Vec<f64> {
+        let (slopes, covariance) = self.known(unknowns, string);
+        let spread = &slopes * covariance;
+        let variance = |row: usize| spread.row(row).dot(&slopes.row(row));
+        (0..slopes.nrows()).map(|row| variance(row).max(0.0).sqrt()).collect()
+    }
+
     fn moves(
         &self,
         unknowns: &Unknowns,
@@ -116,11 +134,7 @@ impl Posterior {
         }
         let trial = unknowns.trial(string, &self.found.at);
         let ready = FrettedString::new(trial.setup)?;
-        let slopes = self.found.slopes[string].rows(0, frets.len()).into_owned();
-        let columns: Vec<usize> = unknowns.columns(string).collect();
-        let covariance = DMatrix::from_fn(columns.len(), columns.len(), |row, column| {
-            self.found.covariance[(columns[row], columns[column])]
-        });
+        let (slopes, covariance) = self.known(unknowns, string);
         let known = (&slopes, &covariance);
         let alone = best_move(&ready, trial.contacts, frets, 1, known)?;
         let both = best_move(&ready, trial.contacts, frets, 2, known)?;

@@ -14,18 +14,30 @@ const WIDENED: [f64; 4] = [16.0, 6.0, 2.5, 1.0];
 /// Steps while the noise is widened, and at the last.
 const STEPS: [usize; 4] = [4, 4, 6, 60];
 /// Step at which the search has come to rest, prior standard deviations.
-const AT_REST: f64 = 1e-4;
+const AT_REST: f64 = 1e-3;
+/// How far from where they were taken slopes are still good for a step, prior standard deviations: the model is so
+/// nearly linear that they change by a few parts in a hundred over it.
+const SLOPES_GOOD: f64 = 0.2;
 /// Damping beyond which no step can improve any more.
 const MOST_DAMPING: f64 = 1e8;
 
 /// Unknowns found, with what the covariance needs.
 pub(super) struct Found {
     pub at: DVector<f64>,
-    /// Fretted errors and slopes of every string there.
+    /// Fretted errors of every string there.
     pub errors: Vec<DVector<f64>>,
+    /// Their slopes.
     pub slopes: Vec<DMatrix<f64>>,
     pub covariance: DMatrix<f64>,
+    /// Logarithm of the evidence, up to what is the same for all priors of the same strings.
+    pub evidence: f64,
     pub settled: bool,
+}
+
+/// Slopes of every string, and where they were taken.
+struct Slopes {
+    of: Vec<DMatrix<f64>>,
+    at: DVector<f64>,
 }
 
 /// A place with its model values and its cost, minus the logarithm of the posterior.
@@ -43,57 +55,69 @@ fn weight(residual: f64, noise: f64) -> f64 {
 impl Unknowns<'_> {
     /// The most probable unknowns, from `start`.
     pub(super) fn search(&self, start: DVector<f64>) -> Result<Found, PhysicsError> {
-        let mut at = start;
-        let mut settled = false;
-        for (widened, steps) in WIDENED.into_iter().zip(STEPS) {
-            (at, settled) = self.descend(at, widened, steps)?;
-        }
-        let errors = self.all_errors(&at)?;
-        let slopes = self.all_slopes(&at)?;
-        let covariance = self.covariance(&at, &errors, &slopes)?;
-        Ok(Found { at, errors, slopes, covariance, settled })
+        self.search_from(start, 0)
     }
 
+    /// As [`Self::search`], from a place that needs no more than a last look around.
+    pub(super) fn search_nearby(&self, start: DVector<f64>) -> Result<Found, PhysicsError> {
+        self.search_from(start, WIDENED.len() - 2)
+    }
+
+    fn search_from(&self, start: DVector<f64>, stage: usize) -> Result<Found, PhysicsError> {
+        let mut slopes = Slopes { of: self.all_slopes(&start)?, at: start.clone() };
+        let mut here = self.place(start, WIDENED[stage])?;
+        let mut settled = false;
+        for (widened, steps) in WIDENED.into_iter().zip(STEPS).skip(stage) {
+            here = self.place(here.at, widened)?;
+            (here, settled) = self.descend(here, &mut slopes, widened, steps)?;
+        }
+        let slopes = self.all_slopes(&here.at)?;
+        let (normal, _) = self.normal(&here, &slopes, 1.0, true);
+        let lost = PhysicsError::NotSettled { what: "covariance", iterations: 1, reached: f64::MAX };
+        let factor = cholesky(normal).ok_or(lost)?;
+        let half_log_determinant: f64 = factor.l_dirty().diagonal().iter().map(|value| value.ln()).sum();
+        let evidence = -here.cost - half_log_determinant;
+        let covariance = factor.inverse();
+        Ok(Found { at: here.at, errors: here.errors, slopes, covariance, evidence, settled })
+    }
+
+    /// Steps down until at rest; false where the steps do not suffice.
     fn descend(
         &self,
-        start: DVector<f64>,
+        start: Place,
+        slopes: &mut Slopes,
         widened: f64,
         steps: usize,
-    ) -> Result<(DVector<f64>, bool), PhysicsError> {
-        let mut here = self.place(start, widened)?;
+    ) -> Result<(Place, bool), PhysicsError> {
+        let mut here = start;
         let mut damping = 1e-3;
         for _ in 0..steps {
-            let slopes = self.all_slopes(&here.at)?;
-            let (mut normal, mut gradient) = self.normal(&here, &slopes, widened, false);
+            if (&here.at - &slopes.at).amax() > SLOPES_GOOD {
+                *slopes = Slopes { of: self.all_slopes(&here.at)?, at: here.at.clone() };
+            }
+            let (mut normal, mut gradient) = self.normal(&here, &slopes.of, widened, false);
             self.hold_at_limits(&here.at, &mut normal, &mut gradient);
-            let before = here.at.clone();
-            loop {
-                let Some(step) = damped_step(&normal, &gradient, damping) else {
-                    damping *= 10.0;
-                    if damping > MOST_DAMPING {
-                        return Ok((here.at, false));
-                    }
-                    continue;
-                };
-                let next = self.place(self.kept_legal(&here.at + step), widened);
-                match next {
-                    Ok(next) if next.cost <= here.cost => {
-                        here = next;
-                        damping = (damping * 0.2).max(1e-9);
-                        break;
-                    }
-                    _ => damping *= 6.0,
+            let moved = loop {
+                let next = damped_step(&normal, &gradient, damping)
+                    .and_then(|step| self.place(self.kept_legal(&here.at + step), widened).ok())
+                    .filter(|next| next.cost <= here.cost);
+                if let Some(next) = next {
+                    damping = (damping * 0.2).max(1e-9);
+                    let moved = (&next.at - &here.at).amax();
+                    here = next;
+                    break moved;
                 }
+                damping *= 6.0;
                 if damping > MOST_DAMPING {
                     // No step improves: the place is as good as rounding lets it be.
-                    return Ok((here.at, true));
+                    return Ok((here, true));
                 }
-            }
-            if (&here.at - before).amax() < AT_REST {
-                return Ok((here.at, true));
+            };
+            if moved < AT_REST {
+                return Ok((here, true));
             }
         }
-        Ok((here.at, false))
+        Ok((here, false))
     }
 
     fn kept_legal(&self, mut at: DVector<f64>) -> DVector<f64> {
@@ -115,16 +139,13 @@ impl Unknowns<'_> {
         }
     }
 
-    fn all_errors(&self, at: &DVector<f64>) -> Result<Vec<DVector<f64>>, PhysicsError> {
-        (0..self.strings.len()).map(|string| self.errors_cents(string, at)).collect()
-    }
-
     fn all_slopes(&self, at: &DVector<f64>) -> Result<Vec<DMatrix<f64>>, PhysicsError> {
         (0..self.strings.len()).map(|string| self.slopes(string, at)).collect()
     }
 
     fn place(&self, at: DVector<f64>, widened: f64) -> Result<Place, PhysicsError> {
-        let errors = self.all_errors(&at)?;
+        let errors: Vec<DVector<f64>> =
+            (0..self.strings.len()).map(|string| self.errors_cents(string, &at)).collect::<Result<_, _>>()?;
         let mut cost = 0.5 * at.norm_squared();
         for (string, errors) in errors.iter().enumerate() {
             let scale = FREEDOM * (widened * self.noise_cents[string]).powi(2);
@@ -208,17 +229,6 @@ impl Unknowns<'_> {
             }
         }
         Ok((slopes, inverse(normal)?))
-    }
-
-    fn covariance(
-        &self,
-        at: &DVector<f64>,
-        errors: &[DVector<f64>],
-        slopes: &[DMatrix<f64>],
-    ) -> Result<DMatrix<f64>, PhysicsError> {
-        let here = Place { at: at.clone(), errors: errors.to_vec(), cost: 0.0 };
-        let (normal, _) = self.normal(&here, slopes, 1.0, true);
-        inverse(normal)
     }
 }
 

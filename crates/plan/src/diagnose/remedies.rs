@@ -16,8 +16,11 @@ mod words;
 
 /// Errors within this are not worth a job, cents: less than most ears tell in a single note (common practice).
 const GOOD_CENTS: f64 = 2.0;
-/// A job must lower the root mean square of all strings by this to be named, cents.
+/// A job must lower the root mean square of at least one string by this to be named, cents.
 const LEAST_GAIN_CENTS: f64 = 0.25;
+/// Standard deviations by which an error must lie beyond that before it is believed: of fifty notes one or two look
+/// worse than they are by as much.
+const DOUBT: f64 = 1.5;
 /// An amount counts where it is this many standard deviations from nothing.
 const SURE: f64 = 2.0;
 
@@ -50,26 +53,40 @@ pub(super) fn remedies(
 ) -> Result<Vec<Remedy>, Vec<Fault>> {
     let bench = Bench::new(checked, cases, found);
     let before = rms(&bench.now.concat());
-    let is_good = bench.now.iter().flatten().all(|error| error.abs() <= GOOD_CENTS);
-    if is_good && !found.strings.iter().any(|string| string.is_suspect) {
-        return Ok(vec![nothing(&bench, before, "all within 2 cents")]);
-    }
+    let is_good = found.strings.iter().all(|string| {
+        let surely_off = |(error, sd): (&f64, &f64)| error.abs() - DOUBT * sd > GOOD_CENTS;
+        !std::iter::zip(&string.errors_cents, &string.errors_sd_cents).any(surely_off)
+    });
     let mut tried: Vec<(f64, Remedy)> = jobs(&bench)
         .map_err(not_found)?
         .into_iter()
+        .filter(|job| !is_good || matches!(job.kind, RemedyKind::ReplaceString | RemedyKind::FileNutSlots))
         .map(|job| {
             let after = rms(&job.errors_cents.concat());
             let worth = (before - after) / job.work;
             (if job.kind == RemedyKind::ReplaceString { f64::INFINITY } else { worth }, job.done(after))
         })
-        .filter(|(worth, remedy)| worth.is_infinite() || before - remedy.rms_after_cents >= LEAST_GAIN_CENTS)
+        .filter(|(worth, remedy)| {
+            worth.is_infinite() || gain_on_any_string(&bench, remedy) >= LEAST_GAIN_CENTS
+        })
         .collect();
     tried.sort_by(|a, b| b.0.total_cmp(&a.0));
     if tried.is_empty() {
-        let reason = "no single job would bring the errors down by more than a quarter of a cent";
+        let is_plainly_good = bench.now.iter().flatten().all(|error| error.abs() <= GOOD_CENTS);
+        let reason = match (is_plainly_good, is_good) {
+            (true, _) => "all within 2 cents",
+            (_, true) => "all within 2 cents as far as the readings can tell; read again what looks worse",
+            _ => "no single job would bring any string down by more than a quarter of a cent",
+        };
         return Ok(vec![nothing(&bench, before, reason)]);
     }
     Ok(tried.into_iter().map(|(_, remedy)| remedy).collect())
+}
+
+/// The most that a job lowers the root mean square of a string, cents.
+fn gain_on_any_string(bench: &Bench, remedy: &Remedy) -> f64 {
+    let gains = std::iter::zip(&bench.now, &remedy.errors_cents).map(|(now, then)| rms(now) - rms(then));
+    gains.fold(0.0, f64::max)
 }
 
 fn nothing(bench: &Bench, rms_after_cents: f64, reason: &str) -> Remedy {

@@ -1,7 +1,7 @@
 //! The jobs that may help an instrument.
 
 use crestline_physics::PhysicsError;
-use crestline_physics::diagnose::{DiagnosedString, Estimate};
+use crestline_physics::diagnose::{Cause, DiagnosedString, Estimate};
 
 use super::saddle::{nut_and_saddle, saddle};
 use super::words::{amounts_words, strings_words};
@@ -19,6 +19,9 @@ mod work {
 
 /// Slots are filed, and actions set, no finer than this, mm.
 const HEIGHT_STEP_MM: f64 = 0.03;
+/// A high slot is worth filing where it makes this much of a string's errors, root mean square over its frets, cents:
+/// some one and a half cents at fret 1.
+const SLOT_HEARD_CENTS: f64 = 0.6;
 /// Relief is set no finer than this, mm.
 const RELIEF_STEP_MM: f64 = 0.03;
 
@@ -58,6 +61,11 @@ fn with_changed(
     Ok(errors)
 }
 
+/// What a cause explains on a string, cents.
+fn share_cents(string: &DiagnosedString, cause: Cause) -> f64 {
+    string.causes.iter().find(|share| share.cause == cause).map_or(0.0, |share| share.cents)
+}
+
 /// Whether an amount is beyond its doubt and beyond what can be set.
 fn counts(amount: Estimate, step_mm: f64) -> bool {
     amount.value.abs() > SURE * amount.sd && amount.value.abs() > step_mm
@@ -91,7 +99,9 @@ fn replace_strings(bench: &Bench) -> Result<Option<Job>, PhysicsError> {
 fn file_slots(bench: &Bench) -> Result<Option<Job>, PhysicsError> {
     let is_high = |string: &DiagnosedString| {
         let slot = string.slot_higher_mm;
-        !string.is_suspect && slot.value > 0.0 && (string.is_slot_high || counts(slot, HEIGHT_STEP_MM))
+        let is_heard = share_cents(string, Cause::NutSlot) >= SLOT_HEARD_CENTS;
+        let is_sure = string.is_slot_high || counts(slot, HEIGHT_STEP_MM);
+        !string.is_suspect && slot.value > 0.0 && is_heard && is_sure
     };
     let strings = strings_where(bench, is_high);
     if strings.is_empty() {

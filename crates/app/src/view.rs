@@ -121,7 +121,7 @@ impl ThemeChoice {
 /// What the table of the fretted notes shows.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum NoteFigure {
-    /// Errors as built.
+    /// Errors with the built setbacks.
     Built,
     /// Errors with the ideal setbacks.
     Ideal,
@@ -141,7 +141,7 @@ impl NoteFigure {
     #[must_use]
     pub fn name(self) -> &'static str {
         match self {
-            Self::Built => "As built",
+            Self::Built => "Built",
             Self::Ideal => "Ideal",
             Self::None => "No setback",
             Self::AsItIs => "As it is now",

@@ -24,7 +24,7 @@ pub struct ErrorChoice {
     pub built: bool,
     /// Of the existing instrument.
     pub as_built: bool,
-    /// The other strings, as built, beside the chosen one.
+    /// The other strings, with the built setbacks, beside the chosen one.
     pub others: bool,
     /// The part of the plot that the user chose to see.
     pub looking: Option<PlotBounds>,
@@ -53,7 +53,7 @@ pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize,
         ui.label(RichText::new(format!("String {}:", chosen + 1)).color(palette.string(chosen)).strong());
         ui.add(Checkbox::new(&mut choice.none, "no setback ····"));
         ui.add(Checkbox::new(&mut choice.ideal, "ideal ╌╌"));
-        ui.add(Checkbox::new(&mut choice.built, "as built ──"));
+        ui.add(Checkbox::new(&mut choice.built, "built ──"));
         if outcome.plan.as_built.is_some() {
             ui.add(Checkbox::new(&mut choice.as_built, "now ┄┄"));
         }
@@ -192,5 +192,5 @@ fn in_words(strings: &[StringReport], chosen: usize) -> String {
         )
     };
     let frets: String = string.frets.iter().map(fret).collect();
-    format!("Errors of the fretted notes of string {} in cents, as built.{frets}", string.string)
+    format!("Errors of the fretted notes of string {} in cents with the built setbacks.{frets}", string.string)
 }

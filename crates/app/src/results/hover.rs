@@ -29,7 +29,7 @@ pub fn errors(
     let note = string.and_then(|s| s.frets.get(fret(&response, transform, s.frets.len())? - 1));
     let (Some(string), Some(note)) = (string, note) else { return response };
     let mut lines =
-        vec![("no setback", note.none_cents), ("ideal", note.ideal_cents), ("as built", note.built_cents)];
+        vec![("no setback", note.none_cents), ("ideal", note.ideal_cents), ("built", note.built_cents)];
     lines.extend(note.as_built_cents.map(|now| ("as it is now", now)));
     tip(response, palette, &format!("String {}, fret {}, cents", string.string, note.fret), &lines)
 }
@@ -79,7 +79,7 @@ pub fn crest(
     let built = &string.built;
     response.on_hover_ui_at_pointer(|ui| {
         ui.label(RichText::new(format!("String {}, mm", string.string)).strong());
-        pair(ui, palette, "setback as built", &mm(built.saddle_setback_mm));
+        pair(ui, palette, "built setback", &mm(built.saddle_setback_mm));
         pair(ui, palette, "ideal setback", &mm(string.ideal.saddle_setback_mm));
         pair(ui, palette, "crest from the datum", &mm(built.crest_mm.x - layout.datum_x_mm));
         pair(ui, palette, "crest across", &mm(built.crest_mm.y));

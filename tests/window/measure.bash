@@ -7,12 +7,14 @@ set -euo pipefail
 program=$1
 plan=${2:-}
 start_display
+told=$(mktemp)
 for run in 1 2 3 4 5; do
-    CRESTLINE_TIMING=1 "$program" ${plan:+"$plan"} &
+    CRESTLINE_TIMING=1 "$program" ${plan:+"$plan"} 2>"$told" &
     process=$!
-    sleep 1.5
+    eventually grep "first frame" "$told" || echo "no frame in ten seconds" >&2
     stop_window
 done
+rm "$told"
 start_window "$program" ${plan:+"$plan"}
 come_to_rest
 look

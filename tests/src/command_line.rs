@@ -1,6 +1,7 @@
 //! The command line in one process: exit statuses, streams, messages and files.
 
 mod bench_files;
+mod diagnosis;
 mod example_files;
 mod faults;
 mod report;

@@ -7,6 +7,8 @@
 #[cfg(test)]
 mod command_line;
 #[cfg(test)]
+mod instruments;
+#[cfg(test)]
 mod places;
 #[cfg(test)]
 mod program;

@@ -36,12 +36,12 @@ pub(crate) enum Command {
     Example(Example),
     /// Set every way to make saddle and nut side by side.
     Compare(Compare),
+    /// Find from tuner readings what is wrong with an instrument, and what cures it.
+    Diagnose(Diagnose),
     /// Print where everything stands from the datum, and how each blank's top is shaped.
     Bench(Bench),
     /// Print setbacks rounded to a step, what that costs, and what a slip costs.
     Workshop(Rounding),
-    /// Find from tuner readings what is wrong with an instrument, and what cures it.
-    Diagnose(Diagnose),
     /// Write the dimensioned drawing at 1:1.
     Sheet(Sheet),
     /// Write the schedule for the jig as CSV.
@@ -89,6 +89,19 @@ pub(crate) struct Compare {
     pub json: bool,
 }
 
+/// `diagnose`
+#[derive(Debug, Args)]
+pub(crate) struct Diagnose {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// Take the readings from this CSV file (string, fret, kind, cents) in place of the plan's own.
+    #[arg(long, value_name = "FILE")]
+    pub readings: Option<PathBuf>,
+    /// Print the diagnosis as JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
 /// `bench`
 #[derive(Debug, Args)]
 pub(crate) struct Bench {
@@ -111,16 +124,6 @@ pub(crate) struct Rounding {
     #[arg(long, value_parser = step, default_value = "0.1mm")]
     pub step: Step,
     /// Print the figures as JSON.
-    #[arg(long)]
-    pub json: bool,
-}
-
-/// `diagnose`
-#[derive(Debug, Args)]
-pub(crate) struct Diagnose {
-    #[command(flatten)]
-    pub plan: PlanArgument,
-    /// Print the diagnosis as JSON.
     #[arg(long)]
     pub json: bool,
 }

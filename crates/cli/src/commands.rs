@@ -5,14 +5,14 @@ use std::path::{Path, PathBuf};
 
 use clap::Parser;
 use clap::error::ErrorKind;
-use crestline_plan::{Checked, EXAMPLES, Solution};
+use crestline_plan::{Checked, EXAMPLES, Priors, Solution};
 
-use crate::arguments::{Arguments, Bench, Command, Compare, Example, Rounding, Solve, is_standard};
+use crate::arguments::{Arguments, Bench, Command, Compare, Diagnose, Example, Rounding, Solve, is_standard};
 use crate::failure::{STATUS_DONE, STATUS_REFUSED};
 use crate::text::safe;
 use crate::{
-    Failure, Streams, bench_files, bench_table, diagnosis, files, fret_errors, print, solve_table, styles,
-    workshop_table,
+    Failure, Streams, bench_files, bench_table, diagnosis_table, files, fret_errors, print, solve_table,
+    styles, workshop_table,
 };
 
 /// What the arguments ask for.
@@ -89,9 +89,9 @@ fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failur
         Command::Check(options) => check(&options.plan, streams),
         Command::Example(options) => example(options, streams),
         Command::Compare(options) => compare(options, streams),
+        Command::Diagnose(options) => diagnose(options, streams),
         Command::Bench(options) => bench(options, streams),
         Command::Workshop(options) => workshop(options, streams),
-        Command::Diagnose(options) => diagnosis::diagnose(options, streams),
         Command::Sheet(options) => bench_files::sheet(options, streams),
         Command::Schedule(options) => bench_files::schedule(options, streams),
     }
@@ -147,6 +147,36 @@ fn compare(options: &Compare, streams: &mut Streams<'_>) -> Result<(), Failure> 
     print::result(streams, styles::text(checked.plan(), &comparison).as_bytes())
 }
 
+fn diagnose(options: &Diagnose, streams: &mut Streams<'_>) -> Result<(), Failure> {
+    let path = &options.plan.plan;
+    let checked = with_readings(checked(path, streams)?, options, streams)?;
+    let diagnosis =
+        crestline_plan::diagnose(&checked, &Priors::default()).map_err(|faults| refused(path, faults))?;
+    if options.json {
+        print::notices(streams, &diagnosis.notices);
+        return print::json(streams, &diagnosis);
+    }
+    print::result(streams, diagnosis_table::text(checked.plan(), &diagnosis).as_bytes())
+}
+
+/// The plan with the readings of another file in place of its own, where one is named.
+fn with_readings(
+    checked: Checked,
+    options: &Diagnose,
+    streams: &mut Streams<'_>,
+) -> Result<Checked, Failure> {
+    let Some(path) = &options.readings else { return Ok(checked) };
+    if is_standard(path) && is_standard(&options.plan.plan) {
+        return Err(Failure::Argument(
+            "--readings: plan and readings cannot both be on standard input".to_owned(),
+        ));
+    }
+    let mut plan = checked.plan().clone();
+    plan.readings = crestline_plan::readings_from_csv(&text_of(path, streams)?)
+        .map_err(|faults| refused(path, faults))?;
+    crestline_plan::check(&plan).map_err(|faults| refused(path, faults))
+}
+
 fn bench(options: &Bench, streams: &mut Streams<'_>) -> Result<(), Failure> {
     let (checked, solution) = solved(&options.plan.plan, streams)?;
     let plan = checked.plan();
@@ -179,17 +209,21 @@ pub(crate) fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked,
 }
 
 /// Reads and checks a plan.
-pub(crate) fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
-    let text = if is_standard(path) {
-        files::plan_text(&shown_name(path), streams.input)
-    } else {
-        files::read_plan_text(path)
-    };
-    let plan = crestline_plan::read(&text?).map_err(|faults| refused(path, faults))?;
+fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
+    let plan = crestline_plan::read(&text_of(path, streams)?).map_err(|faults| refused(path, faults))?;
     crestline_plan::check(&plan).map_err(|faults| refused(path, faults))
 }
 
-pub(crate) fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
+/// The text of a file, or of standard input for `-`.
+fn text_of(path: &Path, streams: &mut Streams<'_>) -> Result<String, Failure> {
+    if is_standard(path) {
+        files::plan_text(&shown_name(path), streams.input)
+    } else {
+        files::read_plan_text(path)
+    }
+}
+
+fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
     Failure::Faults { name: shown_name(path), faults }
 }
 

@@ -88,7 +88,7 @@ fn fault_list(name: &str, faults: &[Fault]) -> String {
         1 => "1 fault".to_owned(),
         more => format!("{more} faults"),
     };
-    let mut lines = format!("{}: the plan is refused, {count}", safe(name));
+    let mut lines = format!("{}: refused, {count}", safe(name));
     for fault in faults {
         lines.push_str("\n  ");
         lines.push_str(&fault_line(fault));

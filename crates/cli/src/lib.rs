@@ -19,7 +19,7 @@ mod arguments;
 mod bench_files;
 mod bench_table;
 mod commands;
-mod diagnosis;
+mod diagnosis_table;
 mod failure;
 pub mod files;
 mod fret_errors;

@@ -20,9 +20,18 @@ pub(crate) fn cents(value: f64) -> String {
     fixed(value, 1)
 }
 
+/// A move in millimetres with its sign, to 0.01 mm.
+pub(crate) fn signed_length(mm: f64) -> String {
+    with_plus(length(mm))
+}
+
 /// An error in cents with its sign, to 0.1 cent: positive is sharp.
 pub(crate) fn signed_cents(value: f64) -> String {
-    let shown = cents(value);
+    with_plus(cents(value))
+}
+
+/// The number with a plus where it is positive after rounding.
+fn with_plus(shown: String) -> String {
     let is_zero = shown.bytes().all(|b| matches!(b, b'0' | b'.'));
     if shown.starts_with('-') || is_zero { shown } else { format!("+{shown}") }
 }

@@ -30,7 +30,9 @@ fn help_and_version_are_results() {
         assert!(!ran.out.is_empty());
     }
     let help = crestline(&["--help"], "").out;
-    for command in ["solve", "check", "example", "compare", "bench", "workshop", "sheet", "schedule"] {
+    for command in
+        ["solve", "check", "example", "compare", "diagnose", "bench", "workshop", "sheet", "schedule"]
+    {
         assert!(help.contains(command), "the help names {command}");
     }
 }

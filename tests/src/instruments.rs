@@ -1,0 +1,196 @@
+//! Diagnoses of synthetic instruments, whose true faults are known, against what was hidden in them.
+//!
+//! The instruments come from an independent script, see `tests/reference/README.md`. Shares are printed by
+//! `cargo test -p crestline-tests instruments:: -- --show-output`.
+
+use std::sync::OnceLock;
+
+use crestline_plan::{Diagnosis, Priors, RemedyKind, StringDiagnosis, check, diagnose, read};
+use serde_json::Value;
+
+use crate::places::{files_under, text_of, top};
+
+/// The fewest instruments that must be there, so that an empty folder does not pass.
+const FEWEST: usize = 300;
+/// Two standard deviations hold 95 % of a Gaussian; stated ones are good where they hold 90 to 99 %.
+const WITHIN_TWO_SD: std::ops::RangeInclusive<f64> = 0.90..=0.99;
+/// The share of real faults that must be found: a repairer can do with one in ten that asks for a second look.
+const FOUND: f64 = 0.90;
+/// The share of sound instruments or strings that may be taken for faulty.
+const FALSE_ALARMS: f64 = 0.05;
+
+/// One instrument: what was hidden, and what was found.
+struct Case {
+    number: usize,
+    truth: Value,
+    found: Diagnosis,
+}
+
+impl Case {
+    fn kind(&self) -> &str {
+        self.truth["kind"].as_str().expect("a kind")
+    }
+
+    /// Strings with what is true of them.
+    fn strings(&self) -> impl Iterator<Item = (&StringDiagnosis, &Value)> {
+        let truths = self.truth["strings"].as_array().expect("strings");
+        self.found.strings.iter().map(move |string| (string, &truths[string.string as usize - 1]))
+    }
+
+    /// The number of the dead string, 0 for none.
+    fn dead_string(&self) -> u64 {
+        self.truth["dead_string"]["string"].as_u64().unwrap_or(0)
+    }
+}
+
+fn cases() -> &'static [Case] {
+    static CASES: OnceLock<Vec<Case>> = OnceLock::new();
+    CASES.get_or_init(|| {
+        let mut cases = Vec::new();
+        for path in files_under(&top().join("tests/reference/instruments"), "json") {
+            let records: Vec<Value> = serde_json::from_str(&text_of(&path)).expect("a list of instruments");
+            for record in records {
+                let number = cases.len() + 1;
+                let found = read(&record["plan"].to_string())
+                    .and_then(|plan| check(&plan))
+                    .and_then(|checked| diagnose(&checked, &Priors::default()))
+                    .unwrap_or_else(|faults| panic!("instrument {number}: {faults:?}"));
+                cases.push(Case { number, truth: record["truth"].clone(), found });
+            }
+        }
+        assert!(cases.len() >= FEWEST, "only {} instruments are there", cases.len());
+        cases
+    })
+}
+
+/// A share of what was looked at, with the places where it did not hold.
+#[derive(Default)]
+struct Share {
+    held: usize,
+    missed: Vec<String>,
+}
+
+impl Share {
+    fn add(&mut self, holds: bool, place: String) {
+        if holds {
+            self.held += 1;
+        } else {
+            self.missed.push(place);
+        }
+    }
+
+    fn value(&self) -> f64 {
+        self.held as f64 / (self.held + self.missed.len()) as f64
+    }
+
+    fn print(&self, what: &str) {
+        let all = self.held + self.missed.len();
+        println!(
+            "{what}: {} of {all}, {:.1} %; not {}",
+            self.held,
+            100.0 * self.value(),
+            self.missed.join(", ")
+        );
+    }
+}
+
+#[test]
+fn the_true_move_lies_within_two_stated_standard_deviations() {
+    let (mut alone, mut saddle, mut nut) = (Share::default(), Share::default(), Share::default());
+    for case in cases() {
+        for (string, truth) in case.strings() {
+            if u64::from(string.string) == case.dead_string() {
+                continue;
+            }
+            let place = format!("{}/{}", case.number, string.string);
+            let near = |found: f64, truth: &Value, sd: f64| {
+                (found - truth.as_f64().expect("a move")).abs() <= 2.0 * sd
+            };
+            let (one, both) = (&string.saddle_only, &string.saddle_and_nut);
+            let (true_one, true_both) = (&truth["saddle_only"], &truth["saddle_and_nut"]);
+            alone.add(near(one.saddle_move_mm, &true_one["saddle_move_mm"], one.sd_mm), place.clone());
+            saddle.add(
+                near(both.saddle_move_mm, &true_both["saddle_move_mm"], both.saddle_sd_mm),
+                place.clone(),
+            );
+            nut.add(near(both.nut_move_mm, &true_both["nut_move_mm"], both.nut_sd_mm), place);
+        }
+    }
+    for (share, what) in [(alone, "saddle alone"), (saddle, "saddle with nut"), (nut, "nut")] {
+        share.print(&format!("{what}, within two standard deviations"));
+        assert!(WITHIN_TWO_SD.contains(&share.value()), "{what}: {}", share.value());
+    }
+}
+
+#[test]
+fn a_sound_instrument_is_left_alone() {
+    let mut left_alone = Share::default();
+    for case in cases().iter().filter(|case| case.kind() == "sound") {
+        let kind = case.found.remedies.first().map(|remedy| remedy.kind);
+        left_alone.add(kind == Some(RemedyKind::Nothing), case.number.to_string());
+    }
+    left_alone.print("sound instruments left alone");
+    assert!(left_alone.value() > 1.0 - FALSE_ALARMS, "{}", left_alone.value());
+}
+
+#[test]
+fn the_right_fret_is_found() {
+    let (mut found, mut clean) = (Share::default(), Share::default());
+    for case in cases() {
+        let bad = case.truth["bad_fret"]["fret"].as_u64();
+        let named: Vec<_> = case.found.frets.iter().map(|fret| u64::from(fret.fret)).collect();
+        match bad {
+            Some(bad) if case.kind() == "fret" => found.add(named.contains(&bad), case.number.to_string()),
+            None if case.kind() != "mixture" => clean.add(named.is_empty(), case.number.to_string()),
+            _ => {}
+        }
+    }
+    found.print("misplaced frets found");
+    clean.print("straight frets left alone");
+    assert!(found.value() >= FOUND, "{}", found.value());
+    assert!(clean.value() > 1.0 - FALSE_ALARMS, "{}", clean.value());
+}
+
+#[test]
+fn the_right_dead_string_is_found() {
+    let (mut found, mut sound) = (Share::default(), Share::default());
+    for case in cases() {
+        for (string, _) in case.strings() {
+            let place = format!("{}/{}", case.number, string.string);
+            if u64::from(string.string) == case.dead_string() {
+                found.add(string.suspect_string, place);
+            } else {
+                sound.add(!string.suspect_string, place);
+            }
+        }
+    }
+    found.print("dead strings found");
+    sound.print("good strings left alone");
+    assert!(found.value() >= FOUND, "{}", found.value());
+    assert!(sound.value() > 1.0 - FALSE_ALARMS, "{}", sound.value());
+}
+
+#[test]
+fn high_nut_slots_are_found() {
+    let (mut found, mut clean) = (Share::default(), Share::default());
+    for case in cases() {
+        let high: Vec<_> = case.truth["high_slots"].as_array().expect("a list").iter().collect();
+        let filed = |number: u64| {
+            let slots = case.found.remedies.iter().filter(|remedy| remedy.kind == RemedyKind::FileNutSlots);
+            slots.flat_map(|remedy| &remedy.strings).any(|&string| u64::from(string) == number)
+        };
+        if case.kind() == "nut_slots" {
+            for slot in &high {
+                let number = slot["string"].as_u64().expect("a string's number");
+                found.add(filed(number), format!("{}/{number}", case.number));
+            }
+        } else if high.is_empty() {
+            let none = !case.found.remedies.iter().any(|remedy| remedy.kind == RemedyKind::FileNutSlots);
+            clean.add(none, case.number.to_string());
+        }
+    }
+    found.print("high slots found");
+    clean.print("instruments without high slots left alone");
+    assert!(found.value() >= FOUND, "{}", found.value());
+    assert!(clean.value() > 1.0 - FALSE_ALARMS, "{}", clean.value());
+}

@@ -96,3 +96,26 @@ fn an_empty_drawing_is_still_a_file() {
         assert!(!write(&empty).is_empty());
     }
 }
+
+proptest::proptest! {
+    /// Any text at all leaves every file readable.
+    #[test]
+    fn no_text_spoils_a_file(content in proptest::collection::vec(proptest::char::any(), 0..80)) {
+        use crestline_drawing::{Colour, Dimension, Drawing, Measure, Pen, Shape, Sheet, Text, Width, pt};
+        let content: String = content.into_iter().collect();
+        let mut drawing = Drawing::new(content.clone());
+        let layer = drawing.add_layer("TEXT", Colour::Black);
+        let mut sheet = Sheet::new(content.clone(), 100.0, 100.0);
+        let pen = Pen::solid(Width::W025);
+        sheet.add(layer, pen, Shape::Text(Text::new(pt(1.0, 1.0), 2.5, content.clone())));
+        let measure = Measure::Aligned { from: pt(0.0, 0.0), to: pt(50.0, 0.0), offset_mm: 5.0 };
+        sheet.add(layer, pen, Shape::Dimension(Dimension::new(measure, content)));
+        drawing.sheets.push(sheet);
+        usvg::Tree::from_data(&svg(&drawing), &usvg::Options::default()).expect("well-formed SVG");
+        let text = String::from_utf8(dxf(&drawing)).unwrap();
+        proptest::prop_assert!(text.is_ascii());
+        proptest::prop_assert_eq!(text.lines().count() % 2, 0);
+        proptest::prop_assert!(text.lines().step_by(2).all(|code| code.trim().parse::<u32>().is_ok()));
+        proptest::prop_assert!(pdf(&drawing).ends_with(b"%%EOF"));
+    }
+}

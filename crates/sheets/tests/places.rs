@@ -152,6 +152,40 @@ fn inches_and_papers_come_from_the_plan() {
     assert_eq!(SheetOptions::for_plan(&plan).units, crestline_sheets::LengthUnits::InchDecimal);
 }
 
+#[test]
+fn a_view_over_several_sheets_loses_no_figure_and_no_crest() {
+    let case = cases::widest();
+    for options in all_options(&case.plan) {
+        let only = Contents {
+            plan_view: true,
+            nut_view: false,
+            profile: false,
+            tables: false,
+            template: false,
+            cautions: false,
+        };
+        let whole = SheetOptions { contents: only, ..options };
+        let drawing = sheets(&case.plan, &case.solution, &whole);
+        let words: Vec<String> = drawing
+            .sheets
+            .iter()
+            .flat_map(crestline_drawing::Sheet::primitives)
+            .filter_map(|p| {
+                if let crestline_drawing::Mark::Text(run) = p.mark { Some(run.content) } else { None }
+            })
+            .collect();
+        for string in &case.solution.report.strings {
+            let figure = whole.units.text(string.built.saddle_setback_mm);
+            let name = format!("{}  {}", string.string, string.name);
+            let (has_figure, has_name) = (words.contains(&figure), words.contains(&name));
+            assert!(has_figure && has_name, "{:?} {:?}: {figure} {name}", whole.paper, whole.units);
+        }
+        let parts = drawing.sheets.iter().filter(|sheet| sheet.name.contains("part")).count();
+        assert!(parts > 1, "{:?}: {parts} parts", whole.paper);
+        assert!(on_layer(&drawing, "CREST").len() >= case.solution.report.strings.len());
+    }
+}
+
 /// 254 dots an inch are ten a millimetre.
 const DOTS_PER_MM: f32 = 10.0;
 /// A crest's arms are 0.25 mm wide: their middle is known to half a dot, and pixels are counted whole.

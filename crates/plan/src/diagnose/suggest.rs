@@ -6,13 +6,13 @@ use super::{cases::cases, not_found};
 use crate::{Checked, Fault};
 
 /// Frets that are easy to read cleanly on most instruments, those of the inlays first of all.
-const CANDIDATES: [usize; 12] = [12, 1, 5, 7, 3, 2, 9, 14, 10, 15, 17, 19];
+const CANDIDATES: [usize; 10] = [12, 1, 5, 7, 3, 2, 9, 14, 10, 15];
 /// Frets that the moves are to make right.
 const RIGHT: [usize; 7] = [1, 2, 3, 5, 7, 9, 12];
 /// One more fret must make the moves surer by this share to be worth its reading.
 const WORTH_READING: f64 = 0.08;
-/// Fewest and most frets suggested.
-const COUNT: [usize; 2] = [3, 8];
+/// Fewest and most frets suggested; from fewer a string that nothing explains cannot be told.
+const COUNT: [usize; 2] = [5, 8];
 
 /// The frets to read on every string, besides the open string: chosen one after the other so that crest and nut edge
 /// get as sure as they can, until one more makes little difference.

@@ -48,23 +48,32 @@ pub(super) fn nut_and_saddle(bench: &Bench) -> Result<Option<Job>, PhysicsError>
         _ => (0.0, 0.0),
     });
     let (moves_mm, nuts_mm): (Vec<f64>, Vec<f64>) = both.unzip();
-    let strings = moved(&nuts_mm);
-    if strings.is_empty() || bench.checked.plan().instrument.zero_fret {
+    let edges = moved(&nuts_mm);
+    if edges.is_empty() || bench.checked.plan().instrument.zero_fret {
         return Ok(None);
     }
     let errors_cents = moved_errors(bench, &moves_mm, &nuts_mm)?;
     let (_, work, fit) = way(bench, &moves_mm);
-    let amounts = |all: &[f64]| strings.iter().map(|&string| all[string as usize - 1]).collect::<Vec<_>>();
-    let nut_amounts = amounts(&nuts_mm);
+    let crests = moved(&moves_mm);
+    let strings: Vec<u32> = (1..=moves_mm.len() as u32)
+        .filter(|string| edges.contains(string) || crests.contains(string))
+        .collect();
+    let amounts =
+        |of: &[u32], all: &[f64]| of.iter().map(|&string| all[string as usize - 1]).collect::<Vec<_>>();
+    let nut_amounts = amounts(&edges, &nuts_mm);
     let (kind, verb) = if nut_amounts.iter().all(|&mm| mm > 0.0) {
         (RemedyKind::ShortenNutEnd, "Shorten the nut end")
     } else {
         (RemedyKind::MoveNutEdge, "Move the nut edges")
     };
     let text = format!(
-        "{verb}, edges toward the bridge (+) by: {}; and crests away from the nut (+) by: {}. {fit}",
-        amounts_words(&strings, &nut_amounts, true),
-        amounts_words(&strings, &amounts(&moves_mm), true),
+        "{verb}, edges toward the bridge (+) by: {}; crests away from the nut (+) by: {}. {fit}",
+        amounts_words(&edges, &nut_amounts, true),
+        if crests.is_empty() {
+            "nothing".to_owned()
+        } else {
+            amounts_words(&crests, &amounts(&crests, &moves_mm), true)
+        },
     );
     Ok(Some(Job {
         kind,

@@ -39,8 +39,9 @@ const SLOT_ODDS: f64 = 0.5;
 const SLOT_TRIED_MM: f64 = 0.4;
 /// How much wider the prior of a fret or a slot gets that was set free.
 const FREED: f64 = 8.0;
-/// A slot set free is high where it is this many standard deviations above the expected height.
-const SLOT_IS_HIGH: f64 = 1.6;
+/// A slot set free is high where it is this many standard deviations above the expected height: that some slot is
+/// high is settled by then, and this tells which.
+const SLOT_IS_HIGH: f64 = 1.2;
 /// Fewest strings that must have been read at a fret before it is told from a slip on one of them.
 const FEWEST_STRINGS_AT_FRET: usize = 2;
 /// Most frets set free.

@@ -192,5 +192,8 @@ fn in_words(strings: &[StringReport], chosen: usize) -> String {
         )
     };
     let frets: String = string.frets.iter().map(fret).collect();
-    format!("Errors of the fretted notes of string {} in cents with the built setbacks.{frets}", string.string)
+    format!(
+        "Errors of the fretted notes of string {} in cents with the built setbacks.{frets}",
+        string.string
+    )
 }

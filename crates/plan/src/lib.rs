@@ -1,6 +1,6 @@
 //! The plan: what a maker enters, what is wrong with it, and what comes of it.
 //!
-//! [`read`] turns a file's text into a [`Plan`], or lists every fault of it; [`write`] turns a plan into a file's
+//! [`read`] turns a file's text into a [`Plan`], or lists every fault of it; [`write()`] turns a plan into a file's
 //! text; [`check`] turns a plan, which may be wrong while someone edits it, into a [`Checked`] one or lists every
 //! fault; [`solve`] turns a checked plan into a [`Solution`]. [`diagnose`] goes the other
 //! way, from tuner readings to what is wrong with an instrument. Nothing here reads a file or a clock, or draws.

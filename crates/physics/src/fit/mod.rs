@@ -1,7 +1,7 @@
 //! Setbacks: where crests and nut edges must stand so that the errors of the fretted notes are small.
 //!
-//! [`fit_setbacks`] finds, for every string, the ideal contacts (each string by itself, with the nut as it will be
-//! made) and the built ones (as the saddle's style allows). Least squares is a constrained Gauss–Newton search, the
+//! [`ideal_setbacks`] finds, for every string, the ideal contacts (each string by itself, with the nut as it will be
+//! made), [`built_setbacks`] the built ones (as the saddle's style allows). Least squares is a constrained Gauss–Newton search, the
 //! smallest largest error a sequence of linear programmes; where several places share the smallest largest error,
 //! the one with the least squares is taken. The saddle's optimum is searched within the travel limits.
 

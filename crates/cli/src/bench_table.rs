@@ -34,8 +34,8 @@ fn string_columns() -> Vec<Column> {
         Column::numbers("Crest", "y"),
         Column::numbers("Crest", "z"),
         Column::numbers("Drop", "to next"),
-        Column::numbers("Break from", "front"),
-        Column::numbers("of the top", "%"),
+        Column::numbers("Break", "from front"),
+        Column::numbers("Break", "% of top"),
         Column::numbers("Nut edge", "x"),
         Column::numbers("Nut edge", "y"),
     ]

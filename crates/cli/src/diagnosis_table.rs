@@ -1,6 +1,6 @@
 //! A diagnosis for people: what to do first, then what each string's readings come from.
 
-use crestline_plan::{Cause, Diagnosis, FretDiagnosis, Plan, Remedy, StringDiagnosis};
+use crestline_plan::{Cause, Diagnosis, FretDiagnosis, Plan, StringDiagnosis};
 
 use crate::numbers::{cents, length, signed_length};
 use crate::print::notice_line;
@@ -25,7 +25,7 @@ pub(crate) fn text(plan: &Plan, diagnosis: &Diagnosis) -> String {
     );
     text.push_str("\nWhat helps, most for its work first:\n");
     for (number, remedy) in diagnosis.remedies.iter().enumerate() {
-        push_paragraph(&mut text, &remedy_line(number + 1, remedy));
+        push_paragraph(&mut text, &format!("{}. {}", number + 1, safe(&remedy.text)));
     }
     text.push('\n');
     let rows: Vec<_> = diagnosis.strings.iter().map(|string| cure_row(plan, string)).collect();
@@ -43,10 +43,6 @@ pub(crate) fn text(plan: &Plan, diagnosis: &Diagnosis) -> String {
     text.push('\n');
     push_paragraph(&mut text, CAUTION);
     text
-}
-
-fn remedy_line(number: usize, remedy: &Remedy) -> String {
-    format!("{number}. {} (then {} cents)", safe(&remedy.text), cents(remedy.rms_after_cents))
 }
 
 fn cure_columns() -> Vec<Column> {

@@ -1,5 +1,6 @@
 //! The command line in one process: exit statuses, streams, messages and files.
 
+mod batch;
 mod bench_files;
 mod diagnosis;
 mod example_files;

@@ -59,14 +59,25 @@ pub(crate) struct PlanArgument {
 /// `solve`
 #[derive(Debug, Args)]
 pub(crate) struct Solve {
-    #[command(flatten)]
-    pub plan: PlanArgument,
-    /// Print the whole report as JSON.
+    /// Plan files, or - for standard input. Several are solved in parallel, and a faulty one does not stop the rest.
+    #[arg(value_name = "PLAN", required = true)]
+    pub plans: Vec<PathBuf>,
+    /// Print the whole report as JSON; of several plans, one line each.
     #[arg(long)]
     pub json: bool,
-    /// Print the error of every fretted note too.
+    /// Print one line of JSON a plan, even of one plan.
     #[arg(long, conflicts_with = "json")]
+    pub lines: bool,
+    /// Print the error of every fretted note too.
+    #[arg(long, conflicts_with_all = ["json", "lines"])]
     pub frets: bool,
+}
+
+impl Solve {
+    /// Whether results are for programs.
+    pub fn as_json(&self) -> bool {
+        self.json || self.lines
+    }
 }
 
 /// `example`

@@ -11,8 +11,8 @@ use crate::arguments::{Arguments, Bench, Command, Compare, Diagnose, Example, Ro
 use crate::failure::{STATUS_DONE, STATUS_REFUSED};
 use crate::text::safe;
 use crate::{
-    Failure, Streams, bench_files, bench_table, diagnosis_table, files, fret_errors, print, solve_table,
-    styles, workshop_table,
+    Failure, Streams, batch, bench_files, bench_table, diagnosis_table, files, print, solve_table, styles,
+    workshop_table,
 };
 
 /// What the arguments ask for.
@@ -98,16 +98,16 @@ fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failur
 }
 
 fn solve(options: &Solve, streams: &mut Streams<'_>) -> Result<(), Failure> {
-    let (checked, solution) = solved(&options.plan.plan, streams)?;
+    let [plan] = options.plans.as_slice() else { return batch::solve(options, streams) };
+    if options.lines {
+        return batch::solve(options, streams);
+    }
+    let (checked, solution) = solved(plan, streams)?;
     if options.json {
         print::notices(streams, &solution.report.notices);
         return print::json(streams, &solution.report);
     }
-    let mut text = solve_table::text(checked.plan(), &solution);
-    if options.frets {
-        text.push_str(&fret_errors::text(&solution.report));
-    }
-    print::result(streams, text.as_bytes())
+    print::result(streams, solve_table::asked(options, checked.plan(), &solution).as_bytes())
 }
 
 /// A plan passes where it can be solved, for some faults show only in the computation.
@@ -203,19 +203,28 @@ fn workshop(options: &Rounding, streams: &mut Streams<'_>) -> Result<(), Failure
 
 /// Reads, checks and solves a plan.
 pub(crate) fn solved(path: &Path, streams: &mut Streams<'_>) -> Result<(Checked, Solution), Failure> {
-    let checked = checked(path, streams)?;
+    solved_text(path, &text_of(path, streams)?)
+}
+
+/// Checks and solves the plan that a text holds; `path` is where it came from.
+pub(crate) fn solved_text(path: &Path, text: &str) -> Result<(Checked, Solution), Failure> {
+    let checked = checked_text(path, text)?;
     let solution = crestline_plan::solve(&checked).map_err(|faults| refused(path, faults))?;
     Ok((checked, solution))
 }
 
 /// Reads and checks a plan.
 fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
-    let plan = crestline_plan::read(&text_of(path, streams)?).map_err(|faults| refused(path, faults))?;
+    checked_text(path, &text_of(path, streams)?)
+}
+
+fn checked_text(path: &Path, text: &str) -> Result<Checked, Failure> {
+    let plan = crestline_plan::read(text).map_err(|faults| refused(path, faults))?;
     crestline_plan::check(&plan).map_err(|faults| refused(path, faults))
 }
 
 /// The text of a file, or of standard input for `-`.
-fn text_of(path: &Path, streams: &mut Streams<'_>) -> Result<String, Failure> {
+pub(crate) fn text_of(path: &Path, streams: &mut Streams<'_>) -> Result<String, Failure> {
     if is_standard(path) {
         files::plan_text(&shown_name(path), streams.input)
     } else {
@@ -228,6 +237,6 @@ fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
 }
 
 /// The plan's name in messages.
-fn shown_name(path: &Path) -> String {
+pub(crate) fn shown_name(path: &Path) -> String {
     if is_standard(path) { "standard input".to_owned() } else { path.display().to_string() }
 }

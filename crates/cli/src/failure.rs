@@ -54,6 +54,16 @@ pub enum Failure {
         /// What the system said.
         source: io::Error,
     },
+    /// Some of many plans could not be solved; each has been spoken of already.
+    #[error("{failed} of {all} plans could not be solved")]
+    Plans {
+        /// How many.
+        failed: usize,
+        /// Of how many.
+        all: usize,
+        /// The exit status: that of a refusal where all were refused.
+        status: u8,
+    },
     /// Whoever read the output has stopped reading; nothing is said about it.
     #[error("the reader of the output has gone")]
     ReaderGone,
@@ -68,6 +78,7 @@ impl Failure {
     pub fn status(&self) -> u8 {
         match self {
             Self::Faults { .. } | Self::NotAPlan { .. } | Self::Argument(_) => STATUS_REFUSED,
+            Self::Plans { status, .. } => *status,
             Self::Read { .. } | Self::Write { .. } | Self::ReaderGone | Self::Output(_) => STATUS_FAILED,
         }
     }

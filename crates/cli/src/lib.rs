@@ -16,6 +16,7 @@
 //! ```
 
 mod arguments;
+mod batch;
 mod bench_files;
 mod bench_table;
 mod commands;

@@ -4,6 +4,8 @@ use crestline_plan::{
     Datum, FitRule, NutStyle, Plan, SaddleLine, SaddleStyle, Solution, StringLine, StringReport,
 };
 
+use crate::arguments::Solve;
+use crate::fret_errors;
 use crate::numbers::{cents, fixed, force, length, percent};
 use crate::print::notice_line;
 use crate::table::{Column, rendered};
@@ -17,6 +19,15 @@ pub(crate) const NAME_LIMIT: usize = 14;
 /// What stands below every table that shows tensions.
 const CAUTION: &str = "Caution: strings under tension can break and bridges can lift. The string maker's ratings and \
                        the judgement of a qualified maker or repairer come before these figures.";
+
+/// Everything that `solve` was asked to print of one plan.
+pub(crate) fn asked(options: &Solve, plan: &Plan, solution: &Solution) -> String {
+    let mut printed = text(plan, solution);
+    if options.frets {
+        printed.push_str(&fret_errors::text(&solution.report));
+    }
+    printed
+}
 
 /// The whole table, from the title to the cautions.
 pub(crate) fn text(plan: &Plan, solution: &Solution) -> String {

@@ -4,12 +4,18 @@
 //! made), [`built_setbacks`] the built ones (as the saddle's style allows). Least squares is a constrained Gauss–Newton search, the
 //! smallest largest error a sequence of linear programmes; where several places share the smallest largest error,
 //! the one with the least squares is taken. The saddle's optimum is searched within the travel limits.
+//!
+//! A string may have several weighted cases ([`FitCase`]) that share its crest and nut edge: other sets of strings, other
+//! tunings, or samples of an uncertain string. Squares are then weighted sums over the cases, the largest error is
+//! that of all cases, and what is said of a string's ideal contacts is said of all its cases together.
 
 mod quadratic;
 mod search;
+mod strings;
 mod strip;
 mod unknowns;
 
+pub use strings::{FitCase, FitString};
 pub use strip::{ChebyshevLine, chebyshev_line};
 pub use unknowns::offset_mm;
 
@@ -17,30 +23,19 @@ use std::ops::Range;
 
 use crate::error::within;
 use crate::neck::{PlanLine, PlanPoint};
-use crate::{Contacts, FrettedString, PhysicsError};
+use crate::{Contacts, PhysicsError};
 use search::{Found, Objective, Search};
 use unknowns::{Crests, LineGroup, NutEdges, Unknowns};
 
 /// Index of fret 12.
 const TWELFTH: usize = 11;
 
-/// A string to be fitted.
-#[derive(Debug, Clone, PartialEq)]
-pub struct FitString<'a> {
-    /// The string.
-    pub string: &'a FrettedString,
-    /// Its line in plan.
-    pub line: PlanLine,
-    /// Indices of the frets that count (fret 1 is 0); empty where every note buzzes, and then it is left alone.
-    pub frets: Vec<usize>,
-}
-
 /// What is made small.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum FitRule {
     /// The sum of squared errors.
     LeastSquares,
-    /// The error at fret 12; on a line, the sum of its squares over the strings.
+    /// The error at fret 12; on a line, or over several cases, the sum of its squares.
     Twelfth,
     /// The largest error.
     Minimax,
@@ -180,7 +175,7 @@ fn in_blank(
         .map(|(line, contact)| line.at(line.scale_mm() + contact.saddle_setback_mm))
         .collect();
     let counted: Vec<PlanPoint> = std::iter::zip(strings, &crests)
-        .filter(|(string, _)| !string.frets.is_empty())
+        .filter(|(string, _)| string.counts())
         .map(|(_, crest)| *crest)
         .collect();
     let narrowest = chebyshev_line(if counted.is_empty() { &crests } else { &counted });
@@ -233,7 +228,7 @@ fn nut_setbacks(
         saddle_travel_mm: options.saddle_travel_mm,
         nut_travel_mm: options.nut_travel_mm,
     };
-    let found = Search { strings, unknowns: &unknowns }.run(objective(options.rule), start)?;
+    let found = Search::new(strings, &unknowns).run(objective(options.rule), start)?;
     let fixed = found.contacts.iter().map(|contact| contact.nut_setback_mm).collect();
     Ok(NutPlan { fixed_mm: Some(fixed), contacts: found.contacts })
 }
@@ -249,8 +244,9 @@ fn fit_part(
     let mut own = strings[part.clone()].to_vec();
     if options.rule == FitRule::Twelfth {
         own.iter_mut()
-            .filter(|string| !string.frets.is_empty())
-            .for_each(|string| string.frets = vec![TWELFTH]);
+            .flat_map(|string| &mut string.cases)
+            .filter(|case| !case.frets.is_empty())
+            .for_each(|case| case.frets = vec![TWELFTH]);
     }
     let unknowns = Unknowns {
         lines: own.iter().map(|string| string.line).collect(),
@@ -262,7 +258,7 @@ fn fit_part(
         saddle_travel_mm: options.saddle_travel_mm,
         nut_travel_mm: options.nut_travel_mm,
     };
-    let search = Search { strings: &own, unknowns: &unknowns };
+    let search = Search::new(&own, &unknowns);
     let mut found = search.run(objective(options.rule), &start[part])?;
     let lines = unknowns.lines_at(&found.unknowns);
     if options.rule == FitRule::Minimax && unknowns.nut_moves() && unknowns.crests != Crests::Free {
@@ -283,7 +279,7 @@ fn own_nut_edges(strings: &[FitString], unknowns: &Unknowns, found: &mut Found) 
             saddle_travel_mm: [contact.saddle_setback_mm; 2],
             ..*unknowns
         };
-        let search = Search { strings: std::slice::from_ref(string), unknowns: &own };
+        let search = Search::new(std::slice::from_ref(string), &own);
         let better = search.run(Objective::LargestError, &[contact])?;
         found.contacts[index] = better.contacts[0];
         found.settled &= better.settled;
@@ -358,11 +354,8 @@ fn check(strings: &[FitString], options: &FitOptions) -> Result<(), PhysicsError
     if let SaddleShape::Shaped { half_width_mm } = options.saddle {
         within("usable half width of the blank in mm", half_width_mm, 0.0, 1e3)?;
     }
-    for string in strings {
-        let frets = string.string.crowns().len() as f64;
-        for &fret in &string.frets {
-            within("fret of the fit", fret as f64 + 1.0, 1.0, frets)?;
-        }
-    }
-    Ok(())
+    strings.iter().try_for_each(FitString::check)
 }
+
+#[cfg(test)]
+mod tests;

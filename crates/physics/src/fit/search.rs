@@ -3,9 +3,9 @@
 
 use nalgebra::{Cholesky, DMatrix, DVector};
 
-use crate::fit::FitString;
 use crate::fit::quadratic::Quadratic;
 use crate::fit::unknowns::Unknowns;
+use crate::fit::{FitCase, FitString};
 use crate::{Contacts, PhysicsError};
 
 /// Steps after which a search ends; 3 or 4 are usual.
@@ -33,7 +33,7 @@ const TIE_CENTS: f64 = 1e-6;
 /// What is made small.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(crate) enum Objective {
-    /// The sum of squared errors.
+    /// The sum of squared errors, weighted by case.
     SquaredErrors,
     /// The largest error; where several places share it, the one of them with the least squares.
     LargestError,
@@ -52,8 +52,10 @@ pub(crate) struct Found {
 
 /// One problem: strings, and the unknowns that place their contacts.
 pub(crate) struct Search<'a> {
-    pub strings: &'a [FitString<'a>],
-    pub unknowns: &'a Unknowns,
+    strings: &'a [FitString<'a>],
+    unknowns: &'a Unknowns,
+    /// Square root of every error's weight, as a share of the greatest: what is flat then depends on no common factor.
+    root_weights: DVector<f64>,
 }
 
 /// Errors and limits near a place, to first order.
@@ -62,19 +64,27 @@ struct Near {
     limit_slopes: DMatrix<f64>,
 }
 
-impl Search<'_> {
+impl<'a> Search<'a> {
+    pub fn new(strings: &'a [FitString<'a>], unknowns: &'a Unknowns) -> Self {
+        let cases = || strings.iter().flat_map(FitString::counted);
+        let greatest = cases().map(|case| case.weight).fold(0.0, f64::max);
+        let root_weights: Vec<f64> =
+            cases().flat_map(|case| vec![(case.weight / greatest).sqrt(); case.frets.len()]).collect();
+        Self { strings, unknowns, root_weights: DVector::from_vec(root_weights) }
+    }
+
     /// The best unknowns, looked for from given contacts.
     ///
     /// # Errors
     /// [`PhysicsError`] where the start itself cannot be worked out.
     pub fn run(&self, objective: Objective, start: &[Contacts]) -> Result<Found, PhysicsError> {
         let start = self.unknowns.near(start);
+        let squared = |errors: &DVector<f64>| errors.component_mul(&self.root_weights).norm_squared();
         let found = self.descend(start, squared, FLAT_SQUARES, |near, errors, excesses| {
             self.least_squares_step(near, errors, excesses, None)
         })?;
         // Without a note there is no largest error, and the place is kept.
-        if objective == Objective::SquaredErrors || self.strings.iter().all(|string| string.frets.is_empty())
-        {
+        if objective == Objective::SquaredErrors || self.root_weights.is_empty() {
             return Ok(found);
         }
         let found = self.descend(found.unknowns, largest, FLAT_LARGEST, |near, errors, excesses| {
@@ -140,12 +150,12 @@ impl Search<'_> {
         Ok(Found { unknowns: at, contacts, settled, last_step_mm })
     }
 
-    /// Errors of all strings at their frets, one after the other.
+    /// Errors of all strings in all cases at their frets, one after the other.
     fn errors(&self, unknowns: &[f64]) -> Result<DVector<f64>, PhysicsError> {
         let mut all = Vec::new();
         for (string, contacts) in std::iter::zip(self.strings, self.unknowns.contacts(unknowns)) {
-            if !string.frets.is_empty() {
-                all.extend(string.string.errors_cents(contacts, &string.frets)?);
+            for case in string.counted() {
+                all.extend(case.string.errors_cents(contacts, &case.frets)?);
             }
         }
         Ok(DVector::from_vec(all))
@@ -160,15 +170,14 @@ impl Search<'_> {
             (0..count).map(|k| self.around(at, k, |place| self.unknowns.contacts(place))).collect();
         let mut slopes = DMatrix::zeros(errors.len(), count);
         let mut row = 0;
-        for (index, string) in self.strings.iter().enumerate() {
-            if string.frets.is_empty() {
-                continue;
-            }
-            let rows = string.frets.len();
+        let cases = self.strings.iter().enumerate();
+        for (index, case) in cases.flat_map(|(index, string)| string.counted().map(move |case| (index, case)))
+        {
+            let rows = case.frets.len();
             let own = &errors.as_slice()[row..row + rows];
-            let saddle = self.by_contact(string, contacts[index], own, |c, by| c.saddle_setback_mm += by)?;
+            let saddle = by_contact(case, contacts[index], own, |c, by| c.saddle_setback_mm += by)?;
             let nut = if self.unknowns.nut_moves() {
-                self.by_contact(string, contacts[index], own, |c, by| c.nut_setback_mm += by)?
+                by_contact(case, contacts[index], own, |c, by| c.nut_setback_mm += by)?
             } else {
                 vec![0.0; rows]
             };
@@ -205,24 +214,6 @@ impl Search<'_> {
         (ahead, function(&place))
     }
 
-    fn by_contact(
-        &self,
-        string: &FitString,
-        contacts: Contacts,
-        errors: &[f64],
-        shift: impl Fn(&mut Contacts, f64),
-    ) -> Result<Vec<f64>, PhysicsError> {
-        let shifted = |by: f64| {
-            let mut moved = contacts;
-            shift(&mut moved, by);
-            let slope = |after: Vec<f64>| {
-                std::iter::zip(after, errors).map(|(after, before)| (after - before) / by).collect()
-            };
-            string.string.errors_cents(moved, &string.frets).map(slope)
-        };
-        shifted(DIFFERENCE_MM).or_else(|_| shifted(-DIFFERENCE_MM))
-    }
-
     /// The step to the least squares of the linearised errors within the limits, and within a bound on every
     /// error where one is given.
     fn least_squares_step(
@@ -232,12 +223,14 @@ impl Search<'_> {
         excesses: &DVector<f64>,
         bound_cents: Option<f64>,
     ) -> Result<DVector<f64>, PhysicsError> {
-        let mut hessian = near.slopes.tr_mul(&near.slopes);
+        let mut slopes = near.slopes.clone();
+        slopes.column_iter_mut().for_each(|mut column| column.component_mul_assign(&self.root_weights));
+        let mut hessian = slopes.tr_mul(&slopes);
         let ridge = 1e-12 * hessian.diagonal().amax().max(1.0);
         for index in 0..hessian.nrows() {
             hessian[(index, index)] += ridge;
         }
-        let gradient = near.slopes.tr_mul(errors);
+        let gradient = slopes.tr_mul(&errors.component_mul(&self.root_weights));
         if bound_cents.is_none()
             && let Some(factor) = Cholesky::new(hessian.clone())
         {
@@ -328,8 +321,22 @@ fn softened(programme: &Quadratic) -> Result<DVector<f64>, PhysicsError> {
     Ok(soft.minimise()?.rows(0, columns).into_owned())
 }
 
-fn squared(errors: &DVector<f64>) -> f64 {
-    errors.norm_squared()
+/// Derivatives of the errors of a case by a contact.
+fn by_contact(
+    case: &FitCase,
+    contacts: Contacts,
+    errors: &[f64],
+    shift: impl Fn(&mut Contacts, f64),
+) -> Result<Vec<f64>, PhysicsError> {
+    let shifted = |by: f64| {
+        let mut moved = contacts;
+        shift(&mut moved, by);
+        let slope = |after: Vec<f64>| {
+            std::iter::zip(after, errors).map(|(after, before)| (after - before) / by).collect()
+        };
+        case.string.errors_cents(moved, &case.frets).map(slope)
+    };
+    shifted(DIFFERENCE_MM).or_else(|_| shifted(-DIFFERENCE_MM))
 }
 
 fn largest(errors: &DVector<f64>) -> f64 {

@@ -33,10 +33,9 @@ pub(crate) struct PreparedString {
 impl Prepared {
     /// The strings for the fit; those whose notes all buzz keep their place without being fitted.
     pub fn fit_strings(&self) -> Vec<FitString<'_>> {
-        let fitted = |string: &PreparedString| string.frets.clone();
         self.strings
             .iter()
-            .map(|string| FitString { string: &string.string, line: string.line, frets: fitted(string) })
+            .map(|string| FitString::single(&string.string, string.line, string.frets.clone()))
             .collect()
     }
 }

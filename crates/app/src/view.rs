@@ -81,7 +81,7 @@ impl Group {
         match head {
             "instrument" => Self::Instrument,
             "strings" | "reference_hz" => Self::Strings,
-            "pressing" | "supports" | "slip" => Self::Pressing,
+            "pressing" | "supports" | "slip" | "tolerances" => Self::Pressing,
             "saddle" | "as_built" => Self::Saddle,
             "nut" => Self::Nut,
             "fit" | "targets" => Self::Fit,

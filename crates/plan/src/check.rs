@@ -10,6 +10,7 @@ mod notices;
 mod open_string;
 mod readings;
 mod strings;
+mod tolerances;
 
 use crestline_physics::neck::Neck;
 
@@ -85,6 +86,7 @@ fn look_through(plan: &Plan, checker: &mut Checker) -> Option<(Neck, Vec<f64>)> 
     making::nut(checker, plan);
     making::as_built(checker, plan);
     readings::readings(checker, plan);
+    tolerances::tolerances(checker, plan);
     let neck = neck::lay_out(checker, &plan.instrument, plan.strings.len())?;
     open_string::clearances(checker, plan, &neck);
     making::contacts(checker, plan, &neck);

@@ -158,6 +158,7 @@ impl Plan {
             as_built: None,
             readings: vec![],
             sheet: Sheet::default(),
+            tolerances: None,
         }
     }
 }

@@ -5,6 +5,8 @@
 
 use serde::Serialize;
 
+use crate::Tolerances;
+
 /// The value of the key `format` in every plan file.
 pub const FORMAT: &str = "crestline-plan";
 /// The newest plan version this program reads, and the one it writes.
@@ -46,6 +48,9 @@ pub struct Plan {
     pub readings: Vec<Reading>,
     /// Paper, units and datum of the drawing.
     pub sheet: Sheet,
+    /// How far the plan's figures can be trusted, if that is to be followed through.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub tolerances: Option<Tolerances>,
 }
 
 /// Neck, frets and string spacing.

@@ -147,6 +147,38 @@ pub const READING_CENTS: Range = Range::new(-1200.0, 1200.0, "cents");
 /// Most readings in a plan: every note of the largest legal plan three times.
 pub const READINGS: usize = 2000;
 
+/// What the standard deviations of a plan may be. Beyond these the model's figures would leave what can be built.
+pub mod tolerance {
+    use super::Range;
+
+    /// Number of instruments in a sample.
+    pub const SAMPLES: Range = Range::new(64.0, 32_768.0, "");
+    /// How far from true a note may be.
+    pub const LIMIT_CENTS: Range = Range::new(0.1, 100.0, "cents");
+    /// Diameter of a core.
+    pub const CORE_DIAMETER_MM: Range = Range::new(0.0, 0.2, "mm");
+    /// Shares of stiffness and mass.
+    pub const FRACTION: Range = Range::new(0.0, 0.5, "");
+    /// Pitch of a string, or of A4.
+    pub const PITCH_CENTS: Range = Range::new(0.0, 50.0, "cents");
+    /// Gaps over fret 1 and fret 12.
+    pub const ACTION_MM: Range = Range::new(0.0, 1.0, "mm");
+    /// Relief.
+    pub const RELIEF_MM: Range = Range::new(0.0, 0.5, "mm");
+    /// Scale.
+    pub const SCALE_MM: Range = Range::new(0.0, 5.0, "mm");
+    /// Place of a fret.
+    pub const FRET_MM: Range = Range::new(0.0, 0.3, "mm");
+    /// Place of the finger as a part of the fret's space.
+    pub const FINGER: Range = Range::new(0.0, 0.5, "");
+    /// Share of the press depth; 1 means a third to three times as deep.
+    pub const DEPTH_FRACTION: Range = Range::new(0.0, 1.0, "");
+    /// Fixities and slips, which go from 0 to 1.
+    pub const SUPPORT: Range = Range::new(0.0, 0.5, "");
+    /// Crests and nut edges.
+    pub const MAKING_MM: Range = Range::new(0.0, 1.0, "mm");
+}
+
 /// Usual action over fret 1 (common practice; steel string 0.33 to 0.58 mm, nylon somewhat more).
 pub const USUAL_ACTION_FIRST_MM: Range = Range::new(0.15, 1.2, "mm");
 /// Usual action over fret 12 (common practice; 1.6 mm mandolin to 4.0 mm nylon, bass a little more).

@@ -7,6 +7,7 @@ mod node;
 mod parse;
 mod spot;
 mod strings;
+mod tolerances;
 
 use crate::{FORMAT, Fault, Plan, VERSION, check, defaults, limits};
 use node::Node;
@@ -31,6 +32,7 @@ const KEYS: &[&str] = &[
     "as_built",
     "readings",
     "sheet",
+    "tolerances",
 ];
 
 /// Reads a plan from its text: JSON in the form of version 1, or of an older version, which is brought up to date.
@@ -88,6 +90,7 @@ fn plan(root: &Spot) -> Plan {
             .if_given(|spot| spot.list("a list of readings", |spot, _| making::reading(spot)))
             .unwrap_or_default(),
         sheet: fields.get("sheet").if_given(making::sheet).unwrap_or_default(),
+        tolerances: fields.get("tolerances").optional(tolerances::tolerances),
     }
 }
 

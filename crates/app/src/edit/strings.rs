@@ -18,9 +18,9 @@ fn insert(plan: &mut Plan, index: usize, string: PlanString) {
     }
     plan.strings.insert(index, string);
     for_lists(plan, |list| list.insert(index.min(list.len()), between(list, index)));
-    for reading in &mut plan.readings {
-        if reading.string as usize > index {
-            reading.string += 1;
+    for number in numbers(plan) {
+        if *number as usize > index {
+            *number += 1;
         }
     }
     renumber(plan);
@@ -49,9 +49,12 @@ pub fn remove(plan: &mut Plan, index: usize) {
         }
     });
     plan.readings.retain(|reading| reading.string as usize != index + 1);
-    for reading in &mut plan.readings {
-        if reading.string as usize > index + 1 {
-            reading.string -= 1;
+    if let Some(tolerances) = &mut plan.tolerances {
+        tolerances.strings.retain(|own| own.string as usize != index + 1);
+    }
+    for number in numbers(plan) {
+        if *number as usize > index + 1 {
+            *number -= 1;
         }
     }
     renumber(plan);
@@ -63,12 +66,12 @@ pub fn swap(plan: &mut Plan, a: usize, b: usize) {
         return;
     }
     plan.strings.swap(a, b);
-    for reading in &mut plan.readings {
-        let index = (reading.string as usize).wrapping_sub(1);
+    for own in numbers(plan) {
+        let index = (*own as usize).wrapping_sub(1);
         if index == a {
-            reading.string = number(b);
+            *own = number(b);
         } else if index == b {
-            reading.string = number(a);
+            *own = number(a);
         }
     }
     if let Some(targets) = &mut plan.targets
@@ -98,6 +101,13 @@ fn number(index: usize) -> u32 {
     u32::try_from(index + 1).unwrap_or(u32::MAX)
 }
 
+/// The string numbers that stand in lists of their own: readings, and strings' own tolerances.
+fn numbers(plan: &mut Plan) -> impl Iterator<Item = &mut u32> {
+    let readings = plan.readings.iter_mut().map(|reading| &mut reading.string);
+    let own = plan.tolerances.iter_mut().flat_map(|tolerances| &mut tolerances.strings);
+    readings.chain(own.map(|own| &mut own.string))
+}
+
 /// The lists that hold one value a string.
 fn for_lists(plan: &mut Plan, mut change: impl FnMut(&mut Vec<f64>)) {
     if let Some(across) = &mut plan.instrument.across_mm {
@@ -117,7 +127,7 @@ fn for_lists(plan: &mut Plan, mut change: impl FnMut(&mut Vec<f64>)) {
 mod tests {
     #![allow(clippy::unwrap_used)]
     use super::*;
-    use crestline_plan::{AsBuilt, Reading, ReadingKind, check, example, read};
+    use crestline_plan::{AsBuilt, OwnTolerance, Reading, ReadingKind, Tolerances, check, example, read};
 
     fn mandolin() -> Plan {
         let mut plan = read(example("mandolin").unwrap().text).unwrap();
@@ -126,6 +136,9 @@ mod tests {
         let reading =
             |string| Reading { string, fret: 12, kind: ReadingKind::Fretted, cents: f64::from(string) };
         plan.readings = (1..=8).map(reading).collect();
+        let own =
+            |string| OwnTolerance { string, pitch_cents: Some(f64::from(string)), ..OwnTolerance::default() };
+        plan.tolerances = Some(Tolerances { strings: (1..=8).map(own).collect(), ..Tolerances::default() });
         plan
     }
 
@@ -160,6 +173,8 @@ mod tests {
             plan.readings.iter().map(|reading| (reading.string, reading.cents)).collect();
         assert_eq!(left[4], (5, 6.0));
         assert_eq!(left.len(), 7);
+        let own = &plan.tolerances.unwrap().strings;
+        assert_eq!((own.len(), own[4].string, own[4].pitch_cents), (7, 5, Some(6.0)));
     }
 
     #[test]
@@ -181,6 +196,8 @@ mod tests {
         swap(&mut plan, 0, 1);
         let first = plan.readings.iter().find(|reading| reading.string == 1).unwrap();
         assert_eq!(first.cents, 2.0);
+        let own = &plan.tolerances.as_ref().unwrap().strings;
+        assert_eq!((own[1].string, own[1].pitch_cents), (1, Some(2.0)));
         swap(&mut plan, 0, 1);
         assert_eq!(plan, mandolin());
     }

@@ -6,7 +6,7 @@ use serde_json::{Value, json};
 use super::*;
 use crate::{
     Afterlength, CoreShape, Datum, FitRule, Measured, NutStyle, Pitch, ReadingKind, SaddleStyle, Scale,
-    Units, check, example, write,
+    Tolerances, Units, check, example, write,
 };
 
 /// The shortest legal plan: two strings and no key that may be left out.
@@ -109,6 +109,22 @@ fn every_key_of_the_format_is_read() {
     full["as_built"] = json!({"saddle_setback_mm": [1, 2], "nut_setback_mm": [0.1, 0.2]});
     full["readings"] = json!([{"string": 2, "fret": 12, "kind": "octave_harmonic", "cents": -1.5}]);
     full["sheet"] = json!({"paper": "letter", "units": "inch", "datum": "twelfth_fret"});
+    let one = |number: f64| {
+        json!({
+            "core_diameter_mm": number, "modulus_fraction": number, "mass_fraction": number,
+            "measured_mass_fraction": number, "measured_stiffness_fraction": number, "pitch_cents": 1,
+            "action_first_mm": number, "action_twelfth_mm": number
+        })
+    };
+    full["tolerances"] = json!({
+        "seed": 4294967295_u32, "samples": 1000, "limit_cents": 3, "reference_cents": 1,
+        "neck": {"relief_mm": 0.01, "scale_mm": 0.3, "fret_mm": 0.02},
+        "pressing": {"finger_fraction": 0.2, "depth_fraction": 0.3},
+        "supports": {"nut": 0.01, "fret": 0.02, "saddle": 0.03}, "slip": {"head": 0.04, "tail": 0.05},
+        "making": {"crest_mm": 0.2, "nut_edge_mm": 0.3},
+        "plain": one(0.01), "wound": one(0.02), "polymer": one(0.03), "strings": [one(0.04)]
+    });
+    full["tolerances"]["strings"][0]["string"] = json!(2);
     let plan = read(&full.to_string()).unwrap();
 
     let Scale::Fanned(fan) = plan.instrument.scale else { panic!("{:?}", plan.instrument.scale) };
@@ -123,6 +139,41 @@ fn every_key_of_the_format_is_read() {
     full["instrument"].as_object_mut().unwrap().remove("fret_positions_mm");
     full["strings"][1]["action_mm"] = json!({"twelfth": 2.1});
     assert_held(&full, &written, "");
+}
+
+#[test]
+fn tolerances_take_their_defaults_key_by_key() {
+    let read_with = |tolerances: Value| read(&changed("/tolerances", tolerances)).unwrap().tolerances;
+    assert_eq!(read_with(Value::Null), None);
+    assert_eq!(read_with(json!({})), Some(Tolerances::default()));
+    let part = read_with(json!({"wound": {"core_diameter_mm": 0.002}, "neck": {"relief_mm": 0.02}})).unwrap();
+    let mut expected = Tolerances::default();
+    (expected.wound.core_diameter_mm, expected.neck.relief_mm) = (0.002, 0.02);
+    assert_eq!(part, expected);
+}
+
+#[test]
+fn odd_tolerances_are_named() {
+    let odd = |tolerances: Value, path: &str, found: &str, allowed: &str| {
+        one_fault(&changed("/tolerances", tolerances), path, found, allowed);
+    };
+    odd(json!({"samples": 10}), "tolerances.samples", "10", "64 to 32768");
+    odd(json!({"seed": -1}), "tolerances.seed", "-1", "0 to 4294967295");
+    odd(
+        json!({"plain": {"mass": 0.1}}),
+        "tolerances.plain.mass",
+        "a key that is not known here",
+        "mass_fraction",
+    );
+    odd(json!({"wound": {"modulus_fraction": 0.6}}), "tolerances.wound.modulus_fraction", "0.6", "0 to 0.5");
+    odd(json!({"strings": [{"string": 3}]}), "tolerances.strings[0].string", "3", "1 to 2");
+    odd(
+        json!({"strings": [{"string": 1}, {"string": 1}]}),
+        "tolerances.strings[1].string",
+        "string 1 again",
+        "once",
+    );
+    odd(json!({"making": {"crest_mm": -0.1}}), "tolerances.making.crest_mm", "-0.1", "0 to 1 mm");
 }
 
 /// Asserts that `part` is in `whole`: objects by their keys, lists by their items, numbers by their value.
@@ -190,7 +241,6 @@ fn required_keys() {
 fn unknown_and_repeated_keys() {
     for (pointer, path) in [
         ("/extra", "extra"),
-        ("/tolerances", "tolerances"),
         ("/alternatives", "alternatives"),
         ("/instrument/scale", "instrument.scale"),
         ("/strings/1/core/colour", "strings[1].core.colour"),

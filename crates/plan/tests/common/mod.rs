@@ -4,8 +4,8 @@
 use crestline_plan::limits::{self, Range};
 use crestline_plan::{
     Across, Action, Afterlength, AsBuilt, Core, CoreShape, Datum, Fan, Fit, FitRule, Instrument, Measured,
-    Nut, NutStyle, Paper, Pitch, Plan, PlanString, Pressing, Reading, ReadingKind, Saddle, SaddleStyle,
-    Scale, Sheet, Slip, Spread, Supports, Targets, Units, Word, check,
+    Nut, NutStyle, OwnTolerance, Paper, Pitch, Plan, PlanString, Pressing, Reading, ReadingKind, Saddle,
+    SaddleStyle, Scale, Sheet, Slip, Spread, Supports, Targets, Tolerances, Units, Word, check,
 };
 use proptest::collection::vec;
 use proptest::option;
@@ -191,7 +191,24 @@ fn touch() -> BoxedStrategy<(Pressing, Supports, Slip)> {
         .boxed()
 }
 
-type Rest = (Fit, Nut, Option<Targets>, Option<AsBuilt>, Vec<Reading>, Sheet);
+/// Tolerances with some figures changed, and a string that has its own.
+fn tolerances(strings: usize) -> BoxedStrategy<Tolerances> {
+    let last = u32::try_from(strings).unwrap_or(1);
+    let shares = [(); 4].map(|()| within(limits::tolerance::FRACTION));
+    let counts = (any::<u32>(), 64..=32_768_u32, within(limits::tolerance::LIMIT_CENTS));
+    (counts, shares, 1..=last, option::of(within(limits::tolerance::ACTION_MM)))
+        .prop_map(|((seed, samples, limit_cents), [plain, wound, nut, tail], string, action_first_mm)| {
+            let own = OwnTolerance { string, action_first_mm, ..OwnTolerance::default() };
+            let mut tolerances = Tolerances { seed, samples, limit_cents, ..Tolerances::default() };
+            (tolerances.plain.mass_fraction, tolerances.wound.modulus_fraction) = (plain, wound);
+            (tolerances.supports.nut, tolerances.slip.tail) = (nut, tail);
+            tolerances.strings.push(own);
+            tolerances
+        })
+        .boxed()
+}
+
+type Rest = (Fit, Nut, Option<Targets>, Option<AsBuilt>, Vec<Reading>, (Sheet, Option<Tolerances>));
 
 fn rest(strings: usize, frets: u32) -> BoxedStrategy<Rest> {
     let fit = (word::<FitRule>(), 1..=frets, 1..=frets)
@@ -208,7 +225,8 @@ fn rest(strings: usize, frets: u32) -> BoxedStrategy<Rest> {
         units,
         datum,
     });
-    (fit, nut, option::of(targets), option::of(built), vec(reading(strings, frets), 0..5), sheet).boxed()
+    let last = (sheet, option::of(tolerances(strings)));
+    (fit, nut, option::of(targets), option::of(built), vec(reading(strings, frets), 0..5), last).boxed()
 }
 
 /// Any legal plan.
@@ -229,7 +247,7 @@ pub fn legal_plan() -> BoxedStrategy<Plan> {
     );
     let plan = plan.prop_map(|((title, notes, reference_hz), instrument, touch, strings, saddle, rest)| {
         let (pressing, supports, slip) = touch;
-        let (fit, nut, targets, as_built, readings, sheet) = rest;
+        let (fit, nut, targets, as_built, readings, (sheet, tolerances)) = rest;
         Plan {
             title,
             notes,
@@ -246,6 +264,7 @@ pub fn legal_plan() -> BoxedStrategy<Plan> {
             as_built,
             readings,
             sheet,
+            tolerances,
         }
     });
     plan.prop_filter("some fans, frets and actions do not go together", |plan| check(plan).is_ok()).boxed()

@@ -10,6 +10,7 @@ pub mod edit;
 pub mod fields;
 pub mod inputs;
 pub mod papers;
+pub mod repair;
 pub mod results;
 pub mod shell;
 pub mod theme;

@@ -5,6 +5,7 @@ use std::collections::BTreeSet;
 use crate::choices::study::Study;
 use crate::fields::draft::Drafts;
 use crate::papers::preview::Preview;
+use crate::repair::state::Repair;
 use crate::results::camera::Camera;
 use crate::results::error_plot::ErrorChoice;
 
@@ -19,11 +20,14 @@ pub enum Page {
     Compare,
     /// The drawing as it prints, and its files.
     Sheets,
+    /// Tuner readings, and what they say of the instrument.
+    Diagnosis,
 }
 
 impl Page {
     /// All pages in the order of their tabs.
-    pub const ALL: [Self; 4] = [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets];
+    pub const ALL: [Self; 5] =
+        [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets, Self::Diagnosis];
 
     /// The word on its tab.
     #[must_use]
@@ -33,6 +37,7 @@ impl Page {
             Self::FrettedNotes => "Fretted notes",
             Self::Compare => "Compare",
             Self::Sheets => "Sheets",
+            Self::Diagnosis => "Diagnosis",
         }
     }
 }
@@ -200,6 +205,8 @@ pub struct View {
     pub study: Study,
     /// What is shown of the sheets.
     pub preview: Preview,
+    /// Readings and diagnosis.
+    pub repair: Repair,
     /// What has just been done.
     pub message: Option<Message>,
 }
@@ -222,6 +229,7 @@ impl View {
             nut_camera: Camera::default(),
             study: Study::default(),
             preview: Preview::default(),
+            repair: Repair::default(),
             message: None,
         }
     }

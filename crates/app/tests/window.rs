@@ -1,59 +1,19 @@
 //! The window by role and label, without a display.
 #![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
 
-use std::path::PathBuf;
+mod common;
 
-use crestline_plan::{EXAMPLES, Pitch, Plan, Scale, example, read, write};
+use common::{Opened, field, open, order, plan, says, steel_six, type_into};
+use crestline_plan::{EXAMPLES, Pitch, Scale, read, write};
 use crestline_sheets::Format;
 use crestline_window::edit::command::Command;
 use crestline_window::shell::ask::{Question, Reply};
-use crestline_window::shell::obey::{obey, take_reply};
-use crestline_window::shell::options::Options;
+use crestline_window::shell::obey::take_reply;
 use crestline_window::shell::picker::Purpose;
-use crestline_window::shell::window::Window;
 use crestline_window::view::{Group, Page};
 use eframe::egui::accesskit::Role;
 use eframe::egui::{Key, Modifiers};
 use egui_kittest::kittest::{NodeT, Queryable};
-use egui_kittest::{Harness, Node};
-
-/// Frames in which the window must come to rest after each thing that is done to it.
-const FRAMES: u64 = 12;
-
-type Opened = Harness<'static, Window>;
-
-fn steel_six() -> Plan {
-    read(example("steel_six").unwrap().text).unwrap()
-}
-
-fn open(plan: Plan, path: Option<PathBuf>) -> Opened {
-    let builder = Harness::builder().with_size([1280.0, 800.0]).with_max_steps(FRAMES);
-    let mut opened = builder
-        .build_eframe(move |creation| Window::new(&creation.egui_ctx, plan, path, &Options::read(|_| None)));
-    opened.run();
-    opened
-}
-
-/// The field with this name: some stand both in the table and in the editor below, and the first is taken.
-fn field<'a>(opened: &'a Opened, name: &'a str) -> Node<'a> {
-    opened.get_all_by_role_and_label(Role::TextInput, name).next().unwrap()
-}
-
-/// Replaces the text of a field as a hand would.
-fn type_into(opened: &mut Opened, name: &str, text: &str) {
-    field(opened, name).focus();
-    opened.run();
-    opened.key_press_modifiers(Modifiers::COMMAND, Key::A);
-    opened.run();
-    field(opened, name).type_text(text);
-    opened.run();
-}
-
-fn order(opened: &mut Opened, command: Command) {
-    let ctx = opened.ctx.clone();
-    obey(opened.state_mut(), &ctx, command);
-    opened.run();
-}
 
 fn answer(opened: &mut Opened, reply: Reply) {
     let ctx = opened.ctx.clone();
@@ -62,16 +22,8 @@ fn answer(opened: &mut Opened, reply: Reply) {
     opened.run();
 }
 
-fn plan(opened: &Opened) -> &Plan {
-    &opened.state().desk.plan
-}
-
 fn setback(opened: &Opened, string: usize) -> f64 {
     opened.state().desk.outcome().unwrap().solution.report.strings[string].built.saddle_setback_mm
-}
-
-fn says(opened: &Opened, words: &str) -> usize {
-    opened.query_all_by_label_contains(words).count()
 }
 
 #[test]

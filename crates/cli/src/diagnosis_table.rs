@@ -1,6 +1,6 @@
 //! A diagnosis for people: what to do first, then what each string's readings come from.
 
-use crestline_plan::{Cause, Diagnosis, FretDiagnosis, Plan, StringDiagnosis};
+use crestline_plan::{Diagnosis, FretDiagnosis, Plan, StringDiagnosis};
 
 use crate::numbers::{cents, length, signed_length};
 use crate::print::notice_line;
@@ -86,7 +86,7 @@ fn cause_line(plan: &Plan, string: &StringDiagnosis) -> String {
         string.causes.iter().filter(|cause| cause.cents.abs() >= WORTH_NAMING_CENTS).collect();
     causes.sort_by(|a, b| b.cents.abs().total_cmp(&a.cents.abs()));
     let shares: Vec<_> =
-        causes.iter().map(|cause| format!("{} {}", cause_words(cause.cause), cents(cause.cents))).collect();
+        causes.iter().map(|cause| format!("{} {}", cause.cause.words(), cents(cause.cents))).collect();
     let suspect =
         if string.suspect_string { "; no setup explains its readings: replace the string first" } else { "" };
     let shares = if shares.is_empty() { "nothing worth naming".to_owned() } else { shares.join(", ") };
@@ -102,18 +102,4 @@ fn fret_line(fret: &FretDiagnosis) -> String {
 fn name(plan: &Plan, number: u32) -> String {
     let string = number.checked_sub(1).and_then(|index| plan.strings.get(index as usize));
     string.map_or_else(|| number.to_string(), |string| safe(&string.name))
-}
-
-/// A cause in the words of the trade.
-fn cause_words(cause: Cause) -> &'static str {
-    match cause {
-        Cause::Saddle => "saddle",
-        Cause::Nut => "nut edge",
-        Cause::NutSlot => "nut slot's height",
-        Cause::Action => "action",
-        Cause::Pressing => "pressing",
-        Cause::Stiffness => "the string's stiffness",
-        Cause::Frets => "frets",
-        Cause::Relief => "relief",
-    }
 }

@@ -103,6 +103,23 @@ pub enum Cause {
     Relief,
 }
 
+impl Cause {
+    /// The cause in the words of the trade.
+    #[must_use]
+    pub fn words(self) -> &'static str {
+        match self {
+            Self::Saddle => "saddle",
+            Self::Nut => "nut edge",
+            Self::NutSlot => "nut slot's height",
+            Self::Action => "action",
+            Self::Pressing => "pressing",
+            Self::Stiffness => "the string's stiffness",
+            Self::Frets => "frets",
+            Self::Relief => "relief",
+        }
+    }
+}
+
 /// A fret out of place.
 #[derive(Debug, Clone, Copy, PartialEq, Serialize)]
 pub struct FretDiagnosis {
@@ -204,6 +221,8 @@ pub struct FoundNote {
     pub fret: u32,
     /// Error against the open string as found, cents.
     pub error_cents: f64,
+    /// Standard deviation of that, cents.
+    pub sd_cents: f64,
 }
 
 /// What is left of a reading.

@@ -29,6 +29,7 @@ pub const EXAMPLES: &[Example] = examples! {
     "mandolin": "mandolin, 13 7/8 in scale, four paired courses",
     "tenor_ukulele": "tenor ukulele, 432 mm scale, high G",
     "fanned_eight": "eight-string with a fanned neck, 648 to 711 mm, and a zero fret",
+    "steel_six_sharp": "steel-string acoustic in for repair, with tuner readings",
 };
 
 /// The example of this name.

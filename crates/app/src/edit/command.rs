@@ -6,6 +6,7 @@ use crestline_plan::{NutStyle, SaddleStyle};
 use crestline_sheets::Format;
 use eframe::egui::{Key, KeyboardShortcut, Modifiers};
 
+use crate::repair::block::Filling;
 use crate::view::{Group, Page, ThemeChoice};
 
 /// Something to do. Menus, buttons and keys make commands; `shell::obey` carries them out.
@@ -23,6 +24,14 @@ pub enum Command {
     SaveAs,
     /// Ask for a file and write the drawing or the schedule to it.
     Export(Format),
+    /// Ask for a file with readings and take them.
+    ImportReadings,
+    /// Take the readings of this file in place of those that there are.
+    ImportReadingsFrom(PathBuf),
+    /// Put a pasted block into the readings.
+    FillReadings(Filling),
+    /// Take the instrument that the diagnosis found into the plan.
+    TakeFitted,
     /// Type the path in the window instead of waiting for a file dialog.
     TypePath,
     /// Close the window.
@@ -79,6 +88,10 @@ impl Command {
             Self::Export(Format::Svg) => "Write SVG…".into(),
             Self::Export(Format::Dxf) => "Write DXF for a machine…".into(),
             Self::Export(Format::Csv) => "Write schedule CSV…".into(),
+            Self::ImportReadings => "Import readings…".into(),
+            Self::ImportReadingsFrom(path) => format!("Import readings from {}", path.display()),
+            Self::FillReadings(_) => "Paste readings".into(),
+            Self::TakeFitted => "Take the fitted instrument into the plan".into(),
             Self::TypePath => "Type the path here instead".into(),
             Self::Quit => "Quit".into(),
             Self::Undo => "Undo".into(),

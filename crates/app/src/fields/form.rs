@@ -26,7 +26,17 @@ pub struct Form<'a> {
     pub commands: Vec<Command>,
 }
 
-impl Form<'_> {
+impl<'a> Form<'a> {
+    /// The surroundings at the beginning of a frame.
+    pub fn new(
+        faults: &'a [Fault],
+        drafts: &'a mut Drafts,
+        going_to: &'a mut Option<String>,
+        palette: &'static Palette,
+    ) -> Self {
+        Self { faults, drafts, going_to, palette, edit: None, left: false, commands: Vec::new() }
+    }
+
     /// Notes that a panel has changed the plan at once.
     pub fn edited(&mut self, name: impl Into<String>) {
         self.edit = Some(Edit::whole(name));

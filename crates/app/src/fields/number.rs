@@ -67,7 +67,9 @@ impl<'a> Spec<'a> {
         Self { step: 0.0, align: Align::LEFT, ..self }
     }
 
-    fn id(&self) -> Id {
+    /// What the window knows the field by.
+    #[must_use]
+    pub fn id(&self) -> Id {
         Id::unique(("field", &self.path, self.place))
     }
 }

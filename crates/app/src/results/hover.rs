@@ -14,7 +14,7 @@ fn place(response: &Response, transform: &PlotTransform) -> Option<PlotPoint> {
 }
 
 /// The fret under the pointer, if there is one.
-fn fret(response: &Response, transform: &PlotTransform, frets: usize) -> Option<usize> {
+pub fn fret(response: &Response, transform: &PlotTransform, frets: usize) -> Option<usize> {
     let x = place(response, transform)?.x.round();
     (x >= 1.0 && x <= frets as f64).then_some(x as usize)
 }
@@ -53,7 +53,8 @@ pub fn parts(
     tip(response, palette, &format!("String {}, fret {}, cents", string.string, note.fret), &lines)
 }
 
-fn tip(response: Response, palette: &Palette, title: &str, lines: &[(&str, f64)]) -> Response {
+/// Shows lines of names and cents under a title where the pointer is.
+pub fn tip(response: Response, palette: &Palette, title: &str, lines: &[(&str, f64)]) -> Response {
     response.on_hover_ui_at_pointer(|ui| {
         ui.label(RichText::new(title).strong());
         for (name, value) in lines {

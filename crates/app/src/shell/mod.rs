@@ -9,4 +9,5 @@ pub mod obey;
 pub mod options;
 pub mod path_box;
 pub mod picker;
+pub mod readings;
 pub mod window;

@@ -10,12 +10,13 @@ use super::ask::{Question, Reply};
 use super::files::{self, with_ending};
 use super::path_box::PathBox;
 use super::picker::{Answer, Picker, Purpose};
+use super::readings;
 use super::window::Window;
 use crate::edit::command::Command;
 use crate::edit::history::Edit;
 use crate::edit::strings;
 use crate::theme;
-use crate::view::Group;
+use crate::view::{Group, Page};
 
 /// The least and greatest scale of all text.
 const ZOOM: [f32; 2] = [0.8, 2.0];
@@ -36,6 +37,8 @@ pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
         Command::Save => save(window, ctx),
         Command::SaveAs => pick(window, ctx, Purpose::Save),
         Command::Export(format) => ask_for_drawing(window, ctx, format),
+        Command::ImportReadings => pick(window, ctx, Purpose::Readings),
+        Command::ImportReadingsFrom(path) => readings::import(window, &path),
         Command::Quit => ctx.send_viewport_cmd(ViewportCommand::Close),
         Command::Undo => step(window, true),
         Command::Redo => step(window, false),
@@ -77,6 +80,8 @@ fn arrange(window: &mut Window, command: Command) {
             plan.saddle.split_after = split_after.or(plan.saddle.split_after);
             window.desk.settle(&Edit::whole("Take saddle and nut"));
         }
+        Command::FillReadings(filling) => readings::fill(window, &filling),
+        Command::TakeFitted => readings::take_fitted(window),
         Command::ChooseString(index) => view.string = index,
         Command::ShowPage(page) => view.page = page,
         Command::ShowInputs(shown) => view.inputs = shown,
@@ -109,6 +114,10 @@ fn choose_string(window: &mut Window, index: usize) {
 }
 
 fn go_to(window: &mut Window, path: String) {
+    if path.starts_with("readings") {
+        go_to_reading(window, &path);
+        return;
+    }
     window.view.folded.remove(&Group::of_path(&path));
     let index = path.strip_prefix("strings[").and_then(|rest| rest.split(']').next()?.parse().ok());
     if let Some(index) = index {
@@ -116,6 +125,16 @@ fn go_to(window: &mut Window, path: String) {
     }
     window.view.inputs = true;
     window.view.going_to = Some(path);
+}
+
+/// Shows the readings, and goes to the cell of the one with this path.
+fn go_to_reading(window: &mut Window, path: &str) {
+    window.view.page = Page::Diagnosis;
+    let index = path.strip_prefix("readings[").and_then(|rest| rest.split(']').next()?.parse::<usize>().ok());
+    let reading = index.and_then(|index| window.desk.plan.readings.get(index));
+    if let Some(reading) = reading {
+        window.view.repair.go_to(reading);
+    }
 }
 
 fn step(window: &mut Window, back: bool) {
@@ -164,6 +183,7 @@ fn fresh(window: &mut Window) {
     window.view.saddle_camera.reset();
     window.view.nut_camera.reset();
     window.view.errors.looking = None;
+    window.view.repair.fresh();
     window.view.message = None;
 }
 
@@ -256,7 +276,7 @@ pub fn take_reply(window: &mut Window, ctx: &Context, reply: Reply) {
             }
         },
         Reply::Without(next) => without_saving(window, ctx, next),
-        Reply::Propose(purpose, path) if purpose != Purpose::Open && path.exists() => {
+        Reply::Propose(purpose, path) if purpose.writes() && path.exists() => {
             window.question = Some(Question::Replace(purpose, path));
         }
         Reply::Propose(purpose, path) | Reply::Use(purpose, path) => use_path(window, ctx, purpose, path),
@@ -286,6 +306,7 @@ fn use_path(window: &mut Window, ctx: &Context, purpose: Purpose, path: PathBuf)
             }
         }
         Purpose::Write(_) => write_drawing(window, &path),
+        Purpose::Readings => readings::import(window, &path),
     }
 }
 

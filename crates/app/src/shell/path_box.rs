@@ -41,7 +41,7 @@ impl PathBox {
         let folder = std::env::current_dir().unwrap_or_default();
         let whole = folder.join(suggested);
         let start = match purpose {
-            Purpose::Open => whole.parent().map_or(folder, Path::to_owned).join(""),
+            Purpose::Open | Purpose::Readings => whole.parent().map_or(folder, Path::to_owned).join(""),
             Purpose::Save | Purpose::Write(_) => whole,
         };
         Self { purpose, text: start.display().to_string(), error: None, listing: Listing::default() }
@@ -87,7 +87,7 @@ impl PathBox {
         let refusal = match self.purpose {
             _ if typed.is_empty() => Some("a path is wanted here".to_owned()),
             _ if path.is_dir() => Some("this is a folder; give the name of a file in it".to_owned()),
-            Purpose::Open if !path.exists() => Some("there is no such file".to_owned()),
+            Purpose::Open | Purpose::Readings if !path.exists() => Some("there is no such file".to_owned()),
             Purpose::Save | Purpose::Write(_) if !folder_of(&path).is_dir() => {
                 Some("there is no such folder".to_owned())
             }
@@ -97,8 +97,7 @@ impl PathBox {
         if self.error.is_some() {
             return None;
         }
-        let path =
-            if self.purpose == Purpose::Open { path } else { with_ending(path, self.purpose.ending()) };
+        let path = if self.purpose.writes() { with_ending(path, self.purpose.ending()) } else { path };
         Some(Reply::Propose(self.purpose, path))
     }
 

@@ -28,6 +28,8 @@ pub enum Purpose {
     Save,
     /// To write the drawing or the schedule.
     Write(Format),
+    /// To take readings from a table.
+    Readings,
 }
 
 impl Purpose {
@@ -39,6 +41,7 @@ impl Purpose {
             Self::Save => "Save the plan as",
             Self::Write(Format::Csv) => "Write the schedule to",
             Self::Write(_) => "Write the drawing to",
+            Self::Readings => "Take readings from",
         }
     }
 
@@ -49,6 +52,7 @@ impl Purpose {
             Self::Open => "Open",
             Self::Save => "Save",
             Self::Write(_) => "Write",
+            Self::Readings => "Take",
         }
     }
 
@@ -58,7 +62,14 @@ impl Purpose {
         match self {
             Self::Open | Self::Save => super::files::PLAN_ENDING,
             Self::Write(format) => format.ending(),
+            Self::Readings => super::readings::READINGS_ENDING,
         }
+    }
+
+    /// Whether a file is written, not read.
+    #[must_use]
+    pub fn writes(self) -> bool {
+        matches!(self, Self::Save | Self::Write(_))
     }
 }
 
@@ -121,6 +132,7 @@ fn ask(purpose: Purpose, suggested: &Path) -> Asking {
     let mut dialog = rfd::AsyncFileDialog::new().set_title(purpose.title());
     dialog = match purpose {
         Purpose::Open | Purpose::Save => dialog.add_filter("Plans", &[super::files::PLAN_ENDING]),
+        Purpose::Readings => dialog.add_filter("Readings", &[purpose.ending()]),
         Purpose::Write(format) => dialog.add_filter(format.ending().to_uppercase(), &[format.ending()]),
     };
     if let Some(folder) = suggested.parent().filter(|folder| folder.is_dir()) {
@@ -130,7 +142,7 @@ fn ask(purpose: Purpose, suggested: &Path) -> Asking {
         dialog = dialog.set_file_name(name.to_string_lossy());
     }
     match purpose {
-        Purpose::Open => {
+        Purpose::Open | Purpose::Readings => {
             let picked = dialog.pick_file();
             Box::pin(async { picked.await.map(|file| file.path().to_owned()) })
         }

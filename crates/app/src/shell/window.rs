@@ -11,13 +11,16 @@ use super::ask::{self, Question};
 use super::obey;
 use super::options::Options;
 use super::picker::Picker;
+use super::readings::READINGS_ENDING;
 use super::{bar, foot};
 use crate::choices;
 use crate::edit::command::Command;
 use crate::edit::desk::Desk;
+use crate::edit::history::Edit;
 use crate::fields::form::Form;
 use crate::inputs::{self, Surroundings};
 use crate::papers;
+use crate::repair::page as repair_page;
 use crate::results::{layout_page, notes_page, notices};
 use crate::theme::{self, Palette};
 use crate::view::{Page, View};
@@ -133,27 +136,36 @@ impl Window {
         let (plan, faults, outcome) = self.desk.parts();
         let report = outcome.and_then(|outcome| outcome.solution.report.strings.get(self.view.string));
         let around = Surroundings { string: self.view.string, folded: &self.view.folded, report };
-        let mut form = Form {
-            faults,
-            drafts: &mut self.view.drafts,
-            going_to: &mut self.view.going_to,
-            palette,
-            edit: None,
-            left: false,
-            commands: Vec::new(),
-        };
+        let mut form = Form::new(faults, &mut self.view.drafts, &mut self.view.going_to, palette);
         inputs::show(ui, &mut form, plan, &around);
         let Form { edit, left, commands, .. } = form;
         // A path that no field has shown by now has none.
         self.view.going_to = None;
+        self.settle(ui.ctx(), edit, left);
+        commands
+    }
+
+    /// The page of readings, which has fields of its own.
+    fn diagnosis(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
+        let (plan, faults, outcome) = self.desk.parts();
+        let Some(outcome) = outcome else { return Vec::new() };
+        let View { drafts, going_to, string, repair, .. } = &mut self.view;
+        let mut form = Form::new(faults, drafts, going_to, palette);
+        repair_page::show(ui, &mut form, plan, outcome, *string, repair);
+        let Form { edit, left, commands, .. } = form;
+        self.settle(ui.ctx(), edit, left);
+        commands
+    }
+
+    /// Notes what fields have changed.
+    fn settle(&mut self, ctx: &Context, edit: Option<Edit>, left: bool) {
         if let Some(edit) = edit {
             self.desk.settle(&edit);
-            ui.ctx().request_repaint();
+            ctx.request_repaint();
         }
         if left {
             self.desk.close_gesture();
         }
-        commands
     }
 
     fn results(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
@@ -176,12 +188,17 @@ impl Window {
                 );
                 return;
             };
+            if self.view.page == Page::Diagnosis {
+                commands.extend(self.diagnosis(ui, palette));
+                return;
+            }
             let view = &mut self.view;
             commands.extend(match view.page {
                 Page::Saddle => layout_page::show(ui, palette, outcome, view),
                 Page::FrettedNotes => notes_page::show(ui, palette, outcome, view),
                 Page::Compare => choices::page::show(ui, palette, outcome, view.string, &mut view.study),
                 Page::Sheets => papers::page::show(ui, palette, outcome, &mut view.preview),
+                Page::Diagnosis => Vec::new(),
             });
         });
         commands
@@ -216,10 +233,12 @@ impl Window {
     }
 }
 
-/// The first file that has been dropped on the window.
+/// The first file that has been dropped on the window: a table of readings, or else a plan.
 fn dropped(ctx: &Context) -> Option<Command> {
     let path = ctx.input(|input| input.raw.dropped_files.first().map(|file| file.path().to_owned()));
-    path.map(Command::OpenFile)
+    let is_table =
+        |path: &PathBuf| path.extension().is_some_and(|ending| ending.eq_ignore_ascii_case(READINGS_ENDING));
+    path.map(|path| if is_table(&path) { Command::ImportReadingsFrom(path) } else { Command::OpenFile(path) })
 }
 
 impl eframe::App for Window {

@@ -54,7 +54,10 @@ impl Default for Priors {
 
 impl Priors {
     /// Refuses what is not positive and finite, or wider than the model bears.
-    pub(super) fn check(&self) -> Result<(), PhysicsError> {
+    ///
+    /// # Errors
+    /// [`PhysicsError::OutOfRange`] with the name of the first one that is out of range.
+    pub fn check(&self) -> Result<(), PhysicsError> {
         const LEAST: f64 = 1e-6;
         within("standard deviation of the crest in mm", self.crest_mm, LEAST, 20.0)?;
         within("standard deviation of a measured crest in mm", self.measured_crest_mm, LEAST, 20.0)?;

@@ -133,8 +133,12 @@ fn one(checked: &Checked, cases: &Cases, found: &DiagnosedString, string: usize)
         twelfth_mm: [found.setup.gap_at_twelfth_mm, found.action_higher_mm.sd],
         tuning_cents: pair(found.tuning_cents),
         slot_is_high: found.is_slot_high,
-        notes: std::iter::zip(&found.frets, &found.errors_cents)
-            .map(|(&fret, &error_cents)| FoundNote { fret: fret as u32 + 1, error_cents })
+        notes: std::iter::zip(&found.frets, std::iter::zip(&found.errors_cents, &found.errors_sd_cents))
+            .map(|(&fret, (&error_cents, &sd_cents))| FoundNote {
+                fret: fret as u32 + 1,
+                error_cents,
+                sd_cents,
+            })
             .collect(),
         residuals: left
             .map(|((&reading, read), &cents)| Residual { reading, fret: read.fret, kind: read.kind, cents })

@@ -25,6 +25,12 @@ pub(crate) struct Arguments {
     pub command: Option<Command>,
 }
 
+/// The whole command line as clap describes it, for the manual pages and the completions of shells.
+#[must_use]
+pub fn description() -> clap::Command {
+    <Arguments as clap::CommandFactory>::command()
+}
+
 /// The commands.
 #[derive(Debug, Subcommand)]
 pub(crate) enum Command {
@@ -222,6 +228,6 @@ mod tests {
 
     #[test]
     fn the_arguments_are_declared_without_contradiction() {
-        <Arguments as clap::CommandFactory>::command().debug_assert();
+        description().debug_assert();
     }
 }

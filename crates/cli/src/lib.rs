@@ -33,6 +33,7 @@ mod table;
 mod text;
 mod workshop_table;
 
+pub use arguments::description;
 pub use commands::{Outcome, run};
 pub use failure::{Failure, STATUS_DONE, STATUS_FAILED, STATUS_REFUSED};
 pub use streams::Streams;

@@ -21,7 +21,7 @@ lintian --fail-on error,warning --tag-display-limit 0 "$package"
 root=$(mktemp -d)
 trap 'rm -rf "$root"' EXIT
 dpkg-deb --extract "$package" "$root"
-update-mime-database "$root/usr/share/mime"
+update-mime-database "$root/usr/share/mime" 2>/dev/null
 grep -q '^application/vnd.crestline-plan+json:\*.crestline.json$' "$root/usr/share/mime/globs" \
   || fail "the kind of a plan file is not known"
 for page in "$root"/usr/share/man/man1/*.gz; do

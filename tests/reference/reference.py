@@ -56,11 +56,11 @@ def contact_report(setting, index, nut, crest, cents):
             "rms_cents": float(np.sqrt(np.mean(kept**2))), "max_cents": float(np.abs(kept).max())}
 
 
-def solve(plan):
+def solve(plan, setting_of=saddles.Setting):
     """The report of a plan as plain data, with numbers in full."""
     strings = neck.build(plan)
     bench = fretting.Bench(plan, strings)
-    setting = saddles.Setting(plan, strings, bench)
+    setting = setting_of(plan, strings, bench)
     ideal = setting.separate(setting.rule)
     made, lines, offsets, fits = built(setting)
     numbers = list(range(1, plan["instrument"]["frets"] + 1))

@@ -133,6 +133,9 @@ class Problem:
 class Setting:
     """What every problem of one plan shares."""
 
+    # What a joint optimum is made of.
+    problem = Problem
+
     def __init__(self, plan, strings, bench):
         self.strings, self.bench, self.known = strings, bench, {}
         saddle, nut = plan["saddle"], plan.get("nut") or {"style": "plain"}
@@ -180,7 +183,7 @@ class Setting:
         nuts, crests = np.zeros(self.count), np.zeros(self.count)
         determined, shared = [True] * self.count, True
         for group in groups:
-            problem = Problem(self, group, nut, values, self.octave if rule == "twelfth" else self.fit_frets, strip)
+            problem = self.problem(self, group, nut, values, self.octave if rule == "twelfth" else self.fit_frets, strip)
             start = np.clip(np.full(len(problem.lower), 0.1), problem.lower, problem.upper)
             if rule == "minimax":
                 x, _, known, common = optimise.lexicographic_minimax(problem, start)

@@ -4,6 +4,7 @@
 //! the largest difference, is printed as a table by `cargo test -p crestline-tests reference:: -- --show-output`.
 
 mod compared;
+mod sets;
 mod tally;
 
 use serde_json::Value;

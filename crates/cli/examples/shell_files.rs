@@ -6,7 +6,8 @@ use std::path::PathBuf;
 use clap_complete::Shell;
 
 fn main() -> io::Result<()> {
-    let folder = std::env::args_os().nth(1).map(PathBuf::from).ok_or_else(|| Error::other("which folder?"))?;
+    let folder =
+        std::env::args_os().nth(1).map(PathBuf::from).ok_or_else(|| Error::other("which folder?"))?;
     std::fs::create_dir_all(&folder)?;
     clap_mangen::generate_to(crestline_cli::description(), &folder)?;
     let mut command = crestline_cli::description();

@@ -26,6 +26,7 @@ pub mod files;
 mod fret_errors;
 mod numbers;
 mod print;
+mod sets_table;
 mod solve_table;
 mod streams;
 mod styles;

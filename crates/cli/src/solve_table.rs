@@ -8,6 +8,7 @@ use crate::arguments::Solve;
 use crate::fret_errors;
 use crate::numbers::{cents, fixed, force, length, percent};
 use crate::print::notice_line;
+use crate::sets_table;
 use crate::table::{Column, rendered};
 use crate::text::{PAGE_WIDTH, clipped, push_paragraph, safe};
 
@@ -25,6 +26,7 @@ pub(crate) fn asked(options: &Solve, plan: &Plan, solution: &Solution) -> String
     let mut printed = text(plan, solution);
     if options.frets {
         printed.push_str(&fret_errors::text(&solution.report));
+        printed.push_str(&sets_table::fret_errors(&solution.report));
     }
     printed
 }
@@ -39,6 +41,7 @@ pub(crate) fn text(plan: &Plan, solution: &Solution) -> String {
         text.push_str(&nut_table(solution));
         text.push('\n');
     }
+    text.push_str(&sets_table::text(plan, &solution.report));
     text.push_str(&saddle_lines(solution));
     text.push_str(&format!("Total pull on the bridge: {} N\n", force(solution.report.total_tension_n)));
     for notice in &solution.report.notices {

@@ -20,7 +20,11 @@ pub(crate) fn text(plan: &Plan, comparison: &Comparison) -> String {
     ];
     let [first, last] = plan.fit.frets;
     let rows: Vec<_> = comparison.rows.iter().map(|row| style_row(plan, row)).collect();
-    format!("Errors in cents over all strings, frets {first} to {last}.\n\n{}", rendered(&columns, &rows))
+    let sets = if plan.alternatives.is_empty() { "" } else { " of all sets, weighted" };
+    format!(
+        "Errors in cents over all strings{sets}, frets {first} to {last}.\n\n{}",
+        rendered(&columns, &rows)
+    )
 }
 
 fn style_row(plan: &Plan, row: &ComparisonRow) -> Vec<String> {
@@ -41,5 +45,7 @@ fn place(plan: &Plan, row: &ComparisonRow) -> String {
     let name = row.worst_string.checked_sub(1).and_then(|index| plan.strings.get(index as usize));
     let name =
         name.map_or_else(|| row.worst_string.to_string(), |string| clipped(&safe(&string.name), NAME_LIMIT));
-    format!("string {name}, fret {}", row.worst_fret)
+    let place = format!("string {name}, fret {}", row.worst_fret);
+    let set = row.worst_alternative.and_then(|number| plan.alternatives.get(number as usize - 1));
+    set.map_or_else(|| place.clone(), |set| format!("{}: {place}", clipped(&safe(&set.name), NAME_LIMIT)))
 }

@@ -18,6 +18,12 @@ pub(crate) fn text(plan: &Plan, workshop: &Workshop) -> String {
         workshop.step.word(),
     );
     push_paragraph(&mut text, &frame);
+    if !plan.alternatives.is_empty() {
+        push_paragraph(
+            &mut text,
+            "Errors are those of all sets of strings, weighted; slips are the plan's own strings'.",
+        );
+    }
     text.push_str(&format!("\n{}\n", rendered(&columns(with_nut), &rows)));
     for line in &workshop.lines {
         text.push_str(&format!(

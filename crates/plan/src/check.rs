@@ -3,6 +3,7 @@
 //! Each value is held against its range in [`limits`](crate::limits) first. Conditions that need several values
 //! are looked at only where all of them are sound, so that one slip of the pen is named once.
 
+mod alternatives;
 mod checker;
 mod making;
 mod neck;
@@ -24,6 +25,7 @@ pub struct Checked {
     neck: Neck,
     frequencies_hz: Vec<f64>,
     notices: Vec<Notice>,
+    alternatives: Vec<Checked>,
 }
 
 impl Checked {
@@ -50,6 +52,12 @@ impl Checked {
     pub fn notices(&self) -> &[Notice] {
         &self.notices
     }
+
+    /// The plan as it is with each of its alternatives for its own strings.
+    #[must_use]
+    pub fn alternatives(&self) -> &[Self] {
+        &self.alternatives
+    }
 }
 
 /// Checks every value of a plan.
@@ -61,10 +69,7 @@ pub fn check(plan: &Plan) -> Result<Checked, Vec<Fault>> {
     let sound = look_through(plan, &mut checker);
     let faults = checker.into_faults();
     match sound {
-        Some((neck, frequencies_hz)) if faults.is_empty() => {
-            let notices = notices::notices(plan);
-            Ok(Checked { plan: plan.clone(), neck, frequencies_hz, notices })
-        }
+        Some(checked) if faults.is_empty() => Ok(checked),
         _ => Err(faults),
     }
 }
@@ -76,10 +81,12 @@ pub(crate) fn faults_beside(plan: &Plan, unread: &[String]) -> Vec<Fault> {
     checker.into_faults()
 }
 
-fn look_through(plan: &Plan, checker: &mut Checker) -> Option<(Neck, Vec<f64>)> {
+/// Finds every fault; gives what a checked plan holds where its neck and pitches can be told.
+fn look_through(plan: &Plan, checker: &mut Checker) -> Option<Checked> {
     making::pressing_and_ends(checker, plan);
     neck::instrument(checker, &plan.instrument, plan.strings.len());
     let frequencies_hz = strings::strings(checker, plan);
+    let alternatives = alternatives::alternatives(checker, plan);
     making::fit(checker, plan);
     making::targets(checker, plan);
     making::saddle(checker, plan);
@@ -90,7 +97,10 @@ fn look_through(plan: &Plan, checker: &mut Checker) -> Option<(Neck, Vec<f64>)> 
     let neck = neck::lay_out(checker, &plan.instrument, plan.strings.len())?;
     open_string::clearances(checker, plan, &neck);
     making::contacts(checker, plan, &neck);
-    Some((neck, frequencies_hz?))
+    let frequencies_hz = frequencies_hz?;
+    let mut notices = notices::notices(plan);
+    notices.extend(alternatives.iter().flat_map(|alternative| alternative.notices.clone()));
+    Some(Checked { plan: plan.clone(), neck, frequencies_hz, notices, alternatives })
 }
 
 #[cfg(test)]

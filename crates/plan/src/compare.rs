@@ -3,7 +3,7 @@
 use crestline_physics::fit::{FitOptions, FitRule, SaddleShape, built_setbacks, ideal_setbacks};
 use crestline_physics::{Contacts, Note};
 
-use crate::solve::{Prepared, fault, fit_options, no_setbacks, prepare};
+use crate::solve::{Prepared, Squares, fault, fit_options, no_setbacks, prepare};
 use crate::{Checked, Comparison, ComparisonRow, Fault, NutStyle, SaddleStyle, Word};
 
 /// Works out every pair of saddle and nut style for a checked plan; a two-piece saddle is split where the plan
@@ -71,7 +71,7 @@ fn best_split(
     Ok(best.map(|(_, split_after)| split_after))
 }
 
-/// What given contacts leave of the errors.
+/// What given contacts leave of the errors of all sets.
 fn measured(prepared: &Prepared, contacts: &[Contacts]) -> Result<ComparisonRow, Vec<Fault>> {
     let mut row = ComparisonRow {
         saddle: SaddleStyle::Separate,
@@ -79,6 +79,7 @@ fn measured(prepared: &Prepared, contacts: &[Contacts]) -> Result<ComparisonRow,
         split_after: None,
         rms_cents: 0.0,
         max_cents: 0.0,
+        worst_alternative: None,
         worst_string: 1,
         worst_fret: 1,
         fits: true,
@@ -86,23 +87,25 @@ fn measured(prepared: &Prepared, contacts: &[Contacts]) -> Result<ComparisonRow,
         saddle_setback_mm: contacts.iter().map(|contact| contact.saddle_setback_mm).collect(),
         nut_setback_mm: contacts.iter().map(|contact| contact.nut_setback_mm).collect(),
     };
-    let (mut squares, mut count) = (0.0, 0);
-    for (index, string) in prepared.strings.iter().enumerate() {
-        let fault = |error| vec![fault(index, &error)];
-        let notes: Vec<Note> = string.string.notes(contacts[index]).map_err(fault)?;
-        let mut own = 0.0;
-        for &fret in &string.frets {
-            let error = notes[fret].error_cents;
-            own += error * error;
-            if error.abs() > row.max_cents {
-                (row.max_cents, row.worst_string, row.worst_fret) =
-                    (error.abs(), index as u32 + 1, fret as u32 + 1);
+    let mut all = Squares::default();
+    for (index, &at) in contacts.iter().enumerate() {
+        let mut own = Squares::default();
+        for (set, (weight, string)) in prepared.cases(index).enumerate() {
+            let fault = |error| vec![fault(index, &error)];
+            let notes: Vec<Note> = string.string.notes(at).map_err(fault)?;
+            for &fret in &string.frets {
+                let error = notes[fret].error_cents;
+                own.add(weight, error);
+                if error.abs() > row.max_cents {
+                    row.max_cents = error.abs();
+                    (row.worst_string, row.worst_fret) = (index as u32 + 1, fret as u32 + 1);
+                    row.worst_alternative = (set > 0).then_some(set as u32);
+                }
             }
         }
-        squares += own;
-        count += string.frets.len();
-        row.string_rms_cents.push((own / string.frets.len().max(1) as f64).sqrt());
+        row.string_rms_cents.push(own.root_mean());
+        all.join(own);
     }
-    row.rms_cents = (squares / count.max(1) as f64).sqrt();
+    row.rms_cents = all.root_mean();
     Ok(row)
 }

@@ -21,6 +21,8 @@ pub const END_MARGIN_MM: f64 = 4.0;
 pub const SADDLE_TRAVEL_MM: [f64; 2] = [-5.0, 15.0];
 /// Travel of a nut edge, mm.
 pub const NUT_TRAVEL_MM: [f64; 2] = [0.0, 3.0];
+/// What the errors of a set of strings count against those of another.
+pub const ALTERNATIVE_WEIGHT: f64 = 1.0;
 /// First and last fret of the fit.
 pub const FIT_FRETS: [u32; 2] = [1, 12];
 
@@ -150,6 +152,8 @@ impl Plan {
             supports: Supports::default(),
             slip: Slip::default(),
             strings,
+            strings_weight: ALTERNATIVE_WEIGHT,
+            alternatives: vec![],
             reference_hz: REFERENCE_HZ,
             fit: Fit::default(),
             targets: None,

@@ -5,7 +5,8 @@
 
 use serde::Serialize;
 
-use crate::Tolerances;
+use crate::alternative::is_usual_weight;
+use crate::{Alternative, Tolerances};
 
 /// The value of the key `format` in every plan file.
 pub const FORMAT: &str = "crestline-plan";
@@ -29,6 +30,12 @@ pub struct Plan {
     pub slip: Slip,
     /// One to sixteen strings, string 1 (treble) first.
     pub strings: Vec<PlanString>,
+    /// What the errors of these strings count against those of the alternatives, 0.01 to 100.
+    #[serde(skip_serializing_if = "is_usual_weight")]
+    pub strings_weight: f64,
+    /// Other sets of strings and other tunings that the saddle must suit too.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub alternatives: Vec<Alternative>,
     /// Pitch of A4 in hertz, against which notes are read.
     pub reference_hz: f64,
     /// What the setbacks are to make small, and over which frets.

@@ -21,6 +21,7 @@
 //! # Ok::<(), String>(())
 //! ```
 
+mod alternative;
 mod bench;
 mod check;
 mod compare;
@@ -40,6 +41,7 @@ mod words;
 mod workshop;
 mod write;
 
+pub use alternative::{Alternative, OtherStrings};
 pub use bench::{BenchLayout, BenchPiece, BenchString, bench_layout, bench_layout_from, datum_x_mm};
 pub use check::{Checked, check};
 pub use compare::compare;

@@ -124,6 +124,11 @@ pub const ACTION_TWELFTH_MM: Range = Range::new(0.0, 25.0, "mm");
 /// Length of string behind nut or saddle.
 pub const AFTERLENGTH_MM: Range = Range::new(0.0, 2000.0, "mm");
 
+/// Most alternatives to the plan's own strings.
+pub const ALTERNATIVES: usize = 12;
+/// Weight of a set of strings against another: less counts for nothing, and more leaves nothing to the others.
+pub const ALTERNATIVE_WEIGHT: Range = Range::new(0.01, 100.0, "");
+
 /// Target offset from equal temperament.
 pub const TARGET_CENTS: Range = Range::new(-50.0, 50.0, "cents");
 /// Thickness of a saddle blank.

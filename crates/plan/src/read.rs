@@ -1,5 +1,6 @@
 //! From a file's text to a [`Plan`], with every fault of the text found.
 
+mod alternatives;
 mod instrument;
 mod making;
 mod migrate;
@@ -24,6 +25,8 @@ const KEYS: &[&str] = &[
     "supports",
     "slip",
     "strings",
+    "strings_weight",
+    "alternatives",
     "reference_hz",
     "fit",
     "targets",
@@ -79,6 +82,13 @@ fn plan(root: &Spot) -> Plan {
         supports: fields.get("supports").if_given(making::supports).unwrap_or_default(),
         slip: fields.get("slip").if_given(making::slip).unwrap_or_default(),
         strings: fields.get("strings").list("a list of strings", strings::string),
+        strings_weight: fields
+            .get("strings_weight")
+            .number_or(&limits::ALTERNATIVE_WEIGHT, defaults::ALTERNATIVE_WEIGHT),
+        alternatives: fields
+            .get("alternatives")
+            .if_given(|spot| spot.list("a list of alternatives", |spot, _| alternatives::alternative(spot)))
+            .unwrap_or_default(),
         reference_hz: fields.get("reference_hz").number_or(&limits::REFERENCE_HZ, defaults::REFERENCE_HZ),
         fit: fields.get("fit").if_given(making::fit).unwrap_or_default(),
         targets: fields.get("targets").optional(making::targets),

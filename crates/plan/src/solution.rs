@@ -27,6 +27,9 @@ pub struct Report {
     pub saddle: SaddleReport,
     /// Pull of all strings together, N.
     pub total_tension_n: f64,
+    /// How the setbacks suit every set of strings, the plan's own first; absent where the plan names no alternatives.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub alternatives: Vec<SetReport>,
     /// What the user should know about the result.
     pub notices: Vec<Notice>,
 }
@@ -58,12 +61,66 @@ pub struct StringReport {
     pub bending_length_mm: f64,
     /// Inharmonicity coefficient of the pinned open string.
     pub inharmonicity: f64,
-    /// The best contacts for this string alone.
+    /// The best contacts for this string alone; with alternatives those that suit its place in all sets together. The errors
+    /// are the plan's own string's.
     pub ideal: ContactReport,
     /// The contacts that the saddle style gives.
     pub built: BuiltReport,
     /// One entry a fret, fret 1 first.
     pub frets: Vec<FretReport>,
+}
+
+/// How the setbacks as built suit one set of strings.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct SetReport {
+    /// Its name: the title of the plan, or that of the alternative.
+    pub name: String,
+    /// What it counts against the others.
+    pub weight: f64,
+    /// Pull of all its strings together, N.
+    pub total_tension_n: f64,
+    /// Root mean square of its errors as built over all strings and the frets of the fit, cents.
+    pub rms_cents: f64,
+    /// Largest absolute one, cents.
+    pub max_cents: f64,
+    /// One entry a string, string 1 first.
+    pub strings: Vec<SetStringReport>,
+}
+
+/// One string of a set.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct SetStringReport {
+    /// String number, 1 first.
+    pub string: u32,
+    /// Its name.
+    pub name: String,
+    /// Pitch of the open string, Hz.
+    pub frequency_hz: f64,
+    /// Tension of the open string with no setback, N.
+    pub tension_n: f64,
+    /// Tension over breaking load; absent where the tensile strength is not given.
+    pub breaking_fraction: Option<f64>,
+    /// The best contacts for this string of this set alone.
+    pub ideal: ContactReport,
+    /// The contacts as built, which all sets share, and what they leave of this string's errors.
+    pub built: ContactReport,
+    /// One entry a fret, fret 1 first.
+    pub frets: Vec<SetFretReport>,
+}
+
+/// One fretted note of a set.
+#[derive(Debug, Clone, Copy, PartialEq, Serialize)]
+pub struct SetFretReport {
+    /// Fret number.
+    pub fret: u32,
+    /// Error with no setback at all, cents.
+    pub none_cents: f64,
+    /// Error with this string's own ideal setbacks, cents.
+    pub ideal_cents: f64,
+    /// Error with the built setbacks, cents.
+    pub built_cents: f64,
+    /// The fret that the sounding part of the string touches with no setback, if it buzzes.
+    pub touches_fret: Option<u32>,
 }
 
 /// Setbacks and what is left of the errors.
@@ -242,17 +299,20 @@ pub struct ComparisonRow {
     pub nut: NutStyle,
     /// Strings on the first piece of a two-piece saddle.
     pub split_after: Option<u32>,
-    /// Root mean square over all strings and the frets of the fit, cents.
+    /// Root mean square over all strings and the frets of the fit, cents; with alternatives the weighted one over all sets.
     pub rms_cents: f64,
-    /// Largest absolute error over all strings and the frets of the fit, cents.
+    /// Largest absolute error over all strings of all sets and the frets of the fit, cents.
     pub max_cents: f64,
+    /// The alternative with the largest error, 1 first; absent for the plan's own strings.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub worst_alternative: Option<u32>,
     /// The string with the largest error.
     pub worst_string: u32,
     /// The fret with the largest error.
     pub worst_fret: u32,
     /// Whether every crest fits the blank and the travel.
     pub fits: bool,
-    /// Root mean square of every string, cents.
+    /// Root mean square of every string, cents; with alternatives the weighted one over all sets.
     pub string_rms_cents: Vec<f64>,
     /// Crest setback of every string, mm.
     pub saddle_setback_mm: Vec<f64>,

@@ -3,6 +3,7 @@
 //! [`prepare`] hands the plan to the physics; [`fit`] finds the setbacks; the rest puts
 //! figures, layout and notices together. [`crate::compare`] shares the first.
 
+mod alternatives;
 mod layout;
 mod notices;
 mod prepare;
@@ -12,8 +13,8 @@ use crestline_physics::PhysicsError;
 use crestline_physics::fit::{FitOptions, Setbacks, built_setbacks, ideal_setbacks};
 
 use crate::{Checked, Fault, Solution};
-pub(crate) use prepare::{Prepared, PreparedString, fault, fit_options, prepare};
-pub(crate) use report::left_over;
+pub(crate) use prepare::{Prepared, PreparedString, fault, fit_options, prepare, prepare_own};
+pub(crate) use report::{Squares, left_over_of};
 
 /// Ideal and built setbacks for one pair of styles.
 struct Fitted {
@@ -28,8 +29,10 @@ struct Fitted {
 pub fn solve(checked: &Checked) -> Result<Solution, Vec<Fault>> {
     let prepared = prepare(checked)?;
     let plan = checked.plan();
-    let fitted = fit(&prepared, &fit_options(plan, plan.saddle.style, plan.nut.style))?;
+    let options = fit_options(plan, plan.saddle.style, plan.nut.style);
+    let fitted = fit(&prepared, &options)?;
     let mut report = report::report(checked, &prepared, &fitted)?;
+    report.alternatives = alternatives::alternatives(checked, &prepared, &fitted, &options)?;
     report.notices = notices::notices(checked, &prepared, &fitted, &report);
     let layout = layout::layout(checked, &prepared, &fitted);
     Ok(Solution { report, layout })

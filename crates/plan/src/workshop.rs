@@ -13,6 +13,9 @@
 //! * the **nut**: its one setback, or that of every string; a plain nut has nothing to round.
 //!
 //! A value within its travel is rounded to the nearest multiple within it, and stands unrounded where there is none.
+//!
+//! Where the plan names alternatives, errors are those of all sets together, weighted as in the fit; what a slip costs is
+//! said of the plan's own strings.
 
 mod rounding;
 mod sensitivity;
@@ -20,7 +23,7 @@ mod sensitivity;
 use crestline_physics::{Contacts, Note};
 use serde::{Serialize, Serializer};
 
-use crate::solve::{Prepared, PreparedString, fault, left_over, prepare};
+use crate::solve::{Prepared, fault, left_over_of, prepare};
 use crate::{Checked, ContactReport, Fault, Solution, Word};
 use rounding::Rounded;
 
@@ -151,7 +154,7 @@ pub fn workshop(checked: &Checked, solution: &Solution, step: Step) -> Result<Wo
     let prepared = prepare(checked)?;
     let rounded = rounding::round(checked, solution, step)?;
     let strings = (0..prepared.strings.len())
-        .map(|index| one_string(&prepared.strings[index], solution, index, &rounded))
+        .map(|index| one_string(&prepared, solution, index, &rounded))
         .collect::<Result<Vec<_>, Fault>>()
         .map_err(|fault| vec![fault])?;
     let built_rms_cents = pooled(&prepared, strings.iter().map(|string| string.built.rms_cents));
@@ -174,7 +177,7 @@ pub fn workshop(checked: &Checked, solution: &Solution, step: Step) -> Result<Wo
 }
 
 fn one_string(
-    own: &PreparedString,
+    prepared: &Prepared,
     solution: &Solution,
     index: usize,
     rounded: &Rounded,
@@ -184,11 +187,21 @@ fn one_string(
         saddle_setback_mm: report.built.saddle_setback_mm,
         nut_setback_mm: report.built.nut_setback_mm,
     };
-    let notes_at = |contacts| own.string.notes(contacts).map_err(|error| fault(index, &error));
+    let notes_at = |contacts| {
+        let sets = prepared.cases(index).map(|(_, own)| own.string.notes(contacts));
+        sets.collect::<Result<Vec<_>, _>>().map_err(|error| fault(index, &error))
+    };
     let (before, after) = (notes_at(built)?, notes_at(rounded.contacts[index])?);
-    let change = |&fret: &usize| (after[fret].error_cents - before[fret].error_cents).abs();
-    let of_built = contact_report(own, built, &before);
-    let of_rounded = contact_report(own, rounded.contacts[index], &after);
+    let mut largest_change_cents = 0.0;
+    for (set, (_, own)) in prepared.cases(index).enumerate() {
+        for &fret in &own.frets {
+            let change = after[set][fret].error_cents - before[set][fret].error_cents;
+            largest_change_cents = f64::max(largest_change_cents, change.abs());
+        }
+    }
+    let of_built = contact_report(prepared, index, built, &before);
+    let of_rounded = contact_report(prepared, index, rounded.contacts[index], &after);
+    let sensitivity = sensitivity::sensitivity(&prepared.strings[index], built);
     Ok(WorkshopString {
         string: report.string,
         name: report.name.clone(),
@@ -196,24 +209,31 @@ fn one_string(
         rounded: of_rounded,
         slot_offset_mm: rounded.slot_offset_mm[index],
         rms_change_cents: of_rounded.rms_cents - of_built.rms_cents,
-        largest_change_cents: own.frets.iter().map(change).fold(0.0, f64::max),
-        sensitivity: sensitivity::sensitivity(own, built).map_err(|error| fault(index, &error))?,
+        largest_change_cents,
+        sensitivity: sensitivity.map_err(|error| fault(index, &error))?,
     })
 }
 
 /// Root mean square over all strings from that of each, weighted by the frets of the fit that sound.
 fn pooled(prepared: &Prepared, rms_cents: impl Iterator<Item = f64>) -> f64 {
     let (mut squares, mut count) = (0.0, 0.0);
-    for (own, rms_cents) in prepared.strings.iter().zip(rms_cents) {
-        let frets = own.frets.len() as f64;
+    for (index, rms_cents) in rms_cents.enumerate() {
+        let frets: f64 = prepared.cases(index).map(|(weight, own)| weight * own.frets.len() as f64).sum();
         squares += frets * rms_cents * rms_cents;
         count += frets;
     }
-    (squares / f64::max(count, 1.0)).sqrt()
+    if count > 0.0 { f64::sqrt(squares / count) } else { 0.0 }
 }
 
-fn contact_report(own: &PreparedString, contacts: Contacts, notes: &[Note]) -> ContactReport {
-    let (rms_cents, max_cents) = left_over(own, notes);
+fn contact_report(
+    prepared: &Prepared,
+    index: usize,
+    contacts: Contacts,
+    notes: &[Vec<Note>],
+) -> ContactReport {
+    let sets = prepared.cases(index).zip(notes);
+    let (rms_cents, max_cents) =
+        left_over_of(sets.map(|((weight, own), notes)| (weight, own, notes.as_slice())));
     ContactReport {
         saddle_setback_mm: contacts.saddle_setback_mm,
         nut_setback_mm: contacts.nut_setback_mm,

@@ -45,6 +45,11 @@ fn mutated() -> impl Strategy<Value = String> {
     let change = (any::<prop::sample::Index>(), odd_value(), 0..4_u8);
     (0..EXAMPLES.len(), prop::collection::vec(change, 1..6)).prop_map(|(example, changes)| {
         let mut value: Value = serde_json::from_str(EXAMPLES[example].text).unwrap();
+        if example % 2 == 0 {
+            let pitches = vec![json!({"note": "D3"}); value["strings"].as_array().map_or(0, Vec::len)];
+            value["alternatives"] =
+                json!([{"name": "a", "strings": value["strings"].clone()}, {"name": "b", "pitches": pitches}]);
+        }
         for (place, odd, how) in changes {
             let mut all = vec![];
             pointers(&value, "", &mut all);

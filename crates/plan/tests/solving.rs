@@ -34,7 +34,10 @@ fn assert_finite(value: &Value, key: &str, path: &str) {
 fn assert_slack(faults: &[Fault]) {
     assert!(!faults.is_empty());
     for fault in faults {
-        let of_a_pitch = fault.path.starts_with("strings[") && fault.path.ends_with("].pitch");
+        let set = fault.path.strip_prefix("alternatives[").and_then(|rest| rest.split_once("]."));
+        let path = set.map_or(fault.path.as_str(), |(_, path)| path);
+        let of_a_pitch = (path.starts_with("strings[") && path.ends_with("].pitch"))
+            || (set.is_some() && path.starts_with("pitches[") && path.ends_with(']'));
         assert!(of_a_pitch && fault.found.contains("even when slack"), "{fault}");
         assert!(!fault.allowed.is_empty(), "{fault:?}");
     }

@@ -54,6 +54,31 @@ fn every_table_of_every_style_fits_the_page() {
 }
 
 #[test]
+fn several_sets_of_strings_have_a_table_each() {
+    let mut plan: Value = serde_json::from_str(example("steel_six")).unwrap();
+    let long = "a set with a name that is much too long for any heading of a table on a page of this width";
+    plan["alternatives"] = json!([
+        {"name": long, "strings": plan["strings"].clone()},
+        {"name": "dropped sixth", "weight": 0.5, "pitches": [null, null, null, null, null, {"note": "D2"}]}
+    ]);
+    plan["nut"] = json!({"style": "shaped"});
+    for arguments in TABLES {
+        let ran = crestline(arguments, &plan.to_string());
+        assert_eq!(ran.status, 0, "{arguments:?}: {}", ran.err);
+        assert_fits(&ran.out);
+    }
+    let solved = crestline(&["solve", "-"], &plan.to_string()).out;
+    assert!(solved.contains("dropped sixth, weight 0.5"), "{solved}");
+    // D2 is 73.42 Hz in equal temperament on A4 = 440 Hz (ISO 16:1975, computed).
+    let row = solved.lines().find(|line| line.contains("73.42"));
+    assert!(row.is_some_and(|row| row.trim_start().starts_with("6  E2")), "{solved}");
+    let frets = crestline(&["solve", "--frets", "-"], &plan.to_string()).out;
+    assert!(frets.contains("dropped sixth: string 6, E2"), "{frets}");
+    let compared = crestline(&["compare", "-"], &plan.to_string()).out;
+    assert!(compared.contains("of all sets, weighted"), "{compared}");
+}
+
+#[test]
 fn bench_and_workshop_give_json_of_their_own_kind() {
     for (command, format) in [("bench", "crestline-bench"), ("workshop", "crestline-workshop")] {
         for name in example_names() {

@@ -43,15 +43,15 @@ fn number(value: &Value) -> f64 {
 }
 
 /// The distance of two numbers, none where both are absent.
-fn apart(found: &Value, expected: &Value) -> f64 {
+pub(super) fn apart(found: &Value, expected: &Value) -> f64 {
     if found.is_null() && expected.is_null() { 0.0 } else { number(found) - number(expected) }
 }
 
-fn relative(found: &Value, expected: &Value) -> f64 {
+pub(super) fn relative(found: &Value, expected: &Value) -> f64 {
     apart(found, expected) / number(expected).abs().max(f64::MIN_POSITIVE)
 }
 
-fn list(value: &Value) -> &[Value] {
+pub(super) fn list(value: &Value) -> &[Value] {
     value.as_array().map_or(&[], Vec::as_slice)
 }
 
@@ -223,7 +223,7 @@ fn is_settled(wanted: &Value, contacts: &str) -> bool {
     wanted[format!("{contacts}_settled")].as_bool().unwrap_or(true)
 }
 
-fn contacts(
+pub(super) fn contacts(
     setbacks: &mut Tally,
     errors: &mut Tally,
     place: &str,

@@ -1,6 +1,6 @@
 //! Adding, removing and moving strings: the lists that run beside `strings` move along with it.
 
-use crestline_plan::{Plan, PlanString, SaddleStyle};
+use crestline_plan::{OtherStrings, Plan, PlanString, SaddleStyle};
 
 /// The most strings that a plan holds.
 pub const MOST_STRINGS: usize = 16;
@@ -15,6 +15,12 @@ pub fn duplicate(plan: &mut Plan, index: usize) {
 fn insert(plan: &mut Plan, index: usize, string: PlanString) {
     if plan.strings.len() >= MOST_STRINGS {
         return;
+    }
+    for alternative in &mut plan.alternatives {
+        match &mut alternative.other {
+            OtherStrings::Strings(strings) => strings.insert(index.min(strings.len()), string.clone()),
+            OtherStrings::Pitches(pitches) => pitches.insert(index.min(pitches.len()), None),
+        }
     }
     plan.strings.insert(index, string);
     for_lists(plan, |list| list.insert(index.min(list.len()), between(list, index)));
@@ -43,6 +49,13 @@ pub fn remove(plan: &mut Plan, index: usize) {
         return;
     }
     plan.strings.remove(index);
+    for alternative in &mut plan.alternatives {
+        match &mut alternative.other {
+            OtherStrings::Strings(strings) if index < strings.len() => drop(strings.remove(index)),
+            OtherStrings::Pitches(pitches) if index < pitches.len() => drop(pitches.remove(index)),
+            _ => {}
+        }
+    }
     for_lists(plan, |list| {
         if index < list.len() {
             list.remove(index);
@@ -66,6 +79,13 @@ pub fn swap(plan: &mut Plan, a: usize, b: usize) {
         return;
     }
     plan.strings.swap(a, b);
+    for alternative in &mut plan.alternatives {
+        match &mut alternative.other {
+            OtherStrings::Strings(strings) if a.max(b) < strings.len() => strings.swap(a, b),
+            OtherStrings::Pitches(pitches) if a.max(b) < pitches.len() => pitches.swap(a, b),
+            _ => {}
+        }
+    }
     for own in numbers(plan) {
         let index = (*own as usize).wrapping_sub(1);
         if index == a {
@@ -84,7 +104,12 @@ pub fn swap(plan: &mut Plan, a: usize, b: usize) {
 
 /// Names that are mere numbers follow the order; a split stays inside the strings.
 fn renumber(plan: &mut Plan) {
-    for (index, string) in plan.strings.iter_mut().enumerate() {
+    let sets = plan.alternatives.iter_mut().filter_map(|alternative| match &mut alternative.other {
+        OtherStrings::Strings(strings) => Some(strings),
+        OtherStrings::Pitches(_) => None,
+    });
+    let all = std::iter::once(&mut plan.strings).chain(sets);
+    for (index, string) in all.flat_map(|strings| strings.iter_mut().enumerate()) {
         if string.name.parse::<u32>().is_ok() {
             string.name = (index + 1).to_string();
         }
@@ -127,7 +152,9 @@ fn for_lists(plan: &mut Plan, mut change: impl FnMut(&mut Vec<f64>)) {
 mod tests {
     #![allow(clippy::unwrap_used)]
     use super::*;
-    use crestline_plan::{AsBuilt, OwnTolerance, Reading, ReadingKind, Tolerances, check, example, read};
+    use crestline_plan::{
+        Alternative, AsBuilt, OwnTolerance, Reading, ReadingKind, Tolerances, check, example, read,
+    };
 
     fn mandolin() -> Plan {
         let mut plan = read(example("mandolin").unwrap().text).unwrap();
@@ -139,6 +166,10 @@ mod tests {
         let own =
             |string| OwnTolerance { string, pitch_cents: Some(f64::from(string)), ..OwnTolerance::default() };
         plan.tolerances = Some(Tolerances { strings: (1..=8).map(own).collect(), ..Tolerances::default() });
+        plan.alternatives = vec![
+            Alternative::new("set", OtherStrings::Strings(plan.strings.clone())),
+            Alternative::new("tuning", OtherStrings::Pitches(vec![None; 8])),
+        ];
         plan
     }
 

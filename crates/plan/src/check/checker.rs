@@ -17,6 +17,11 @@ impl<'u> Checker<'u> {
         Self { faults: vec![], unread }
     }
 
+    /// The places that hold a stand-in.
+    pub(super) fn unread(&self) -> &'u [String] {
+        self.unread
+    }
+
     pub(super) fn into_faults(self) -> Vec<Fault> {
         self.faults
     }

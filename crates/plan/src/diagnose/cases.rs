@@ -5,7 +5,7 @@ use crestline_physics::diagnose::{Measurement, Sounded, StringCase};
 use crestline_physics::fit::{FitRule, ideal_setbacks};
 use crestline_physics::neck::PlanLine;
 
-use crate::solve::{fit_options, no_setbacks, prepare};
+use crate::solve::{fit_options, no_setbacks, prepare_own};
 use crate::{Checked, Fault, Plan, Reading, ReadingKind, SaddleStyle};
 
 /// Every string with its readings.
@@ -17,9 +17,10 @@ pub(super) struct Cases {
 }
 
 /// Makes the strings of a checked plan ready. Where the plan does not say where the crests are, they are expected
-/// where its strings want them: a maker will have tried.
+/// where its strings want them: a maker will have tried. Readings are of the plan's own strings, whatever alternatives it
+/// names.
 pub(super) fn cases(checked: &Checked) -> Result<Cases, Vec<Fault>> {
-    let prepared = prepare(checked)?;
+    let prepared = prepare_own(checked)?;
     let plan = checked.plan();
     let mut options = fit_options(plan, SaddleStyle::Separate, plan.nut.style);
     options.rule = FitRule::LeastSquares;

@@ -22,7 +22,7 @@ pub(super) fn string(spot: &Spot, index: usize) -> PlanString {
     }
 }
 
-fn pitch(spot: &Spot) -> Pitch {
+pub(super) fn pitch(spot: &Spot) -> Pitch {
     let fields = spot.object(&["note", "frequency_hz"]);
     match (fields.has("note"), fields.has("frequency_hz")) {
         (true, false) => {

@@ -5,8 +5,8 @@ use serde_json::{Value, json};
 
 use super::*;
 use crate::{
-    Afterlength, CoreShape, Datum, FitRule, Measured, NutStyle, Pitch, ReadingKind, SaddleStyle, Scale,
-    Tolerances, Units, check, example, write,
+    Afterlength, Alternative, CoreShape, Datum, FitRule, Measured, NutStyle, OtherStrings, Pitch,
+    ReadingKind, SaddleStyle, Scale, Tolerances, Units, check, example, write,
 };
 
 /// The shortest legal plan: two strings and no key that may be left out.
@@ -101,6 +101,11 @@ fn every_key_of_the_format_is_read() {
         "action_mm": {"twelfth": 2.1}, "afterlength_mm": {"head": 100, "tail": 20}
     });
     full["strings"][1]["action_mm"] = json!({"first": null, "twelfth": 2.1});
+    full["strings_weight"] = json!(2.5);
+    full["alternatives"] = json!([
+        {"name": "e", "weight": 0.5, "strings": full["strings"].clone()},
+        {"name": "f", "pitches": [null, {"note": "D2"}]}
+    ]);
     full["reference_hz"] = json!(442);
     full["fit"] = json!({"rule": "minimax", "frets": [2, 14]});
     full["targets"] = json!({"open_cents": [1, -1], "pitch_class_cents": [0,1,2,3,4,5,6,7,8,9,10,11]});
@@ -133,11 +138,15 @@ fn every_key_of_the_format_is_read() {
     assert_eq!(plan.strings[0].core.shape, CoreShape::Hex);
     assert_eq!(plan.saddle.style, SaddleStyle::TwoPiece);
     assert_eq!(plan.targets.as_ref().unwrap().pitch_class_cents[11], 11.0);
+    assert_eq!(plan.alternatives[0].other, OtherStrings::Strings(plan.strings.clone()));
+    let tuning = [None, Some(Pitch::Note("D2".to_owned()))];
+    assert_eq!(plan.alternatives[1], Alternative::new("f", OtherStrings::Pitches(tuning.to_vec())));
     assert_eq!(plan.readings[0].kind, ReadingKind::OctaveHarmonic);
     // What is written holds every key and value of what was read, but for keys that say "nothing".
     let written: Value = serde_json::from_str(&write(&plan)).unwrap();
     full["instrument"].as_object_mut().unwrap().remove("fret_positions_mm");
     full["strings"][1]["action_mm"] = json!({"twelfth": 2.1});
+    full["alternatives"][0]["strings"][1]["action_mm"] = json!({"twelfth": 2.1});
     assert_held(&full, &written, "");
 }
 
@@ -241,7 +250,6 @@ fn required_keys() {
 fn unknown_and_repeated_keys() {
     for (pointer, path) in [
         ("/extra", "extra"),
-        ("/alternatives", "alternatives"),
         ("/instrument/scale", "instrument.scale"),
         ("/strings/1/core/colour", "strings[1].core.colour"),
         ("/saddle/a b", "saddle.\"a b\""),
@@ -336,6 +344,25 @@ fn wrong_types_and_words() {
             "targets.pitch_class_cents",
             "a list of 1",
             "twelve",
+        ),
+        ("/strings_weight", json!("1"), "strings_weight", "\"1\"", "0.01 to 100"),
+        ("/alternatives", json!(1), "alternatives", "1", "a list of alternatives"),
+        ("/alternatives", json!([[]]), "alternatives[0]", "a list of 0", "name, weight, strings, pitches"),
+        ("/alternatives", json!([{"name": "a"}]), "alternatives[0]", "neither strings nor pitches", "one of"),
+        (
+            "/alternatives",
+            json!([{"name": "a", "strings": [], "pitches": []}]),
+            "alternatives[0]",
+            "both strings and pitches",
+            "one of",
+        ),
+        ("/alternatives", json!([{"pitches": [null, null]}]), "alternatives[0].name", "nothing", "a name"),
+        (
+            "/alternatives",
+            json!([{"name": "a", "pitches": [null, "D2"]}]),
+            "alternatives[0].pitches[1]",
+            "\"D2\"",
+            "note, frequency_hz",
         ),
         (
             "/readings",

@@ -7,7 +7,9 @@ use crestline_physics::fit::Setbacks;
 
 use super::Fitted;
 use super::prepare::{Prepared, PreparedString};
-use crate::{Checked, FitRule, Notice, NutStyle, Plan, Report, SaddleStyle, Severity};
+use crate::{
+    Alternative, Checked, FitRule, Notice, NutStyle, OtherStrings, Plan, Report, SaddleStyle, Severity,
+};
 
 /// Share of the breaking load above which a note, and above which a warning is due.
 const NOTE_FRACTION: f64 = 0.60;
@@ -28,8 +30,12 @@ pub(super) fn notices(
     let mut notices = checked.notices().to_vec();
     for (index, string) in prepared.strings.iter().enumerate() {
         buzzes(plan, index, string, &mut notices);
+        silence(plan, index, string, prepared.counts(index), &mut notices);
         tension(plan, index, string, &mut notices);
         finger_force(plan, index, string, &mut notices);
+    }
+    for (index, (own, set)) in checked.alternatives().iter().zip(&prepared.alternatives).enumerate() {
+        notices.extend(of_alternative(&plan.alternatives[index], index, own.plan(), &set.strings, prepared));
     }
     limits(plan, prepared, fitted, &mut notices);
     blank(plan, fitted, &mut notices);
@@ -45,6 +51,39 @@ pub(super) fn notices(
     }
     debug_assert!(report.total_tension_n.is_finite());
     notices
+}
+
+/// What is to be known of another set of strings; of another tuning, whose heights are the plan's own strings', only
+/// its tensions and forces.
+fn of_alternative(
+    alternative: &Alternative,
+    place: usize,
+    plan: &Plan,
+    strings: &[PreparedString],
+    prepared: &Prepared,
+) -> Vec<Notice> {
+    let mut notices = Vec::new();
+    for (index, string) in strings.iter().enumerate() {
+        if let OtherStrings::Strings(_) = alternative.other {
+            buzzes(plan, index, string, &mut notices);
+            silence(plan, index, string, prepared.counts(index), &mut notices);
+        }
+        let moved = match &alternative.other {
+            OtherStrings::Strings(_) => true,
+            OtherStrings::Pitches(pitches) => pitches.get(index).is_some_and(Option::is_some),
+        };
+        if moved {
+            tension(plan, index, string, &mut notices);
+            finger_force(plan, index, string, &mut notices);
+        }
+    }
+    let name = alternative.name.trim();
+    let outside = |notice: Notice| Notice {
+        path: alternative.outer_path(place, &notice.path).unwrap_or(notice.path),
+        text: format!("{name}: {}", notice.text),
+        ..notice
+    };
+    notices.into_iter().map(outside).collect()
 }
 
 fn note(path: impl Into<String>, text: impl Into<String>) -> Notice {
@@ -67,7 +106,9 @@ fn edge(plan: &Plan, prepared: &Prepared, setbacks: &Setbacks) -> Option<String>
     /// How far to look beyond the last step, mm.
     const FURTHER_MM: f64 = 0.01;
     let reach_mm = setbacks.last_step_mm + FURTHER_MM;
-    for (index, (string, at)) in prepared.strings.iter().zip(&setbacks.contacts).enumerate() {
+    let places = setbacks.contacts.iter().enumerate();
+    let strings = places.flat_map(|(index, at)| prepared.cases(index).map(move |(_, own)| (index, own, at)));
+    for (index, string, at) in strings {
         for (saddle_mm, nut_mm) in [(reach_mm, 0.0), (-reach_mm, 0.0), (0.0, reach_mm), (0.0, -reach_mm)] {
             let beyond = Contacts {
                 saddle_setback_mm: at.saddle_setback_mm + saddle_mm,
@@ -102,13 +143,22 @@ fn buzzes(plan: &Plan, index: usize, string: &PreparedString, notices: &mut Vec<
         );
         notices.push(warning(format!("strings[{index}].action_mm"), text));
     }
+}
+
+/// Says so where no note of a string counts, and whether others at its place do.
+fn silence(plan: &Plan, index: usize, string: &PreparedString, others: bool, notices: &mut Vec<Notice>) {
     if string.frets.is_empty() {
         let why = if plan.fit.rule == FitRule::Twelfth && !string.twelfth_sounds {
             "its note at fret 12 buzzes"
         } else {
             "every note of the fit buzzes"
         };
-        let text = format!("no setback is proposed for {}: {why}", called(plan, index));
+        let whose = called(plan, index);
+        let text = if others {
+            format!("{whose} does not count in the fit: {why}")
+        } else {
+            format!("no setback is proposed for {whose}: {why}")
+        };
         notices.push(warning(format!("strings[{index}].action_mm"), text));
     }
 }
@@ -149,7 +199,7 @@ fn limits(plan: &Plan, prepared: &Prepared, fitted: &Fitted, notices: &mut Vec<N
     for (words, setbacks) in [("ideal", &fitted.ideal), ("built", &fitted.built)] {
         let same = words == "built" && plan.saddle.style == SaddleStyle::Separate;
         for (index, contact) in setbacks.contacts.iter().enumerate() {
-            if same || prepared.strings[index].frets.is_empty() {
+            if same || !prepared.counts(index) {
                 continue;
             }
             let mut say = |path: &str, what: &str, value: f64| {

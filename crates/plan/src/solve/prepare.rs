@@ -1,6 +1,6 @@
 //! The plan as the physics sees it: every string made ready on its neck, with its notes before any setback.
 
-use crestline_physics::fit::{self, FitOptions, FitString, NutShape, SaddleShape};
+use crestline_physics::fit::{self, FitCase, FitOptions, FitString, NutShape, SaddleShape};
 use crestline_physics::fretting::{Fixities, NutHeight, Pressing, StringSetup, Tail};
 use crestline_physics::section::{self, Core, Overrides, Wrap, string_properties};
 use crestline_physics::{Contacts, FrettedString, Note, OpenString, PhysicsError, neck::PlanLine};
@@ -12,7 +12,17 @@ use crate::{
 
 /// A plan made ready.
 pub(crate) struct Prepared {
-    /// One a string, string 1 first.
+    /// The plan's own strings, string 1 first.
+    pub strings: Vec<PreparedString>,
+    /// What they count against the alternatives.
+    pub weight: f64,
+    /// The other sets that the saddle must suit.
+    pub alternatives: Vec<PreparedSet>,
+}
+
+/// An alternative made ready.
+pub(crate) struct PreparedSet {
+    pub weight: f64,
     pub strings: Vec<PreparedString>,
 }
 
@@ -31,20 +41,69 @@ pub(crate) struct PreparedString {
 }
 
 impl Prepared {
-    /// The strings for the fit; those whose notes all buzz keep their place without being fitted.
+    /// A place's string in every set, the plan's own first, each with the weight of its set.
+    pub fn cases(&self, index: usize) -> impl Iterator<Item = (f64, &PreparedString)> {
+        let others = self.alternatives.iter().map(move |set| (set.weight, &set.strings[index]));
+        std::iter::once((self.weight, &self.strings[index])).chain(others)
+    }
+
+    /// Whether a note of any set counts at this place.
+    pub fn counts(&self, index: usize) -> bool {
+        self.cases(index).any(|(_, string)| !string.frets.is_empty())
+    }
+
+    /// The strings for the fit in all sets; those whose notes all buzz keep their place without being fitted.
     pub fn fit_strings(&self) -> Vec<FitString<'_>> {
-        self.strings
-            .iter()
-            .map(|string| FitString::single(&string.string, string.line, string.frets.clone()))
-            .collect()
+        let cases = |index: usize| {
+            let cases = self.cases(index);
+            cases
+                .map(|(weight, own)| FitCase { string: &own.string, frets: own.frets.clone(), weight })
+                .collect()
+        };
+        let places = self.strings.iter().enumerate();
+        places.map(|(index, string)| FitString { line: string.line, cases: cases(index) }).collect()
     }
 }
 
-/// Makes every string ready.
+impl PreparedString {
+    /// The string for a fit by itself, whatever else the saddle must suit.
+    pub fn alone(&self) -> FitString<'_> {
+        FitString::single(&self.string, self.line, self.frets.clone())
+    }
+
+    /// Tension over breaking load; absent where the tensile strength is not given.
+    pub fn breaking_fraction(&self) -> Option<f64> {
+        self.breaking_load_n.map(|load_n| self.open.tension_n / load_n)
+    }
+}
+
+/// Makes every string of every set ready.
 ///
 /// # Errors
 /// Faults by path, one a string at most.
 pub(crate) fn prepare(checked: &Checked) -> Result<Prepared, Vec<Fault>> {
+    let mut prepared = prepare_own(checked)?;
+    let mut faults = Vec::new();
+    let plan = checked.plan();
+    for (index, (alternative, own)) in plan.alternatives.iter().zip(checked.alternatives()).enumerate() {
+        match prepare_own(own) {
+            Ok(set) => {
+                prepared.alternatives.push(PreparedSet { weight: alternative.weight, strings: set.strings })
+            }
+            Err(own) => faults.extend(own.into_iter().map(|fault| Fault {
+                path: alternative.outer_path(index, &fault.path).unwrap_or(fault.path),
+                ..fault
+            })),
+        }
+    }
+    if faults.is_empty() { Ok(prepared) } else { Err(faults) }
+}
+
+/// Makes the plan's own strings ready, without alternatives.
+///
+/// # Errors
+/// As [`prepare`].
+pub(crate) fn prepare_own(checked: &Checked) -> Result<Prepared, Vec<Fault>> {
     let mut faults = Vec::new();
     let mut strings = Vec::new();
     for index in 0..checked.plan().strings.len() {
@@ -53,7 +112,8 @@ pub(crate) fn prepare(checked: &Checked) -> Result<Prepared, Vec<Fault>> {
             Err(error) => faults.push(fault(index, &error)),
         }
     }
-    if faults.is_empty() { Ok(Prepared { strings }) } else { Err(faults) }
+    let (weight, alternatives) = (checked.plan().strings_weight, Vec::new());
+    if faults.is_empty() { Ok(Prepared { strings, weight, alternatives }) } else { Err(faults) }
 }
 
 fn prepare_string(checked: &Checked, index: usize) -> Result<PreparedString, PhysicsError> {

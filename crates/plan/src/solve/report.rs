@@ -26,6 +26,7 @@ pub(super) fn report(checked: &Checked, prepared: &Prepared, fitted: &Fitted) ->
             lines: fitted.built.lines.iter().map(saddle_line).collect(),
             fits: fitted.built.fits,
         },
+        alternatives: Vec::new(),
         notices: Vec::new(),
     })
 }
@@ -67,13 +68,6 @@ fn string_report(
         .collect();
     let properties = own.string.setup().properties;
     let stiffness = properties.bending_stiffness_n_mm2;
-    let (rms_cents, max_cents) = left_over(own, &ideal_notes);
-    let ideal_report = ContactReport {
-        saddle_setback_mm: ideal.saddle_setback_mm,
-        nut_setback_mm: ideal.nut_setback_mm,
-        rms_cents,
-        max_cents,
-    };
     Ok(StringReport {
         string: index as u32 + 1,
         name: plan.strings[index].name.clone(),
@@ -84,10 +78,10 @@ fn string_report(
         bending_stiffness_n_mm2: stiffness,
         tension_n: own.open.tension_n,
         strain: own.open.strain,
-        breaking_fraction: own.breaking_load_n.map(|load_n| own.open.tension_n / load_n),
+        breaking_fraction: own.breaking_fraction(),
         bending_length_mm: bending_length_mm(stiffness, own.open.tension_n),
         inharmonicity: inharmonicity(stiffness, own.open.tension_n, own.open.length_mm),
-        ideal: ideal_report,
+        ideal: contact_report(own, ideal, &ideal_notes),
         built: built_report(plan.saddle.style, own, fitted, index, &built_notes),
         frets,
     })
@@ -120,17 +114,63 @@ fn built_report(
     }
 }
 
+pub(super) fn contact_report(own: &PreparedString, at: Contacts, notes: &[Note]) -> ContactReport {
+    let (rms_cents, max_cents) = left_over(own, notes);
+    ContactReport {
+        saddle_setback_mm: at.saddle_setback_mm,
+        nut_setback_mm: at.nut_setback_mm,
+        rms_cents,
+        max_cents,
+    }
+}
+
 /// Offset from the line; a line for one string is as short as a point and has its crest on it.
 fn offset_from(line: [PlanPoint; 2], crest: PlanPoint) -> f64 {
     if line[0] == line[1] { 0.0 } else { offset_mm(line, crest) }
 }
 
 /// Root mean square and largest error over the frets of the fit; both 0 where none sounds.
-pub(crate) fn left_over(string: &PreparedString, notes: &[Note]) -> (f64, f64) {
-    let errors = string.frets.iter().map(|&fret| notes[fret].error_cents);
-    let count = string.frets.len().max(1) as f64;
-    let squares: f64 = errors.clone().map(|error| error * error).sum();
-    ((squares / count).sqrt(), errors.fold(0.0, |largest, error| largest.max(error.abs())))
+fn left_over(string: &PreparedString, notes: &[Note]) -> (f64, f64) {
+    left_over_of([(1.0, string, notes)])
+}
+
+/// Root mean square, weighted, and largest error over the frets of the fit of one string in several sets, each with
+/// its weight and its notes.
+pub(crate) fn left_over_of<'a>(
+    cases: impl IntoIterator<Item = (f64, &'a PreparedString, &'a [Note])>,
+) -> (f64, f64) {
+    let (mut squares, mut largest) = (Squares::default(), 0.0);
+    for (weight, string, notes) in cases {
+        for &fret in &string.frets {
+            squares.add(weight, notes[fret].error_cents);
+            largest = f64::max(largest, notes[fret].error_cents.abs());
+        }
+    }
+    (squares.root_mean(), largest)
+}
+
+/// A weighted sum of squares.
+#[derive(Debug, Clone, Copy, Default)]
+pub(crate) struct Squares {
+    sum: f64,
+    weights: f64,
+}
+
+impl Squares {
+    pub fn add(&mut self, weight: f64, error: f64) {
+        self.sum += weight * (error * error);
+        self.weights += weight;
+    }
+
+    pub fn join(&mut self, other: Self) {
+        self.sum += other.sum;
+        self.weights += other.weights;
+    }
+
+    /// The root of their weighted mean; 0 where there is none.
+    pub fn root_mean(self) -> f64 {
+        if self.weights > 0.0 { (self.sum / self.weights).sqrt() } else { 0.0 }
+    }
 }
 
 fn saddle_line(&[treble, bass]: &[PlanPoint; 2]) -> SaddleLine {

@@ -3,9 +3,10 @@
 
 use crestline_plan::limits::{self, Range};
 use crestline_plan::{
-    Across, Action, Afterlength, AsBuilt, Core, CoreShape, Datum, Fan, Fit, FitRule, Instrument, Measured,
-    Nut, NutStyle, OwnTolerance, Paper, Pitch, Plan, PlanString, Pressing, Reading, ReadingKind, Saddle,
-    SaddleStyle, Scale, Sheet, Slip, Spread, Supports, Targets, Tolerances, Units, Word, check,
+    Across, Action, Afterlength, Alternative, AsBuilt, Core, CoreShape, Datum, Fan, Fit, FitRule, Instrument,
+    Measured, Nut, NutStyle, OtherStrings, OwnTolerance, Paper, Pitch, Plan, PlanString, Pressing, Reading,
+    ReadingKind, Saddle, SaddleStyle, Scale, Sheet, Slip, Spread, Supports, Targets, Tolerances, Units, Word,
+    check,
 };
 use proptest::collection::vec;
 use proptest::option;
@@ -229,6 +230,20 @@ fn rest(strings: usize, frets: u32) -> BoxedStrategy<Rest> {
     (fit, nut, option::of(targets), option::of(built), vec(reading(strings, frets), 0..5), last).boxed()
 }
 
+/// None to two other sets or tunings, none as often as some.
+fn alternatives(strings: usize, zero_fret: bool) -> BoxedStrategy<Vec<Alternative>> {
+    let other = prop_oneof![
+        vec(string(zero_fret), strings).prop_map(OtherStrings::Strings),
+        vec(option::of(pitch()), strings).prop_map(OtherStrings::Pitches),
+    ];
+    let some = vec((over_orders(limits::ALTERNATIVE_WEIGHT), other), 1..3).prop_map(|others| {
+        let alternative =
+            |(number, (weight, other))| Alternative { name: format!("set {number}"), weight, other };
+        others.into_iter().enumerate().map(alternative).collect()
+    });
+    prop_oneof![Just(vec![]), some].boxed()
+}
+
 /// Any legal plan.
 pub fn legal_plan() -> BoxedStrategy<Plan> {
     let sized = prop_oneof![3 => 1..=8_usize, 1 => 9..=16_usize];
@@ -239,39 +254,45 @@ pub fn legal_plan() -> BoxedStrategy<Plan> {
                 (text(), text(), within(limits::REFERENCE_HZ)),
                 Just(instrument),
                 touch(),
-                vec(string(zero_fret), strings),
+                (vec(string(zero_fret), strings), alternatives(strings, zero_fret)),
+                over_orders(limits::ALTERNATIVE_WEIGHT),
                 saddle(strings),
                 rest(strings, frets),
             )
         },
     );
-    let plan = plan.prop_map(|((title, notes, reference_hz), instrument, touch, strings, saddle, rest)| {
-        let (pressing, supports, slip) = touch;
-        let (fit, nut, targets, as_built, readings, (sheet, tolerances)) = rest;
-        Plan {
-            title,
-            notes,
-            instrument,
-            pressing,
-            supports,
-            slip,
-            strings,
-            reference_hz,
-            fit,
-            targets,
-            saddle,
-            nut,
-            as_built,
-            readings,
-            sheet,
-            tolerances,
-        }
-    });
+    let plan = plan.prop_map(
+        |((title, notes, reference_hz), instrument, touch, sets, strings_weight, saddle, rest)| {
+            let (pressing, supports, slip) = touch;
+            let (strings, alternatives) = sets;
+            let (fit, nut, targets, as_built, readings, (sheet, tolerances)) = rest;
+            Plan {
+                title,
+                notes,
+                instrument,
+                pressing,
+                supports,
+                slip,
+                strings,
+                strings_weight,
+                alternatives,
+                reference_hz,
+                fit,
+                targets,
+                saddle,
+                nut,
+                as_built,
+                readings,
+                sheet,
+                tolerances,
+            }
+        },
+    );
     plan.prop_filter("some fans, frets and actions do not go together", |plan| check(plan).is_ok()).boxed()
 }
 
 /// A legal plan with strings that a maker could have put on: steel or polymer, plain or wound, of a section that
-/// brings the pitch at 20 to 150 N; relief up to 0.3 mm, actions of 0.2 to 0.8 mm and 1.5 to 4 mm.
+/// brings the pitch at 20 to 150 N; relief up to 0.3 mm, actions of 0.2 to 0.8 mm and 1.5 to 4 mm; no alternatives.
 pub fn likely_plan() -> BoxedStrategy<Plan> {
     let string = (20.0..150.0_f64, any::<bool>(), any::<bool>(), 0.2..0.8, 1.5..4.0);
     let likely = (legal_plan(), vec(string, 16), 0.0..0.3, 0.0..0.2, 0.2..0.6).prop_map(
@@ -281,6 +302,7 @@ pub fn likely_plan() -> BoxedStrategy<Plan> {
                 Scale::Fanned(fan) => fan.treble,
             };
             plan.instrument.relief_mm = relief_mm;
+            plan.alternatives.clear();
             plan.pressing = Pressing { finger_fraction, depth_mm };
             for (string, (tension_n, steel, wound, first, twelfth)) in plan.strings.iter_mut().zip(strings) {
                 // The open string of 650 mm at 330 Hz and its like at other scales.

@@ -14,4 +14,5 @@ pub mod repair;
 pub mod results;
 pub mod shell;
 pub mod theme;
+pub mod units;
 pub mod view;

@@ -8,6 +8,7 @@ use crate::papers::preview::Preview;
 use crate::repair::state::Repair;
 use crate::results::camera::Camera;
 use crate::results::error_plot::ErrorChoice;
+use crate::units::LengthUnit;
 
 /// The pages of the window.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -183,6 +184,8 @@ pub struct View {
     pub page: Page,
     /// Light or dark.
     pub theme: ThemeChoice,
+    /// The unit of all lengths in the window; the drawing has its own.
+    pub unit: LengthUnit,
     /// Whether the inputs are shown.
     pub inputs: bool,
     /// The chosen string, 0 first.
@@ -218,6 +221,7 @@ impl View {
         Self {
             page: Page::Saddle,
             theme: ThemeChoice::default(),
+            unit: LengthUnit::default(),
             inputs: true,
             string: 0,
             folded: BTreeSet::from([Group::About, Group::Pressing, Group::Nut, Group::Fit, Group::Sheet]),

@@ -66,7 +66,7 @@ fn a_wrong_number_marks_its_field_and_keeps_the_last_good_result() {
     assert_eq!(setback(&opened, 5), before);
     assert!(field(&opened, "Scale, mm").accesskit_node().data().invalid().is_some());
     assert_eq!(says(&opened, "Shown is the last good result"), 1);
-    assert!(says(&opened, "“64x” is not a number") >= 2, "at the field and in the list");
+    assert!(says(&opened, "“64x” is not a length") >= 2, "at the field and in the list");
     assert_eq!(plan(&opened), &steel_six(), "no half-typed number stays in the plan");
     assert_eq!(opened.state().desk.history().undo_name(), None, "and nothing is there to undo");
 

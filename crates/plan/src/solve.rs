@@ -13,7 +13,9 @@ use crestline_physics::PhysicsError;
 use crestline_physics::fit::{FitOptions, Setbacks, built_setbacks, ideal_setbacks};
 
 use crate::{Checked, Fault, Solution};
-pub(crate) use prepare::{Prepared, PreparedString, fault, fit_options, prepare, prepare_own};
+pub(crate) use prepare::{
+    Prepared, PreparedString, core as physics_core, fault, fit_options, prepare, prepare_own,
+};
 pub(crate) use report::{Squares, left_over_of};
 
 /// Ideal and built setbacks for one pair of styles.

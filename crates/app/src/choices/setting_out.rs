@@ -1,20 +1,29 @@
 //! Figures for setting out: setbacks in the maker's step with what that costs, what a slip costs, and every crest
 //! and slot end from the datum.
 
+use std::borrow::Cow;
+
 use crestline_plan::{BenchPiece, Datum, Step, Word, WorkshopString};
 use eframe::egui::{RichText, Ui, WidgetInfo, accesskit};
 
 use super::study::Figures;
 use crate::edit::command::Command;
-use crate::results::figures::{fixed, mm};
+use crate::results::figures::fixed;
 use crate::results::table::{self, Cell, Column, Row};
 use crate::theme::{Palette, size};
+use crate::units::LengthUnit;
 
-const fn column(head: &'static str) -> Column {
-    Column { head, share: 1.0, is_text: false }
+/// The slip for which the cost is given, mm and inches: what a careful hand keeps to in either unit.
+const SLIP_MM: f64 = 0.1;
+const SLIP_INCHES: f64 = 0.005;
+
+fn column(head: impl Into<Cow<'static, str>>) -> Column {
+    Column::figures(head, 1.0)
 }
 
-const NAME: Column = Column { head: "String", share: 1.3, is_text: true };
+fn name_column() -> Column {
+    Column::words("String", 1.3)
+}
 
 /// The part of the page.
 pub fn show(
@@ -39,7 +48,7 @@ pub fn show(
         chosen = chosen.or(clicked);
     });
     for piece in &figures.bench.pieces {
-        ui.label(piece_words(piece, figures.bench.pieces.len()));
+        ui.label(piece_words(piece, figures.bench.pieces.len(), LengthUnit::of(ui.ctx())));
     }
     chosen.map(Command::ChooseString).into_iter().collect()
 }
@@ -67,6 +76,7 @@ fn steps(ui: &mut Ui, step: &mut Step) {
 
 fn cost(ui: &mut Ui, palette: &Palette, figures: &Figures) {
     let workshop = &figures.workshop;
+    let unit = LengthUnit::of(ui.ctx());
     let text = format!(
         "In steps of {}: root mean square {} → {} cents, worst {} → {}; no note changes by more than {} cents.",
         workshop.step.word(),
@@ -79,10 +89,10 @@ fn cost(ui: &mut Ui, palette: &Palette, figures: &Figures) {
     ui.label(text);
     for line in &workshop.lines {
         let text = format!(
-            "Line from {} mm at string {} to {} mm at string {}.",
-            mm(line.treble_setback_mm),
+            "Line from {} at string {} to {} at string {}.",
+            unit.words(line.treble_setback_mm),
             line.treble_string,
-            mm(line.bass_setback_mm),
+            unit.words(line.bass_setback_mm),
             line.bass_string
         );
         ui.label(RichText::new(text).color(palette.quiet));
@@ -90,24 +100,30 @@ fn cost(ui: &mut Ui, palette: &Palette, figures: &Figures) {
 }
 
 fn rounded(ui: &mut Ui, palette: &Palette, figures: &Figures, string: usize) -> Option<usize> {
+    let unit = LengthUnit::of(ui.ctx());
+    let figure = |length_mm| unit.figure(length_mm);
+    let (slip, tenths) = match unit {
+        LengthUnit::Millimetres => (format!("{SLIP_MM} mm"), 1.0),
+        LengthUnit::Inches => (format!("{SLIP_INCHES} in"), unit.to_mm(SLIP_INCHES) / SLIP_MM),
+    };
     let columns = [
-        NAME,
-        column("Setback\nbuilt, mm"),
-        column("Setback\nset out, mm"),
-        column("Nut\nset out, mm"),
+        name_column(),
+        column(unit.named("Setback\nbuilt")),
+        column(unit.named("Setback\nset out")),
+        column(unit.named("Nut\nset out")),
         column("RMS change\ncents"),
-        column("Crest slip\ncents/0.1 mm"),
-        column("Nut slip\ncents/0.1 mm"),
+        column(format!("Crest slip\ncents/{slip}")),
+        column(format!("Nut slip\ncents/{slip}")),
     ];
     let row = |string: &WorkshopString| {
         let cells = [
             name(string.string, &string.name),
-            mm(string.built.saddle_setback_mm),
-            mm(string.rounded.saddle_setback_mm),
-            mm(string.rounded.nut_setback_mm),
+            figure(string.built.saddle_setback_mm),
+            figure(string.rounded.saddle_setback_mm),
+            figure(string.rounded.nut_setback_mm),
             fixed(string.rms_change_cents, 2),
-            fixed(string.sensitivity.crest_cents_per_tenth_mm, 2),
-            fixed(string.sensitivity.nut_cents_per_tenth_mm, 2),
+            fixed(string.sensitivity.crest_cents_per_tenth_mm * tenths, 2),
+            fixed(string.sensitivity.nut_cents_per_tenth_mm * tenths, 2),
         ];
         in_row(&columns, cells)
     };
@@ -116,13 +132,15 @@ fn rounded(ui: &mut Ui, palette: &Palette, figures: &Figures, string: usize) -> 
 }
 
 fn bench(ui: &mut Ui, palette: &Palette, figures: &Figures, string: usize) -> Option<usize> {
+    let unit = LengthUnit::of(ui.ctx());
+    let figure = |length_mm| unit.figure(length_mm);
     let columns = [
-        NAME,
-        column("Crest\nx, mm"),
-        column("\ny, mm"),
-        column("\nz, mm"),
-        column("Drop to\nnext, mm"),
-        column("Break from\nface, mm"),
+        name_column(),
+        column(unit.named("Crest\nx")),
+        column(unit.named("\ny")),
+        column(unit.named("\nz")),
+        column(unit.named("Drop to\nnext")),
+        column(unit.named("Break from\nface")),
         column("of the\nthickness, %"),
     ];
     let rows: Vec<Row> = figures
@@ -132,11 +150,11 @@ fn bench(ui: &mut Ui, palette: &Palette, figures: &Figures, string: usize) -> Op
         .map(|string| {
             let cells = [
                 name(string.string, &string.name),
-                mm(string.crest_mm.x),
-                mm(string.crest_mm.y),
-                mm(string.crest_mm.z),
-                string.drop_to_next_mm.map_or_else(|| "—".to_owned(), mm),
-                mm(string.break_from_front_mm),
+                figure(string.crest_mm.x),
+                figure(string.crest_mm.y),
+                figure(string.crest_mm.z),
+                string.drop_to_next_mm.map_or_else(|| "—".to_owned(), figure),
+                figure(string.break_from_front_mm),
                 fixed(100.0 * string.break_fraction, 0),
             ];
             in_row(&columns, cells)
@@ -167,16 +185,18 @@ fn datum_words(datum: Datum) -> &'static str {
     }
 }
 
-fn piece_words(piece: &BenchPiece, count: usize) -> String {
+fn piece_words(piece: &BenchPiece, count: usize, unit: LengthUnit) -> String {
+    let figure = |length_mm| unit.figure(length_mm);
     let called = if count == 1 { "Blank".to_owned() } else { format!("Blank {}", piece.piece) };
     format!(
-        "{called}: {} × {} mm, centre line from x {}, y {} to x {}, y {}; slant {}°.",
-        mm(piece.length_mm),
-        mm(piece.thickness_mm),
-        mm(piece.treble_end_mm.x),
-        mm(piece.treble_end_mm.y),
-        mm(piece.bass_end_mm.x),
-        mm(piece.bass_end_mm.y),
-        mm(piece.slant_degrees),
+        "{called}: {} × {} {}, centre line from x {}, y {} to x {}, y {}; slant {}°.",
+        figure(piece.length_mm),
+        figure(piece.thickness_mm),
+        unit.sign(),
+        figure(piece.treble_end_mm.x),
+        figure(piece.treble_end_mm.y),
+        figure(piece.bass_end_mm.x),
+        figure(piece.bass_end_mm.y),
+        fixed(piece.slant_degrees, 2),
     )
 }

@@ -7,6 +7,7 @@ use crestline_sheets::Format;
 use eframe::egui::{Key, KeyboardShortcut, Modifiers};
 
 use crate::repair::block::Filling;
+use crate::units::LengthUnit;
 use crate::view::{Group, Page, ThemeChoice};
 
 /// Something to do. Menus, buttons and keys make commands; `shell::obey` carries them out.
@@ -62,6 +63,8 @@ pub enum Command {
     GoTo(String),
     /// Light, dark, or as the system has it.
     Theme(ThemeChoice),
+    /// Show all lengths in this unit.
+    ShowLengthsIn(LengthUnit),
     /// Larger text.
     LargerText,
     /// Smaller text.
@@ -108,6 +111,7 @@ impl Command {
             Self::Fold(group) => group.name().into(),
             Self::GoTo(path) => format!("Go to {path}"),
             Self::Theme(choice) => choice.name().into(),
+            Self::ShowLengthsIn(unit) => format!("Lengths in {}", unit.name().to_lowercase()),
             Self::LargerText => "Larger text".into(),
             Self::SmallerText => "Smaller text".into(),
             Self::UsualText => "Usual text size".into(),
@@ -132,6 +136,7 @@ impl Command {
             Self::SmallerText => (Modifiers::COMMAND, Key::Minus),
             Self::UsualText => (Modifiers::COMMAND, Key::Num0),
             Self::ResetPlots => (Modifiers::COMMAND, Key::R),
+            Self::ShowLengthsIn(_) => (Modifiers::COMMAND, Key::M),
             _ => return None,
         };
         Some(KeyboardShortcut::new(modifiers, key))

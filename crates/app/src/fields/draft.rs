@@ -3,18 +3,20 @@
 use std::collections::BTreeMap;
 
 /// The text of a field that cannot be shown from the plan alone.
-#[derive(Debug, Clone, PartialEq, Eq)]
+#[derive(Debug, Clone, PartialEq)]
 pub struct Draft {
     /// The text as typed.
     pub text: String,
     /// The text that stood there before; the plan keeps its value while what is typed cannot be read.
     pub start: String,
+    /// The lengths that `start` shows, mm, where the field is for lengths: its text may show less than the plan holds.
+    pub start_mm: Option<Vec<f64>>,
     /// What is wrong with it, where it could not be taken into the plan.
     pub error: Option<String>,
 }
 
 /// The drafts by path of their field.
-#[derive(Debug, Clone, Default, PartialEq, Eq)]
+#[derive(Debug, Clone, Default, PartialEq)]
 pub struct Drafts(BTreeMap<String, Draft>);
 
 impl Drafts {
@@ -27,6 +29,13 @@ impl Drafts {
     /// Keeps what is typed in a field.
     pub fn keep(&mut self, path: &str, draft: Draft) {
         self.0.insert(path.to_owned(), draft);
+    }
+
+    /// Keeps the lengths with which the typing in a field began.
+    pub fn keep_start_mm(&mut self, path: &str, start_mm: Vec<f64>) {
+        if let Some(draft) = self.0.get_mut(path) {
+            draft.start_mm = Some(start_mm);
+        }
     }
 
     /// Forgets what was typed in a field.

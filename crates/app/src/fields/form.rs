@@ -7,6 +7,7 @@ use super::draft::{Draft, Drafts};
 use crate::edit::command::Command;
 use crate::edit::history::Edit;
 use crate::theme::{Palette, size};
+use crate::units::{LengthUnit, fault_words};
 
 /// The surroundings of the fields during one frame.
 pub struct Form<'a> {
@@ -16,6 +17,8 @@ pub struct Form<'a> {
     pub drafts: &'a mut Drafts,
     /// The path of the field to go to, until it has been found.
     pub going_to: &'a mut Option<String>,
+    /// The unit of lengths.
+    pub unit: LengthUnit,
     /// Colours.
     pub palette: &'static Palette,
     /// The change made in this frame.
@@ -33,8 +36,9 @@ impl<'a> Form<'a> {
         drafts: &'a mut Drafts,
         going_to: &'a mut Option<String>,
         palette: &'static Palette,
+        unit: LengthUnit,
     ) -> Self {
-        Self { faults, drafts, going_to, palette, edit: None, left: false, commands: Vec::new() }
+        Self { faults, drafts, going_to, unit, palette, edit: None, left: false, commands: Vec::new() }
     }
 
     /// Notes that a panel has changed the plan at once.
@@ -47,7 +51,12 @@ impl<'a> Form<'a> {
     #[must_use]
     pub fn error(&self, path: &str) -> Option<String> {
         let typed = self.drafts.get(path).and_then(|draft| draft.error.clone());
-        typed.or_else(|| self.faults.iter().find(|fault| belongs(&fault.path, path)).map(words))
+        typed.or_else(|| {
+            self.faults
+                .iter()
+                .find(|fault| belongs(&fault.path, path))
+                .map(|fault| fault_words(fault, self.unit))
+        })
     }
 
     /// Everything that is wrong at `path` and inside it, in words.
@@ -55,13 +64,24 @@ impl<'a> Form<'a> {
     pub fn errors_inside(&self, path: &str) -> Vec<String> {
         let typed =
             self.drafts.errors().filter(|(typed, _)| inside(typed, path)).map(|(_, error)| error.to_owned());
-        typed.chain(self.faults.iter().filter(|fault| inside(&fault.path, path)).map(words)).collect()
+        typed
+            .chain(
+                self.faults
+                    .iter()
+                    .filter(|fault| inside(&fault.path, path))
+                    .map(|fault| fault_words(fault, self.unit)),
+            )
+            .collect()
     }
 
     /// What is wrong at exactly `path`, in words.
     #[must_use]
     pub fn errors_at(&self, path: &str) -> Vec<String> {
-        self.faults.iter().filter(|fault| fault.path == path).map(words).collect()
+        self.faults
+            .iter()
+            .filter(|fault| fault.path == path)
+            .map(|fault| fault_words(fault, self.unit))
+            .collect()
     }
 
     /// The frame of the field `id`, which shows whether it is wrong or has the focus.
@@ -108,12 +128,6 @@ fn belongs(fault_path: &str, path: &str) -> bool {
         (is_entry || is_member) && rest.matches(['[', '.']).count() == 1
     });
     inside(fault_path, path) || part
-}
-
-/// A fault in words, without its path.
-#[must_use]
-pub fn words(fault: &Fault) -> String {
-    format!("{}; allowed: {}", fault.found, fault.allowed)
 }
 
 /// A path in words: `strings[2].core.diameter_mm` becomes `String 3, core diameter`.

@@ -6,6 +6,11 @@ use super::draft::Draft;
 use super::form::Form;
 use super::parse;
 use crate::theme::size;
+use crate::units::{self, Fineness};
+
+/// The keys held down with an arrow key, and the steps that it then makes.
+const STEPS: [(Modifiers, f64); 3] =
+    [(Modifiers::SHIFT, 10.0), (Modifiers::ALT, 0.1), (Modifiers::NONE, 1.0)];
 
 /// What a number field is for.
 #[derive(Debug, Clone)]
@@ -16,8 +21,10 @@ pub struct Spec<'a> {
     pub name: String,
     /// What it is and how it is measured, shown when the pointer rests on it.
     pub help: &'a str,
-    /// How far the arrow keys step; zero for a field that is not a number.
+    /// How far the arrow keys step, for a length in millimetres; zero for a field that is not a number.
     pub step: f64,
+    /// How a length is written in inches.
+    pub fineness: Fineness,
     /// Width on screen.
     pub width: f32,
     /// Shown while the field is empty.
@@ -36,11 +43,18 @@ impl<'a> Spec<'a> {
             name: name.into(),
             help,
             step,
+            fineness: Fineness::Decimals,
             width: size::FIELD,
             hint: "",
             align: Align::RIGHT,
             place: "",
         }
+    }
+
+    /// The same for a length that the trade names in fractions of an inch.
+    #[must_use]
+    pub fn fractions(self) -> Self {
+        Self { fineness: Fineness::Fractions, ..self }
     }
 
     /// The same with another width.
@@ -80,6 +94,41 @@ pub fn number(ui: &mut Ui, form: &mut Form, spec: &Spec, value: &mut f64) -> Res
     typed(ui, form, spec, &shown, parse::number, |new| *value = new)
 }
 
+/// A field for a length in the unit of the window; its name gets the unit.
+pub fn length(ui: &mut Ui, form: &mut Form, spec: &Spec, value_mm: &mut f64) -> Response {
+    length_if(ui, form, spec, value_mm, |_| Ok(()))
+}
+
+/// The same for a length in millimetres that has to pass a check.
+pub fn length_if(
+    ui: &mut Ui,
+    form: &mut Form,
+    spec: &Spec,
+    value_mm: &mut f64,
+    check: impl Fn(f64) -> Result<(), String>,
+) -> Response {
+    let unit = form.unit;
+    let shown = unit.shown(*value_mm, spec.fineness);
+    let draft = form.drafts.get(&spec.path);
+    let start_mm = draft.and_then(|draft| draft.start_mm.as_ref()?.first().copied()).unwrap_or(*value_mm);
+    let start = draft.map_or_else(|| shown.clone(), |draft| draft.start.clone());
+    // The text that stood there means the length that stood there, whole, however little of it was shown.
+    let read = |text: &str| {
+        if text == start {
+            return Ok(start_mm);
+        }
+        let length_mm = units::read(text, unit)?;
+        check(length_mm).map_err(|error| units::in_unit(&error, unit))?;
+        Ok(length_mm)
+    };
+    let number = |text: &str| read(text).ok().map(|length_mm| unit.from_mm(length_mm));
+    let spec = Spec { name: unit.named(&spec.name), step: unit.step(spec.step), ..spec.clone() };
+    let stepper = Stepper { number: &number, shown: &parse::shown };
+    let response = typed_in_steps(ui, form, &spec, &shown, read, |new| *value_mm = new, &stepper);
+    form.drafts.keep_start_mm(&spec.path, vec![start_mm]);
+    response
+}
+
 /// A field for a number that may be left empty.
 pub fn optional(ui: &mut Ui, form: &mut Form, spec: &Spec, value: &mut Option<f64>) -> Response {
     let shown = value.map(parse::shown).unwrap_or_default();
@@ -105,9 +154,28 @@ pub fn typed<T>(
     read: impl Fn(&str) -> Result<T, String>,
     take: impl FnOnce(T),
 ) -> Response {
+    let number = |text: &str| parse::number(text).ok();
+    typed_in_steps(ui, form, spec, shown, read, take, &Stepper { number: &number, shown: &parse::shown })
+}
+
+/// How the arrow keys read the number in a field's text and write it again.
+struct Stepper<'a> {
+    number: &'a dyn Fn(&str) -> Option<f64>,
+    shown: &'a dyn Fn(f64) -> String,
+}
+
+fn typed_in_steps<T>(
+    ui: &mut Ui,
+    form: &mut Form,
+    spec: &Spec,
+    shown: &str,
+    read: impl Fn(&str) -> Result<T, String>,
+    take: impl FnOnce(T),
+    stepper: &Stepper,
+) -> Response {
     let id = spec.id();
     let mut text = form.drafts.get(&spec.path).map_or_else(|| shown.to_owned(), |draft| draft.text.clone());
-    let stepped = step(ui, id, spec.step, &mut text);
+    let stepped = step(ui, id, spec.step, &mut text, stepper);
     let error = form.error(&spec.path);
     let response = text_box(ui, form, spec, id, &mut text, error.is_some());
     describe(&response, spec, error.as_deref());
@@ -116,7 +184,7 @@ pub fn typed<T>(
     if response.changed() || stepped {
         let start = form.drafts.get(&spec.path).map_or_else(|| shown.to_owned(), |draft| draft.start.clone());
         let error = read_or_go_back(&text, &start, read, take).err();
-        form.typed(&spec.path, &spec.name, id, Draft { text, start, error });
+        form.typed(&spec.path, &spec.name, id, Draft { text, start, start_mm: None, error });
     } else if response.lost_focus() {
         form.left = true;
         if form.drafts.get(&spec.path).is_some_and(|draft| draft.error.is_none()) {
@@ -159,26 +227,20 @@ fn tip(response: Response, spec: &Spec, error: Option<String>) -> Response {
 }
 
 /// Steps the number in `text` by the arrow keys; true if it has been stepped.
-fn step(ui: &Ui, id: Id, step: f64, text: &mut String) -> bool {
+fn step(ui: &Ui, id: Id, step: f64, text: &mut String, stepper: &Stepper) -> bool {
     if step == 0.0 || !ui.memory(|memory| memory.has_focus(id)) {
         return false;
     }
-    let (up, down, large) = ui.input_mut(|input| {
-        let large = input.modifiers.shift;
-        let modifiers = if large { Modifiers::SHIFT } else { Modifiers::NONE };
-        (
-            input.count_and_consume_key(modifiers, Key::ArrowUp),
-            input.count_and_consume_key(modifiers, Key::ArrowDown),
-            large,
-        )
+    let by: f64 = ui.input_mut(|input| {
+        let mut pressed = |modifiers, key| input.count_and_consume_key(modifiers, key) as f64;
+        // A key pressed with more modifiers also matches fewer, so the plain keys come last.
+        STEPS
+            .iter()
+            .map(|(keys, size)| size * (pressed(*keys, Key::ArrowUp) - pressed(*keys, Key::ArrowDown)))
+            .sum()
     });
-    if up == down {
-        return false;
-    }
-    let Ok(value) = parse::number(text) else { return false };
-    let steps = up as f64 - down as f64;
-    let by = if large { 10.0 * step } else { step };
-    *text = parse::shown(rounded(value + steps * by, step));
+    let Some(value) = (stepper.number)(text).filter(|_| by != 0.0) else { return false };
+    *text = (stepper.shown)(rounded(value + by * step, step));
     true
 }
 

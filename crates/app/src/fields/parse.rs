@@ -59,7 +59,7 @@ pub fn shown_list(values: &[f64]) -> String {
 }
 
 /// The first twenty characters, so that a message stays a message.
-fn shorten(text: &str) -> String {
+pub fn shorten(text: &str) -> String {
     const MOST: usize = 20;
     if text.chars().count() <= MOST {
         return text.to_owned();

@@ -20,25 +20,25 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
         number::whole(ui, form, &spec, &mut plan.instrument.frets);
     });
     faults(ui, form, &["instrument.frets"]);
-    millimetres(
+    length(
         ui,
         form,
         "Relief",
         &Spec::new(
             "instrument.relief_mm",
-            "Relief, mm",
+            "Relief",
             0.05,
             "Greatest dip of the fret crowns below a straightedge laid from the first crown to the last.",
         ),
         &mut plan.instrument.relief_mm,
     );
-    millimetres(
+    length(
         ui,
         form,
         "Fret height",
         &Spec::new(
             "instrument.fret_height_mm",
-            "Fret height, mm",
+            "Fret height",
             0.05,
             "Height of the crowns above the fingerboard. A string cannot be pressed deeper than this.",
         ),
@@ -49,11 +49,11 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
     measured_frets(ui, form, plan);
 }
 
-/// A line with one field in millimetres.
-pub fn millimetres(ui: &mut Ui, form: &mut Form, label: &str, spec: &Spec, value: &mut f64) {
+/// A line with one field for a length.
+pub fn length(ui: &mut Ui, form: &mut Form, label: &str, spec: &Spec, value: &mut f64) {
     row(ui, label, |ui| {
-        number::number(ui, form, spec, value);
-        unit(ui, form, "mm");
+        number::length(ui, form, spec, value);
+        unit(ui, form, form.unit.sign());
     });
     faults(ui, form, &[&spec.path]);
 }
@@ -73,8 +73,8 @@ fn scale(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
         Scale::Single(scale_mm) => {
             let help = "From the nominal nut line to the nominal saddle line, twice the way from the nut to fret 12. \
                         Without any compensation.";
-            let spec = Spec::new("instrument.scale_mm", "Scale, mm", 0.5, help);
-            millimetres(ui, form, "Scale", &spec, scale_mm);
+            let spec = Spec::new("instrument.scale_mm", "Scale", 0.5, help).fractions();
+            length(ui, form, "Scale", &spec, scale_mm);
         }
         Scale::Fanned(fan) => {
             fan_fields(ui, form, fan);
@@ -85,10 +85,10 @@ fn scale(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
 
 fn fan_fields(ui: &mut Ui, form: &mut Form, fan: &mut Fan) {
     let along = "Measured along the outer string's own line.";
-    let treble = Spec::new("instrument.scale_mm.treble", "Scale on the treble side, mm", 0.5, along);
-    millimetres(ui, form, "Scale, treble side", &treble, &mut fan.treble);
-    let bass = Spec::new("instrument.scale_mm.bass", "Scale on the bass side, mm", 0.5, along);
-    millimetres(ui, form, "Scale, bass side", &bass, &mut fan.bass);
+    let treble = Spec::new("instrument.scale_mm.treble", "Scale on the treble side", 0.5, along).fractions();
+    length(ui, form, "Scale, treble side", &treble, &mut fan.treble);
+    let bass = Spec::new("instrument.scale_mm.bass", "Scale on the bass side", 0.5, along).fractions();
+    length(ui, form, "Scale, bass side", &bass, &mut fan.bass);
     row(ui, "Square fret", |ui| {
         let help = "The fret that lies square to the centre line; it may be a fraction between two frets.";
         let spec = Spec::new("instrument.scale_mm.square_fret", "Square fret", 0.5, help);
@@ -143,11 +143,11 @@ fn measured_frets(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
     if let Some(positions) = positions {
         let spec = Spec::new(
             "instrument.fret_positions_mm",
-            "Measured fret positions, mm",
+            "Measured fret positions",
             0.0,
             "Distance of every fret's crown from the nominal nut line along the centre line, fret 1 first.",
         );
-        lists::numbers(ui, form, &spec, positions);
+        lists::lengths(ui, form, &spec, positions);
     }
     faults(ui, form, &["instrument.fret_positions_mm"]);
 }

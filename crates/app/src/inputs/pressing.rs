@@ -3,7 +3,7 @@
 use crestline_plan::{Plan, Supports};
 use eframe::egui::Ui;
 
-use super::instrument::millimetres;
+use super::instrument::length;
 use crate::fields::choice::{self, Choice};
 use crate::fields::form::Form;
 use crate::fields::number::{self, Spec};
@@ -43,8 +43,8 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
         &mut plan.pressing.finger_fraction,
     );
     let help = "How far the finger pushes the string below the crown. 0 is a touch that only just seats it.";
-    let depth = Spec::new("pressing.depth_mm", "Press depth, mm", 0.05, help);
-    millimetres(ui, form, "Press depth", &depth, &mut plan.pressing.depth_mm);
+    let depth = Spec::new("pressing.depth_mm", "Press depth", 0.05, help);
+    length(ui, form, "Press depth", &depth, &mut plan.pressing.depth_mm);
     supports(ui, form, &mut plan.supports);
     let gripped = "0 where the string is gripped, 1 where it slides without friction while it is pressed.";
     fraction(

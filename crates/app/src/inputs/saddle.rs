@@ -3,7 +3,7 @@
 use crestline_plan::{AsBuilt, Plan, SaddleStyle};
 use eframe::egui::Ui;
 
-use super::instrument::millimetres;
+use super::instrument::length;
 use super::lists;
 use crate::fields::choice::{self, Choice};
 use crate::fields::form::Form;
@@ -44,14 +44,14 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
     faults(ui, form, &["saddle.split_after"]);
     let thickness = Spec::new(
         "saddle.thickness_mm",
-        "Thickness of the blank, mm",
+        "Thickness of the blank",
         0.1,
         "Thickness of the saddle blank along the strings.",
     );
-    millimetres(ui, form, "Blank thickness", &thickness, &mut plan.saddle.thickness_mm);
+    length(ui, form, "Blank thickness", &thickness, &mut plan.saddle.thickness_mm);
     let help = "What is left in front of and behind a filed crest on the blank's top.";
-    let margin = Spec::new("saddle.edge_margin_mm", "Margin at the blank's edges, mm", 0.1, help);
-    millimetres(ui, form, "Edge margin", &margin, &mut plan.saddle.edge_margin_mm);
+    let margin = Spec::new("saddle.edge_margin_mm", "Margin at the blank's edges", 0.1, help);
+    length(ui, form, "Edge margin", &margin, &mut plan.saddle.edge_margin_mm);
     travel(ui, form, "saddle.travel_mm", "Crest setback", &mut plan.saddle.travel_mm);
     as_built(ui, form, plan);
 }
@@ -61,13 +61,13 @@ pub fn travel(ui: &mut Ui, form: &mut Form, path: &str, name: &str, travel_mm: &
     let [least, greatest] = travel_mm;
     row(ui, &format!("{name} from"), |ui| {
         let help = "The least setback that the bridge or fingerboard allows.";
-        let spec = Spec::new(format!("{path}[0]"), format!("{name}, least, mm"), 0.5, help).width(56.0);
-        number::number(ui, form, &spec, least);
+        let spec = Spec::new(format!("{path}[0]"), format!("{name}, least"), 0.5, help).width(56.0);
+        number::length(ui, form, &spec, least);
         ui.label("to");
         let help = "The greatest setback that the bridge or fingerboard allows.";
-        let spec = Spec::new(format!("{path}[1]"), format!("{name}, greatest, mm"), 0.5, help).width(56.0);
-        number::number(ui, form, &spec, greatest);
-        unit(ui, form, "mm");
+        let spec = Spec::new(format!("{path}[1]"), format!("{name}, greatest"), 0.5, help).width(56.0);
+        number::length(ui, form, &spec, greatest);
+        unit(ui, form, form.unit.sign());
     });
     faults(ui, form, &[path]);
 }
@@ -85,12 +85,12 @@ fn as_built(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
         }
     });
     if let Some(built) = &mut plan.as_built {
-        let help = "Setback of every crest as it is now in millimetres, string 1 first.";
-        let spec = Spec::new("as_built.saddle_setback_mm", "Crests as they are, mm", 0.0, help);
-        lists::labelled(ui, form, "Crests now, mm", &spec, &mut built.saddle_setback_mm);
-        let help = "Setback of every nut edge as it is now in millimetres, string 1 first.";
-        let spec = Spec::new("as_built.nut_setback_mm", "Nut edges as they are, mm", 0.0, help);
-        lists::labelled(ui, form, "Nut edges now, mm", &spec, &mut built.nut_setback_mm);
+        let help = "Setback of every crest as it is now, string 1 first.";
+        let spec = Spec::new("as_built.saddle_setback_mm", "Crests as they are", 0.0, help);
+        lists::labelled_lengths(ui, form, "Crests now", &spec, &mut built.saddle_setback_mm);
+        let help = "Setback of every nut edge as it is now, string 1 first.";
+        let spec = Spec::new("as_built.nut_setback_mm", "Nut edges as they are", 0.0, help);
+        lists::labelled_lengths(ui, form, "Nut edges now", &spec, &mut built.nut_setback_mm);
     }
     faults(ui, form, &["as_built"]);
 }

@@ -3,7 +3,7 @@
 use crestline_plan::{Across, Plan, Spread};
 use eframe::egui::Ui;
 
-use super::instrument::millimetres;
+use super::instrument::length;
 use super::lists;
 use crate::fields::choice::{self, Choice};
 use crate::fields::form::Form;
@@ -35,21 +35,21 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
 fn spread_fields(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
     let Some(spread) = &mut plan.instrument.spread_mm else { return };
     let help = "Distance of the outer strings' centres, square to the centre line.";
-    let nut = Spec::new("instrument.spread_mm.nut", "Outer strings apart at the nut, mm", 0.5, help);
-    millimetres(ui, form, "Outer strings, nut", &nut, &mut spread.nut);
-    let saddle = Spec::new("instrument.spread_mm.saddle", "Outer strings apart at the saddle, mm", 0.5, help);
-    millimetres(ui, form, "Outer strings, saddle", &saddle, &mut spread.saddle);
+    let nut = Spec::new("instrument.spread_mm.nut", "Outer strings apart at the nut", 0.5, help).fractions();
+    length(ui, form, "Outer strings, nut", &nut, &mut spread.nut);
+    let saddle =
+        Spec::new("instrument.spread_mm.saddle", "Outer strings apart at the saddle", 0.5, help).fractions();
+    length(ui, form, "Outer strings, saddle", &saddle, &mut spread.saddle);
     faults_of_whole(ui, form, "instrument.spread_mm");
 }
 
 fn across_fields(ui: &mut Ui, form: &mut Form, across: &mut Across) {
-    let help = "Place of every string across the neck in millimetres, string 1 first; positive toward string 1, \
+    let help = "Place of every string across the neck, string 1 first; positive toward string 1, \
                 zero on the centre line.";
-    let nut = Spec::new("instrument.across_mm.nut", "Places of the strings at the nut, mm", 0.0, help);
-    lists::labelled(ui, form, "At the nut, mm", &nut, &mut across.nut);
-    let saddle =
-        Spec::new("instrument.across_mm.saddle", "Places of the strings at the saddle, mm", 0.0, help);
-    lists::labelled(ui, form, "At the saddle, mm", &saddle, &mut across.saddle);
+    let nut = Spec::new("instrument.across_mm.nut", "Places of the strings at the nut", 0.0, help);
+    lists::labelled_lengths(ui, form, "At the nut", &nut, &mut across.nut);
+    let saddle = Spec::new("instrument.across_mm.saddle", "Places of the strings at the saddle", 0.0, help);
+    lists::labelled_lengths(ui, form, "At the saddle", &saddle, &mut across.saddle);
     faults(ui, form, &["instrument.across_mm"]);
 }
 

@@ -3,7 +3,7 @@
 use crestline_plan::{CoreShape, Plan, PlanString, StringReport};
 use eframe::egui::{RichText, Ui};
 
-use super::instrument::millimetres;
+use super::instrument::length;
 use super::{Surroundings, wrap};
 use crate::fields::choice::{self, Choice};
 use crate::fields::form::Form;
@@ -11,6 +11,7 @@ use crate::fields::number::{self, Spec};
 use crate::fields::row::{faults, faults_of_whole, remark, row, unit};
 use crate::fields::{parse, pitch, text};
 use crate::theme::size;
+use crate::units::without_dust;
 
 /// Grams in a kilogram.
 const GRAMS: f64 = 1000.0;
@@ -75,8 +76,8 @@ fn core(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString) {
         choice::buttons(ui, form, &at.path("core.shape"), "Core", &SHAPES, &mut string.core.shape);
     });
     let help = "Diameter of the core, or of a plain string, measured on the string; across flats for a hexagonal core.";
-    let spec = at.spec("core.diameter_mm", "core diameter, mm", 0.01, help);
-    millimetres(ui, form, "Core diameter", &spec, &mut string.core.diameter_mm);
+    let spec = at.spec("core.diameter_mm", "core diameter", 0.01, help);
+    length(ui, form, "Core diameter", &spec, &mut string.core.diameter_mm);
     let core = &mut string.core;
     row(ui, "Young's modulus", |ui| {
         let help = "Stiffness of the core's material at playing stress: about 200 GPa for steel wire; for nylon and other \
@@ -113,24 +114,24 @@ fn core(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString) {
 fn heights(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString, zero_fret: bool) {
     if let (Some(first), false) = (&mut string.action_mm.first, zero_fret) {
         let help = "Gap between the crown of fret 1 and the underside of the open string.";
-        millimetres(
+        length(
             ui,
             form,
             "Action, fret 1",
-            &at.spec("action_mm.first", "action over fret 1, mm", 0.05, help),
+            &at.spec("action_mm.first", "action over fret 1", 0.05, help),
             first,
         );
     }
     let help = "Gap between the crown of fret 12 and the underside of the open string.";
-    let twelfth = at.spec("action_mm.twelfth", "action over fret 12, mm", 0.05, help);
-    millimetres(ui, form, "Action, fret 12", &twelfth, &mut string.action_mm.twelfth);
+    let twelfth = at.spec("action_mm.twelfth", "action over fret 12", 0.05, help);
+    length(ui, form, "Action, fret 12", &twelfth, &mut string.action_mm.twelfth);
     faults_of_whole(ui, form, &at.path("action_mm"));
     let help = "Length of string from the nut to where it is held, at the tuner's post. It stretches along as far as the string slips.";
-    let head = at.spec("afterlength_mm.head", "afterlength behind the nut, mm", 5.0, help);
-    millimetres(ui, form, "Behind the nut", &head, &mut string.afterlength_mm.head);
+    let head = at.spec("afterlength_mm.head", "afterlength behind the nut", 5.0, help);
+    length(ui, form, "Behind the nut", &head, &mut string.afterlength_mm.head);
     let help = "Length of string from the saddle to where it is held.";
-    let tail = at.spec("afterlength_mm.tail", "afterlength behind the saddle, mm", 5.0, help);
-    millimetres(ui, form, "Behind the saddle", &tail, &mut string.afterlength_mm.tail);
+    let tail = at.spec("afterlength_mm.tail", "afterlength behind the saddle", 5.0, help);
+    length(ui, form, "Behind the saddle", &tail, &mut string.afterlength_mm.tail);
 }
 
 /// Measured values; the hint of an empty field shows the computed one.
@@ -175,11 +176,6 @@ fn grams(ui: &mut Ui, form: &mut Form, spec: &Spec, value: &mut Option<f64>) {
         some => parse::number(some).map(|grams| Some(grams / GRAMS)),
     };
     number::typed(ui, form, spec, &shown, read, |new| *value = new);
-}
-
-/// The number to twelve significant digits, so that a change of unit shows no binary dust.
-fn without_dust(value: f64) -> f64 {
-    format!("{value:.11e}").parse().unwrap_or(value)
 }
 
 /// A number to so many significant digits, written plainly.

@@ -5,15 +5,16 @@ use eframe::egui::{Align2, Button, FontId, RichText, Sense, Stroke, Ui, Vec2, Wi
 
 use crate::edit::command::Command;
 use crate::edit::strings::MOST_STRINGS;
-use crate::fields::form::{Form, words};
+use crate::fields::form::Form;
 use crate::fields::number::{self, Spec};
 use crate::fields::pitch;
 use crate::fields::row::{fault_line, row, unit};
 use crate::results::marks;
 use crate::theme::size;
+use crate::units::fault_words;
 
 const NUMBER_WIDTH: f32 = 44.0;
-const HEADS: [&str; 5] = ["Pitch", "Core ⌀\nmm", "Outside ⌀\nmm", "Action\nfret 1", "Action\nfret 12"];
+const HEADS: [&str; 5] = ["Pitch", "Core ⌀", "Outside ⌀", "Action\nfret 1", "Action\nfret 12"];
 
 /// The table, and the buttons that change its rows.
 pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, chosen: usize) {
@@ -68,23 +69,23 @@ impl Line {
             Spec::new(path, format!("String {}: {name}", index + 1), step, "").width(width).place("table")
         };
         pitch::pitch(ui, form, &cell("pitch", "pitch", 0.0).words(), &mut string.pitch);
-        let core = cell("core.diameter_mm", "core diameter, mm", 0.01);
-        number::number(ui, form, &core, &mut string.core.diameter_mm);
+        let core = cell("core.diameter_mm", "core diameter", 0.01);
+        number::length(ui, form, &core, &mut string.core.diameter_mm);
         match &mut string.wrap {
             Some(wrap) => {
-                let outside = cell("wrap.outside_mm", "outside diameter, mm", 0.01);
-                number::number(ui, form, &outside, &mut wrap.outside_mm);
+                let outside = cell("wrap.outside_mm", "outside diameter", 0.01);
+                number::length(ui, form, &outside, &mut wrap.outside_mm);
             }
             None => blank(ui, form, width, "plain"),
         }
         match &mut string.action_mm.first {
             Some(first) if !self.zero_fret => {
-                number::number(ui, form, &cell("action_mm.first", "action over fret 1, mm", 0.05), first);
+                number::length(ui, form, &cell("action_mm.first", "action over fret 1", 0.05), first);
             }
             _ => blank(ui, form, width, "—"),
         }
-        let twelfth = cell("action_mm.twelfth", "action over fret 12, mm", 0.05);
-        number::number(ui, form, &twelfth, &mut string.action_mm.twelfth);
+        let twelfth = cell("action_mm.twelfth", "action over fret 12", 0.05);
+        number::length(ui, form, &twelfth, &mut string.action_mm.twelfth);
     }
 }
 
@@ -150,7 +151,7 @@ fn buttons(ui: &mut Ui, form: &mut Form, chosen: usize, count: usize) {
 fn other_faults(ui: &mut Ui, form: &mut Form, chosen: usize) {
     let here = format!("strings[{chosen}]");
     let typed = form.drafts.errors().map(|(path, text)| (path.to_owned(), text.to_owned()));
-    let checked = form.faults.iter().map(|fault| (fault.path.clone(), words(fault)));
+    let checked = form.faults.iter().map(|fault| (fault.path.clone(), fault_words(fault, form.unit)));
     let lines: Vec<(String, String)> = typed
         .chain(checked)
         .filter(|(path, _)| path.starts_with("strings") && !path.starts_with(&here))

@@ -3,7 +3,7 @@
 use crestline_plan::{PlanString, Wrap};
 use eframe::egui::Ui;
 
-use super::instrument::millimetres;
+use super::instrument::length;
 use super::string_detail::At;
 use crate::fields::choice;
 use crate::fields::form::Form;
@@ -32,8 +32,8 @@ pub fn show(ui: &mut Ui, form: &mut Form, at: &At, string: &mut PlanString) {
     });
     let Some(wrap) = &mut string.wrap else { return };
     let help = "Outside diameter of the wound string, its gauge.";
-    let spec = at.spec("wrap.outside_mm", "outside diameter, mm", 0.01, help);
-    millimetres(ui, form, "Outside diameter", &spec, &mut wrap.outside_mm);
+    let spec = at.spec("wrap.outside_mm", "outside diameter", 0.01, help);
+    length(ui, form, "Outside diameter", &spec, &mut wrap.outside_mm);
     row(ui, "Wrap density", |ui| {
         let help = "Density of the wrap wire: about 8900 kg/m³ for copper and nickel, 8800 for bronze.";
         number::number(

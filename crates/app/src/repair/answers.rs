@@ -3,30 +3,32 @@
 use crestline_plan::{Diagnosis, FretDiagnosis, Plan, StringDiagnosis};
 use eframe::egui::{RichText, ScrollArea, Ui};
 
-use super::lengths::{self, moved};
+use super::lengths::moved;
 use crate::edit::command::Command;
 use crate::results::figures::fixed;
 use crate::results::table::{self, Cell, Column, Row};
 use crate::theme::Palette;
+use crate::units::LengthUnit;
 
 /// The least width of the table.
 const LEAST_WIDTH: f32 = 700.0;
 
-const fn column(head: &'static str, share: f32) -> Column {
-    Column { head, share, is_text: false }
-}
+/// Number of columns.
+const COUNT: usize = 9;
 
-const COLUMNS: [Column; 9] = [
-    Column { head: "String", share: 1.1, is_text: true },
-    column("RMS now\ncents", 0.8),
-    column("Saddle alone\nmove", 1.3),
-    column("RMS then\ncents", 0.8),
-    column("Saddle with\nnut, move", 1.3),
-    column("Nut edge\nmove", 1.3),
-    column("RMS then\ncents", 0.8),
-    column("Not ex-\nplained", 0.75),
-    Column { head: "Remark", share: 1.2, is_text: true },
-];
+fn columns() -> [Column; COUNT] {
+    [
+        Column::words("String", 1.1),
+        Column::figures("RMS now\ncents", 0.8),
+        Column::figures("Saddle alone\nmove", 1.3),
+        Column::figures("RMS then\ncents", 0.8),
+        Column::figures("Saddle with\nnut, move", 1.3),
+        Column::figures("Nut edge\nmove", 1.3),
+        Column::figures("RMS then\ncents", 0.8),
+        Column::figures("Not ex-\nplained", 0.75),
+        Column::words("Remark", 1.2),
+    ]
+}
 
 /// The tables; a click on a row chooses its string.
 pub fn show(
@@ -36,56 +38,57 @@ pub fn show(
     diagnosis: &Diagnosis,
     chosen: usize,
 ) -> Vec<Command> {
+    let unit = LengthUnit::of(ui.ctx());
     ui.label(RichText::new("Moves that make each string right").heading());
     let words = format!(
         "Moves in {} from where crest and nut edge are now, with one standard deviation: plus is away from the nut for \
          the saddle, toward the bridge for the nut edge.",
-        lengths::UNIT
+        unit.sign()
     );
     ui.label(RichText::new(words).small().color(palette.quiet));
     let mut clicked = None;
     ScrollArea::horizontal().id_salt("answers").auto_shrink([false, true]).show(ui, |ui| {
         ui.set_min_width(LEAST_WIDTH);
         let rows: Vec<Row> =
-            (0..plan.strings.len()).map(|string| row(plan, diagnosis, string, palette)).collect();
-        clicked = table::show(ui, palette, &COLUMNS, &rows, chosen);
+            (0..plan.strings.len()).map(|string| row(plan, diagnosis, string, palette, unit)).collect();
+        clicked = table::show(ui, palette, &columns(), &rows, chosen);
     });
     ui.add_space(4.0);
     for fret in &diagnosis.frets {
-        ui.label(format!("▲ {}", fret_words(fret)));
+        ui.label(format!("▲ {}", fret_words(fret, unit)));
     }
     clicked.map(Command::ChooseString).into_iter().collect()
 }
 
 /// A fret out of place.
-fn fret_words(fret: &FretDiagnosis) -> String {
+fn fret_words(fret: &FretDiagnosis, unit: LengthUnit) -> String {
     let toward = if fret.shift_mm > 0.0 { "bridge" } else { "nut" };
-    let (shift, sd) = (lengths::with_unit(fret.shift_mm.abs()), lengths::with_unit(fret.sd_mm));
+    let (shift, sd) = (unit.words(fret.shift_mm.abs()), unit.words(fret.sd_mm));
     format!("Fret {} lies {shift} (± {sd}) too near the {toward}.", fret.fret)
 }
 
-fn row(plan: &Plan, diagnosis: &Diagnosis, string: usize, palette: &Palette) -> Row {
+fn row(plan: &Plan, diagnosis: &Diagnosis, string: usize, palette: &Palette, unit: LengthUnit) -> Row {
     let number = (string + 1).to_string();
     let name = &plan.strings[string].name;
     let called = if *name == number || name.is_empty() { number.clone() } else { format!("{number} {name}") };
     let found = diagnosis.strings.iter().find(|found| found.string as usize == string + 1);
     let Some(found) = found else {
         let mut cells = vec![Cell::plain(called)];
-        cells.extend((1..COLUMNS.len() - 1).map(|_| Cell::plain("—")));
+        cells.extend((1..COUNT - 1).map(|_| Cell::plain("—")));
         cells.push(Cell::plain("not read"));
         return Row { cells, words: format!("String {number}: no fretted reading") };
     };
     let (alone, both) = (&found.saddle_only, &found.saddle_and_nut);
     let figures = [
         fixed(found.rms_before_cents, 1),
-        moved(alone.saddle_move_mm, alone.sd_mm),
+        moved(unit, alone.saddle_move_mm, alone.sd_mm),
         fixed(alone.rms_after_cents, 1),
-        moved(both.saddle_move_mm, both.saddle_sd_mm),
-        moved(both.nut_move_mm, both.nut_sd_mm),
+        moved(unit, both.saddle_move_mm, both.saddle_sd_mm),
+        moved(unit, both.nut_move_mm, both.nut_sd_mm),
         fixed(both.rms_after_cents, 1),
         fixed(found.residual_cents, 1),
     ];
-    let words = in_words(found, &figures);
+    let words = in_words(found, &figures, unit.sign());
     let mut cells = vec![Cell::plain(called)];
     cells.extend(figures.into_iter().map(Cell::plain));
     cells.push(if found.suspect_string {
@@ -96,9 +99,8 @@ fn row(plan: &Plan, diagnosis: &Diagnosis, string: usize, palette: &Palette) -> 
     Row { cells, words }
 }
 
-fn in_words(found: &StringDiagnosis, figures: &[String; 7]) -> String {
+fn in_words(found: &StringDiagnosis, figures: &[String; 7], unit: &str) -> String {
     let [now, alone, after_alone, saddle, nut, after_both, left] = figures;
-    let unit = lengths::UNIT;
     let suspect = if found.suspect_string { ". Suspect: no setup explains its readings" } else { "" };
     format!(
         "String {}: root mean square now {now} cents; saddle alone {alone} {unit}, then {after_alone}; saddle {saddle} {unit} \

@@ -3,11 +3,13 @@
 use crestline_plan::Priors;
 use eframe::egui::{Button, Grid, Label, RichText, Ui};
 
-use super::lengths::UNIT;
 use crate::fields::form::Form;
 use crate::fields::number::{self, Spec};
 use crate::fields::parse;
 use crate::fields::row::fault_line;
+
+/// Stands for the window's unit of lengths.
+const LENGTH: &str = "mm";
 
 /// Room in which two fields stand side by side, points.
 const TWO_ABREAST: f32 = 620.0;
@@ -26,7 +28,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "crest_mm",
         name: "Crest, not measured",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.1,
         help: "How far a crest may lie from where its string wants it, where the plan does not say where it is.",
         of: |priors| &mut priors.crest_mm,
@@ -34,7 +36,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "measured_crest_mm",
         name: "Crest, measured",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.05,
         help: "How far a crest may lie from where the plan says that it is.",
         of: |priors| &mut priors.measured_crest_mm,
@@ -42,7 +44,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "nut_mm",
         name: "Nut edge",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.05,
         help: "How far a nut edge may lie from its place.",
         of: |priors| &mut priors.nut_mm,
@@ -50,7 +52,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "slot_mm",
         name: "Height over fret 1",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.01,
         help: "How far the string's height over fret 1 may differ from the plan's.",
         of: |priors| &mut priors.slot_mm,
@@ -58,7 +60,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "action_mm",
         name: "Action at fret 12",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.05,
         help: "How far the action may differ from the plan's.",
         of: |priors| &mut priors.action_mm,
@@ -66,7 +68,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "relief_mm",
         name: "Relief",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.01,
         help: "How far the relief may differ from the plan's.",
         of: |priors| &mut priors.relief_mm,
@@ -74,7 +76,7 @@ const PRIORS: [Prior; 12] = [
     Prior {
         key: "fret_mm",
         name: "Place of a fret",
-        unit: UNIT,
+        unit: LENGTH,
         step: 0.01,
         help: "How far a fret may lie from its place.",
         of: |priors| &mut priors.fret_mm,
@@ -177,18 +179,27 @@ fn path(prior: &Prior) -> String {
 
 fn field(ui: &mut Ui, form: &mut Form, prior: &Prior, priors: &mut Priors) {
     ui.label(prior.name);
-    let unit = if prior.unit.is_empty() { String::new() } else { format!(", {}", prior.unit) };
-    let name = format!("Standard deviation: {}{unit}", prior.name);
-    let spec = Spec::new(path(prior), name, prior.step, prior.help);
+    let named = format!("Standard deviation: {}", prior.name);
     let before = *priors;
-    let shown = parse::shown(*(prior.of)(&mut before.clone()));
-    let read = |text: &str| {
-        let value = parse::number(text)?;
+    let check = |value: f64| {
         let mut tried = before;
         *(prior.of)(&mut tried) = value;
-        tried.check().map_err(|error| error.to_string())?;
-        Ok(value)
+        tried.check().map_err(|error| error.to_string())
     };
-    number::typed(ui, form, &spec, &shown, read, |value| *(prior.of)(priors) = value);
-    ui.label(RichText::new(prior.unit).color(form.palette.quiet));
+    let value = (prior.of)(priors);
+    let sign = if prior.unit == LENGTH {
+        let spec = Spec::new(path(prior), named, prior.step, prior.help);
+        number::length_if(ui, form, &spec, value, check);
+        form.unit.sign()
+    } else {
+        let unit = if prior.unit.is_empty() { String::new() } else { format!(", {}", prior.unit) };
+        let spec = Spec::new(path(prior), format!("{named}{unit}"), prior.step, prior.help);
+        let read = |text: &str| {
+            let value = parse::number(text)?;
+            check(value).map(|()| value)
+        };
+        number::typed(ui, form, &spec, &parse::shown(*value), read, |new| *value = new);
+        prior.unit
+    };
+    ui.label(RichText::new(sign).color(form.palette.quiet));
 }

@@ -7,6 +7,7 @@ use eframe::egui::{
 };
 
 use crate::theme::{Palette, size};
+use crate::units::{LengthUnit, in_unit};
 
 /// Space round a remedy's words, and width of its number.
 const PAD: f32 = 6.0;
@@ -42,12 +43,13 @@ fn one(
 ) -> eframe::egui::Response {
     let number = format!("{}.", index + 1);
     let width = ui.available_width();
-    let text = WidgetText::from(RichText::new(&remedy.text).color(palette.ink));
+    let words = in_unit(&remedy.text, LengthUnit::of(ui.ctx()));
+    let text = WidgetText::from(RichText::new(&words).color(palette.ink));
     let room = width - NUMBER - 2.0 * PAD;
     let galley = text.into_galley(ui, Some(TextWrapMode::Wrap), room, TextStyle::Body);
     let (rect, response) =
         ui.allocate_exact_size(Vec2::new(width, galley.size().y + 2.0 * PAD), Sense::click());
-    let words = format!("{number} {}", remedy.text);
+    let words = format!("{number} {words}");
     response.widget_info(|| WidgetInfo::labeled(accesskit::Role::ListItem, true, &words));
     response.ctx.accesskit_node_builder(response.id, |node| {
         node.set_position_in_set(index);

@@ -5,6 +5,7 @@ use egui_plot::{AxisHints, GridInput, GridMark, Plot};
 
 use super::figures;
 use crate::theme::{Palette, size};
+use crate::units::LengthUnit;
 
 /// Least distance of grid lines in points that the plot works with.
 const GRID_POINTS: f32 = 8.0;
@@ -16,8 +17,8 @@ const MOST_MARKS: i64 = 200;
 /// How the figures along x are counted.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub enum Along {
-    /// In round steps from this value.
-    From(f64),
+    /// As lengths, counted from this one in round steps of this unit; then the figures along y are lengths too.
+    From(f64, LengthUnit),
     /// By frets.
     Frets,
 }
@@ -29,24 +30,25 @@ pub fn with_axes<'a>(
     along: Along,
     words: [&'static str; 2],
 ) -> Plot<'a> {
-    let origin = match along {
-        Along::From(origin) => origin,
-        Along::Frets => 0.0,
+    let (origin, each) = match along {
+        Along::From(origin, unit) => (origin, unit.in_mm()),
+        Along::Frets => (0.0, 1.0),
     };
-    let shown = move |mark: GridMark| figures::fixed(mark.value - origin, decimals(mark.step_size));
+    let figure = move |value: f64, step: f64| figures::fixed(value / each, decimals(step / each));
+    let shown = move |mark: GridMark| figure(mark.value - origin, mark.step_size);
     let x = hints(AxisHints::new_x(), palette, words[0]).formatter(move |mark, _| shown(mark));
     let y = hints(AxisHints::new_y(), palette, words[1])
-        .formatter(|mark, _| figures::fixed(mark.value, decimals(mark.step_size)));
+        .formatter(move |mark, _| figure(mark.value, mark.step_size));
     plot.custom_x_axes(vec![x])
         .custom_y_axes(vec![y])
         .grid_spacing(Rangef::new(GRID_POINTS, 300.0))
         .grid_color(palette.edge.gamma_multiply(0.55))
         .grid_fade(0.0)
         .x_grid_spacer(move |input| match along {
-            Along::From(origin) => round_steps(input, FIGURE_POINTS[0], origin),
+            Along::From(origin, _) => round_steps(input, FIGURE_POINTS[0], origin, each),
             Along::Frets => frets(input),
         })
-        .y_grid_spacer(|input| round_steps(input, FIGURE_POINTS[1], 0.0))
+        .y_grid_spacer(move |input| round_steps(input, FIGURE_POINTS[1], 0.0, each))
 }
 
 fn hints<'a>(axis: AxisHints<'a>, palette: &Palette, words: &'static str) -> AxisHints<'a> {
@@ -58,12 +60,12 @@ fn hints<'a>(axis: AxisHints<'a>, palette: &Palette, words: &'static str) -> Axi
 
 /// Decimals for figures in this step.
 fn decimals(step: f64) -> usize {
-    (0..4).find(|decimals| (step * 10f64.powi(*decimals)).fract().abs() < 1e-6).unwrap_or(3) as usize
+    (0..6).find(|decimals| (step * 10f64.powi(*decimals)).fract().abs() < 1e-6).unwrap_or(5) as usize
 }
 
-/// Marks in steps of 1, 2 or 5 times a power of ten, counted from `origin`.
-fn round_steps(input: GridInput, points: f64, origin: f64) -> Vec<GridMark> {
-    let step = round_up(input.base_step_size / f64::from(GRID_POINTS) * points);
+/// Marks in steps of 1, 2 or 5 times a power of ten of a unit, counted from `origin`; `each` is the unit.
+fn round_steps(input: GridInput, points: f64, origin: f64, each: f64) -> Vec<GridMark> {
+    let step = round_up(input.base_step_size / f64::from(GRID_POINTS) * points / each) * each;
     marks(input.bounds, step, origin)
 }
 

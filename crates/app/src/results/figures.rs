@@ -1,4 +1,4 @@
-//! Figures as they are shown: lengths to 0.01 mm, cents to 0.1, tensions to 0.1 N.
+//! Figures as they are shown: cents to 0.1, tensions to 0.1 N. Lengths are written by [`crate::units`].
 
 /// A number with so many decimals, a true minus sign, and no negative zero.
 #[must_use]
@@ -9,12 +9,6 @@ pub fn fixed(value: f64, decimals: usize) -> String {
         Some(rest) => format!("−{rest}"),
         None => text,
     }
-}
-
-/// A length in millimetres.
-#[must_use]
-pub fn mm(value: f64) -> String {
-    fixed(value, 2)
 }
 
 /// An interval in cents, with a plus sign where it is sharp.
@@ -36,8 +30,8 @@ mod tests {
 
     #[test]
     fn zero_has_no_sign_and_minus_is_a_minus() {
-        assert_eq!(mm(-0.001), "0.00");
-        assert_eq!(mm(-1.255), "−1.25");
+        assert_eq!(fixed(-0.001, 2), "0.00");
+        assert_eq!(fixed(-1.255, 2), "−1.25");
         assert_eq!(cents(0.04), "0.0");
         assert_eq!(cents(2.13), "+2.1");
         assert_eq!(cents(-2.13), "−2.1");

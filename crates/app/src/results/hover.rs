@@ -4,9 +4,10 @@ use crestline_plan::StringReport;
 use eframe::egui::{Response, RichText, Ui};
 use egui_plot::{PlotPoint, PlotTransform};
 
-use super::figures::{cents, mm};
+use super::figures::cents;
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
+use crate::units::LengthUnit;
 
 /// The place under the pointer, if it is over the plot.
 fn place(response: &Response, transform: &PlotTransform) -> Option<PlotPoint> {
@@ -79,14 +80,17 @@ pub fn crest(
     let Some(string) = nearest.and_then(|index| strings.get(index)) else { return response };
     let built = &string.built;
     response.on_hover_ui_at_pointer(|ui| {
-        ui.label(RichText::new(format!("String {}, mm", string.string)).strong());
-        pair(ui, palette, "built setback", &mm(built.saddle_setback_mm));
-        pair(ui, palette, "ideal setback", &mm(string.ideal.saddle_setback_mm));
-        pair(ui, palette, "crest from the datum", &mm(built.crest_mm.x - layout.datum_x_mm));
-        pair(ui, palette, "crest across", &mm(built.crest_mm.y));
-        pair(ui, palette, "crest height", &mm(built.crest_mm.z));
+        let unit = LengthUnit::of(ui.ctx());
+        let figure = |length_mm| unit.figure(length_mm);
+        let title = unit.named(&format!("String {}", string.string));
+        ui.label(RichText::new(title).strong());
+        pair(ui, palette, "built setback", &figure(built.saddle_setback_mm));
+        pair(ui, palette, "ideal setback", &figure(string.ideal.saddle_setback_mm));
+        pair(ui, palette, "crest from the datum", &figure(built.crest_mm.x - layout.datum_x_mm));
+        pair(ui, palette, "crest across", &figure(built.crest_mm.y));
+        pair(ui, palette, "crest height", &figure(built.crest_mm.z));
         if let Some(offset) = built.slot_offset_mm {
-            pair(ui, palette, "from the slot's centre line", &mm(offset));
+            pair(ui, palette, "from the slot's centre line", &figure(offset));
         }
     })
 }

@@ -6,6 +6,7 @@ use super::{error_plot, layout_plot, notices, nut_plot, schedule, split_plot, ta
 use crate::edit::command::Command;
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, size};
+use crate::units::LengthUnit;
 use crate::view::View;
 
 /// Height of the notices below the schedule.
@@ -100,7 +101,9 @@ fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &m
             }
         });
     });
-    ui.label(RichText::new("╌ nominal   ○ ideal   ● crest   setbacks in mm").small().color(palette.quiet));
+    let sign = LengthUnit::of(ui.ctx()).sign();
+    let words = format!("╌ nominal   ○ ideal   ● crest   setbacks in {sign}");
+    ui.label(RichText::new(words).small().color(palette.quiet));
     if layout_plot::nut_is_moved(&outcome.solution.layout) {
         let width = 0.4 * ui.available_width();
         let panel = Panel::left("nut end")

@@ -6,11 +6,11 @@ use egui_plot::{LineStyle, Plot, PlotBounds, PlotUi};
 
 use super::axes::{Along, with_axes};
 use super::camera::Camera;
-use super::figures;
 use super::hover;
 use super::plan_items::{PlanView, at_x, line, mark, outline, text};
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
+use crate::units::LengthUnit;
 
 /// Room on either side of what is drawn, mm.
 const ROOM_MM: f64 = 3.0;
@@ -25,21 +25,27 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: u
     let whole = whole(outcome);
     let looking = *camera;
     let datum_x = layout.datum_x_mm;
-    let plot = plan_plot("saddle in plan", palette, datum_x).height(ui.available_height());
+    let unit = LengthUnit::of(ui.ctx());
+    let plot = plan_plot("saddle in plan", palette, datum_x, unit).height(ui.available_height());
     let shown = plot.show(ui, |plot| {
         let rect = plot.response().rect;
         let bounds = looking.bounds(rect, &whole);
         plot.set_plot_bounds(bounds);
         let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
-        draw(plot, &PlanView { palette, outcome, chosen, bounds, mm_per_point });
+        draw(plot, &PlanView { palette, outcome, chosen, unit, bounds, mm_per_point });
     });
     let response = hover::crest(shown.response, &shown.transform, palette, outcome);
-    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome)));
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome, unit)));
     camera.follow(ui, &response, &shown.transform, &whole);
 }
 
 /// A plot for a plan view: drag pans, the wheel zooms, and the axis counts from the datum.
-pub fn plan_plot<'a>(name: &'static str, palette: &'static Palette, datum_x: f64) -> Plot<'a> {
+pub fn plan_plot<'a>(
+    name: &'static str,
+    palette: &'static Palette,
+    datum_x: f64,
+    unit: LengthUnit,
+) -> Plot<'a> {
     let plot = Plot::new(name)
         .allow_scroll(false)
         .allow_boxed_zoom(false)
@@ -48,7 +54,7 @@ pub fn plan_plot<'a>(name: &'static str, palette: &'static Palette, datum_x: f64
         .show_crosshair(false)
         .min_size(Vec2::new(60.0, 60.0))
         .label_formatter(|_| None);
-    with_axes(plot, palette, Along::From(datum_x), ["", ""])
+    with_axes(plot, palette, Along::From(datum_x, unit), ["", ""])
 }
 
 fn draw(plot: &mut PlotUi<'_>, d: &PlanView<'_>) {
@@ -147,7 +153,7 @@ fn crest(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &StringL
     let rightmost = marks.into_iter().flatten().map(|mark| mark.x).fold(f64::MIN, f64::max);
     let gap = if is_separate { 6.0 } else { 11.0 };
     let beside = Point { x: rightmost + gap * d.mm_per_point, y: string.crest.y };
-    let words = figures::mm(report.built.saddle_setback_mm);
+    let words = d.unit.figure(report.built.saddle_setback_mm);
     text(plot, beside, words, d.palette.ink, Align2::LEFT_CENTER);
 }
 
@@ -186,13 +192,13 @@ pub fn around(points: &[Point], room_mm: [f64; 2]) -> PlotBounds {
 }
 
 /// The plot's figures in words.
-fn in_words(outcome: &Outcome) -> String {
+fn in_words(outcome: &Outcome, unit: LengthUnit) -> String {
     let setback = |s: &crestline_plan::StringReport| {
         format!(
-            " String {}: setback {} mm, ideal {} mm.",
+            " String {}: setback {}, ideal {}.",
             s.string,
-            figures::mm(s.built.saddle_setback_mm),
-            figures::mm(s.ideal.saddle_setback_mm)
+            unit.words(s.built.saddle_setback_mm),
+            unit.words(s.ideal.saddle_setback_mm)
         )
     };
     let strings: String = outcome.solution.report.strings.iter().map(setback).collect();

@@ -5,8 +5,9 @@ use eframe::egui::{Frame, Label, Margin, RichText, ScrollArea, Sense, Stroke, Ui
 
 use crate::edit::command::Command;
 use crate::fields::draft::Drafts;
-use crate::fields::form::{place_in_words, words};
+use crate::fields::form::place_in_words;
 use crate::theme::{Palette, size};
+use crate::units::{LengthUnit, fault_words, in_unit};
 
 /// The band that says that what is shown is the last good result, and why.
 pub fn stale(
@@ -16,8 +17,9 @@ pub fn stale(
     drafts: &Drafts,
     has_result: bool,
 ) -> Vec<Command> {
+    let unit = LengthUnit::of(ui.ctx());
     let typed = drafts.errors().map(|(path, text)| (path.to_owned(), text.to_owned()));
-    let checked = faults.iter().map(|fault| (fault.path.clone(), words(fault)));
+    let checked = faults.iter().map(|fault| (fault.path.clone(), fault_words(fault, unit)));
     let lines: Vec<(String, String)> = typed.chain(checked).collect();
     if lines.is_empty() {
         return Vec::new();
@@ -50,6 +52,7 @@ pub fn stale(
 
 /// The notices of a result, the graver first.
 pub fn show(ui: &mut Ui, palette: &Palette, notices: &[Notice]) -> Vec<Command> {
+    let unit = LengthUnit::of(ui.ctx());
     let mut sorted: Vec<&Notice> = notices.iter().collect();
     sorted.sort_by_key(|notice| std::cmp::Reverse(notice.severity));
     let mut commands = Vec::new();
@@ -61,7 +64,14 @@ pub fn show(ui: &mut Ui, palette: &Palette, notices: &[Notice]) -> Vec<Command> 
             Severity::Warning => ("▲", palette.caution),
             Severity::Note => ("●", palette.quiet),
         };
-        commands.extend(link(ui, palette, sign, colour, &notice.path, &sentence(&notice.text)));
+        commands.extend(link(
+            ui,
+            palette,
+            sign,
+            colour,
+            &notice.path,
+            &sentence(&in_unit(&notice.text, unit)),
+        ));
     }
     commands
 }

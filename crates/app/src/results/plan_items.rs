@@ -6,6 +6,7 @@ use egui_plot::{Line, LineStyle, PlotBounds, PlotPoint, PlotPoints, PlotUi, Poin
 
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, marker, size};
+use crate::units::LengthUnit;
 
 /// Radius of a crest's marker in points.
 const MARK: f32 = 4.5;
@@ -18,6 +19,8 @@ pub struct PlanView<'a> {
     pub outcome: &'a Outcome,
     /// The chosen string, 0 first.
     pub chosen: usize,
+    /// The unit of lengths.
+    pub unit: LengthUnit,
     /// The part that is in view, mm.
     pub bounds: PlotBounds,
     /// Its scale.

@@ -3,15 +3,19 @@
 use crestline_plan::{FretReport, PlanString, StringReport};
 use eframe::egui::{RichText, Ui};
 
-use super::figures::{cents, fixed, mm, newtons};
+use super::figures::{cents, fixed, newtons};
 use super::table::{self, Cell, Column, Row};
 use crate::edit::desk::Outcome;
 use crate::fields::pitch;
 use crate::theme::Palette;
+use crate::units::LengthUnit;
 
 /// Share of the breaking load that is noted, and the one that is warned of.
 const NOTED: f64 = 0.60;
 const WARNED: f64 = 0.75;
+
+/// The place of the share of the breaking load among the columns.
+const BREAKING: usize = 4;
 
 /// The least width in which the figures stand apart, points.
 pub const LEAST_WIDTH: f32 = 800.0;
@@ -20,31 +24,37 @@ pub const LEAST_WIDTH: f32 = 800.0;
 pub const CAUTION: &str = "Strings under tension can break and bridges can lift. Keep to the makers' ratings, and leave \
                            what carries the load to someone qualified for it.";
 
-const fn column(head: &'static str, share: f32) -> Column {
-    Column { head, share, is_text: false }
+fn columns(unit: LengthUnit) -> [Column; 11] {
+    [
+        Column::words("String", 1.25),
+        Column::words("Pitch", 1.0),
+        Column::figures(format!("Gauge\n{}", unit.sign()), 0.9),
+        Column::figures("Tension\nN", 1.0),
+        Column::figures("Of breaking\nload, %", 1.2),
+        Column::figures(unit.named("Ideal\nsetback"), 1.3),
+        Column::figures(unit.named("Built\nsetback"), 1.3),
+        Column::figures(unit.named("Crest from\ndatum"), 1.3),
+        Column::figures("RMS error\ncents", 1.1),
+        Column::figures("Worst\ncents", 1.0),
+        Column::figures("at\nfret", 0.6),
+    ]
 }
-
-const COLUMNS: [Column; 11] = [
-    Column { head: "String", share: 1.25, is_text: true },
-    Column { head: "Pitch", share: 1.0, is_text: true },
-    column("Gauge\nmm", 0.9),
-    column("Tension\nN", 1.0),
-    column("Of breaking\nload, %", 1.2),
-    column("Ideal\nsetback, mm", 1.3),
-    column("Built\nsetback, mm", 1.3),
-    column("Crest from\ndatum, mm", 1.3),
-    column("RMS error\ncents", 1.1),
-    column("Worst\ncents", 1.0),
-    column("at\nfret", 0.6),
-];
 
 /// The table; says which string has been clicked.
 pub fn show(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize) -> Option<usize> {
-    let datum_x = outcome.solution.layout.datum_x_mm;
+    let unit = LengthUnit::of(ui.ctx());
+    let columns = columns(unit);
     let strings = outcome.solution.report.strings.iter().zip(&outcome.plan.strings);
-    let fit = outcome.plan.fit.frets;
-    let rows: Vec<Row> = strings.map(|(report, string)| row(palette, report, string, datum_x, fit)).collect();
-    table::show(ui, palette, &COLUMNS, &rows, chosen)
+    let rows: Vec<Row> = strings
+        .map(|(report, string)| {
+            let (texts, breaking) = texts(palette, outcome, report, string, unit);
+            let words = in_words(&columns, &texts);
+            let mut cells: Vec<Cell> = texts.into_iter().map(Cell::plain).collect();
+            cells[BREAKING] = breaking;
+            Row { cells, words }
+        })
+        .collect();
+    table::show(ui, palette, &columns, &rows, chosen)
 }
 
 /// The total pull and the caution, below the table.
@@ -56,8 +66,15 @@ pub fn foot(ui: &mut Ui, palette: &Palette, outcome: &Outcome) {
     });
 }
 
-fn row(palette: &Palette, report: &StringReport, string: &PlanString, datum_x: f64, fit: [u32; 2]) -> Row {
-    let worst = worst(&report.frets, fit);
+/// The texts of a string's cells, and the cell of its share of the breaking load with its colours.
+fn texts(
+    palette: &Palette,
+    outcome: &Outcome,
+    report: &StringReport,
+    string: &PlanString,
+    unit: LengthUnit,
+) -> ([String; 11], Cell) {
+    let worst = worst(&report.frets, outcome.plan.fit.frets);
     let (worst_cents, worst_fret) =
         worst.map_or((String::new(), String::new()), |f| (cents(f.built_cents), f.fret.to_string()));
     let share = report.breaking_fraction;
@@ -70,20 +87,17 @@ fn row(palette: &Palette, report: &StringReport, string: &PlanString, datum_x: f
     let texts = [
         name(report),
         pitch::shown(&string.pitch),
-        fixed(gauge, 3),
+        unit.gauge(gauge),
         newtons(report.tension_n),
         breaking.text.clone(),
-        mm(report.ideal.saddle_setback_mm),
-        mm(report.built.saddle_setback_mm),
-        mm(report.built.crest_mm.x - datum_x),
+        unit.figure(report.ideal.saddle_setback_mm),
+        unit.figure(report.built.saddle_setback_mm),
+        unit.figure(report.built.crest_mm.x - outcome.solution.layout.datum_x_mm),
         fixed(report.built.rms_cents, 1),
         worst_cents,
         worst_fret,
     ];
-    let words = in_words(&texts);
-    let mut cells: Vec<Cell> = texts.into_iter().map(Cell::plain).collect();
-    cells[4] = breaking;
-    Row { cells, words }
+    (texts, breaking)
 }
 
 /// The string's number, and its name where that says more.
@@ -106,7 +120,7 @@ fn worst(frets: &[FretReport], fit: [u32; 2]) -> Option<&FretReport> {
     within.max_by(|a, b| a.built_cents.abs().total_cmp(&b.built_cents.abs()))
 }
 
-fn in_words(texts: &[String; 11]) -> String {
-    let heads = COLUMNS.iter().map(|column| column.head.replace('\n', " "));
+fn in_words(columns: &[Column; 11], texts: &[String; 11]) -> String {
+    let heads = columns.iter().map(|column| column.head.replace('\n', " "));
     heads.zip(texts).map(|(head, text)| format!("{head} {text}")).collect::<Vec<_>>().join(", ")
 }

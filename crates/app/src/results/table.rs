@@ -1,5 +1,7 @@
 //! A table of figures: fixed columns, rows that can be chosen, and each row in words for screen readers.
 
+use std::borrow::Cow;
+
 use eframe::egui::{Align2, Color32, Rect, Sense, Stroke, StrokeKind, Ui, Vec2, WidgetInfo, accesskit, pos2};
 
 use super::marks;
@@ -15,11 +17,23 @@ const PAD: f32 = 7.0;
 /// A column.
 pub struct Column {
     /// Its head, one or two lines.
-    pub head: &'static str,
+    pub head: Cow<'static, str>,
     /// Its share of the width.
     pub share: f32,
     /// Whether its text stands on the left, not the right.
     pub is_text: bool,
+}
+
+impl Column {
+    /// A column of figures.
+    pub fn figures(head: impl Into<Cow<'static, str>>, share: f32) -> Self {
+        Self { head: head.into(), share, is_text: false }
+    }
+
+    /// A column of words.
+    pub fn words(head: &'static str, share: f32) -> Self {
+        Self { head: head.into(), share, is_text: true }
+    }
 }
 
 /// A cell.
@@ -87,7 +101,7 @@ fn heads(ui: &mut Ui, palette: &Palette, columns: &[Column], edges: &[f32]) {
             ui.painter(),
             pos2(x, rect.bottom() - 4.0),
             anchor_bottom(anchor),
-            column.head,
+            &column.head,
             palette.quiet,
         );
     }

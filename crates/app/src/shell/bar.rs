@@ -9,6 +9,7 @@ use eframe::egui::{
 use crate::edit::command::Command;
 use crate::edit::desk::Desk;
 use crate::theme::{Palette, size};
+use crate::units::LengthUnit;
 use crate::view::{Page, ThemeChoice, View};
 
 /// The bar.
@@ -24,6 +25,7 @@ pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View) -> Vec<Com
             view_menu(ui, view, &mut commands);
             ui.add_space(size::WIDE_GAP);
             pages(ui, palette, view, &mut commands);
+            unit(ui, palette, view, &mut commands);
             name(ui, palette, desk);
         });
     });
@@ -73,6 +75,13 @@ fn view_menu(ui: &mut Ui, view: &View, commands: &mut Vec<Command>) {
         for choice in ThemeChoice::ALL {
             if ui.radio(view.theme == choice, choice.name()).clicked() {
                 commands.push(Command::Theme(choice));
+            }
+        }
+        ui.separator();
+        for unit in LengthUnit::ALL {
+            let command = Command::ShowLengthsIn(unit);
+            if ui.radio(view.unit == unit, command.name()).clicked() {
+                commands.push(command);
             }
         }
         ui.separator();
@@ -136,6 +145,25 @@ fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command
         if response.clicked() {
             commands.push(Command::ShowPage(page));
         }
+    }
+}
+
+/// The unit of all lengths, as a switch.
+fn unit(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command>) {
+    let command = Command::ShowLengthsIn(view.unit.other());
+    let text = RichText::new(view.unit.sign()).color(palette.ink);
+    let key = command.shortcut().map(|shortcut| ui.ctx().format_shortcut(&shortcut)).unwrap_or_default();
+    let tip = format!(
+        "All lengths in the window are in {}; {} ({key})",
+        view.unit.name().to_lowercase(),
+        command.name()
+    );
+    let response = ui.add(Button::new(text).min_size(Vec2::new(28.0, 24.0))).on_hover_text(tip);
+    response.ctx.accesskit_node_builder(response.id, |node| {
+        node.set_label(format!("Unit of lengths: {}", view.unit.name().to_lowercase()));
+    });
+    if response.clicked() {
+        commands.push(command);
     }
 }
 

@@ -85,6 +85,10 @@ fn arrange(window: &mut Window, command: Command) {
         Command::ChooseString(index) => view.string = index,
         Command::ShowPage(page) => view.page = page,
         Command::ShowInputs(shown) => view.inputs = shown,
+        Command::ShowLengthsIn(unit) => {
+            view.unit = unit;
+            view.drafts.clear();
+        }
         Command::Fold(group) => view.fold(group),
         Command::GoTo(path) => go_to(window, path),
         Command::ResetPlots => {

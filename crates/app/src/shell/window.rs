@@ -71,6 +71,7 @@ impl Window {
     pub fn frame(&mut self, ui: &mut Ui) {
         let ctx = ui.ctx().clone();
         let palette = Palette::of(ctx.theme());
+        self.view.unit.set(&ctx);
         let mut commands = self.keys(&ctx);
         commands.extend(dropped(&ctx));
         commands.extend(bar::show(ui, palette, &self.desk, &self.view));
@@ -119,7 +120,8 @@ impl Window {
             command.shortcut().is_some_and(pressed) || command.spare_shortcut().is_some_and(pressed)
         };
         let inputs = Command::ShowInputs(!self.view.inputs);
-        Command::with_keys().into_iter().chain([inputs]).filter(called).collect()
+        let unit = Command::ShowLengthsIn(self.view.unit.other());
+        Command::with_keys().into_iter().chain([inputs, unit]).filter(called).collect()
     }
 
     fn inputs(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
@@ -136,7 +138,8 @@ impl Window {
         let (plan, faults, outcome) = self.desk.parts();
         let report = outcome.and_then(|outcome| outcome.solution.report.strings.get(self.view.string));
         let around = Surroundings { string: self.view.string, folded: &self.view.folded, report };
-        let mut form = Form::new(faults, &mut self.view.drafts, &mut self.view.going_to, palette);
+        let mut form =
+            Form::new(faults, &mut self.view.drafts, &mut self.view.going_to, palette, self.view.unit);
         inputs::show(ui, &mut form, plan, &around);
         let Form { edit, left, commands, .. } = form;
         // A path that no field has shown by now has none.
@@ -149,8 +152,8 @@ impl Window {
     fn diagnosis(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
         let (plan, faults, outcome) = self.desk.parts();
         let Some(outcome) = outcome else { return Vec::new() };
-        let View { drafts, going_to, string, repair, .. } = &mut self.view;
-        let mut form = Form::new(faults, drafts, going_to, palette);
+        let View { drafts, going_to, string, repair, unit, .. } = &mut self.view;
+        let mut form = Form::new(faults, drafts, going_to, palette, *unit);
         repair_page::show(ui, &mut form, plan, outcome, *string, repair);
         let Form { edit, left, commands, .. } = form;
         self.settle(ui.ctx(), edit, left);

@@ -156,7 +156,8 @@ fn prepare_string(checked: &Checked, index: usize) -> Result<PreparedString, Phy
     Ok(PreparedString { line: on_neck.line, string, open, notes, frets, twelfth_sounds, breaking_load_n })
 }
 
-fn core(entry: &PlanString) -> Core {
+/// The core of a string as the physics sees it.
+pub(crate) fn core(entry: &PlanString) -> Core {
     Core {
         shape: match entry.core.shape {
             CoreShape::Round => section::CoreShape::Round,

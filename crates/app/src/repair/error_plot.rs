@@ -9,6 +9,7 @@ use crate::results::error_plot::{frame, fret_plot};
 use crate::results::figures::{cents, fixed};
 use crate::results::hover;
 use crate::theme::{Palette, marker, size};
+use crate::units::{LengthUnit, in_unit};
 
 /// The least height of the plot's scale, cents to either side.
 const LEAST_CENTS: f64 = 4.0;
@@ -79,7 +80,7 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, shown: &Shown<'_>, all: bool
     let frets = shown.plan.instrument.frets as usize;
     let fret = hover::fret(&painted.response, &painted.transform, frets);
     let response = tip(painted.response, palette, &drawn, fret);
-    let name = words(&drawn, shown.remedy);
+    let name = words(&drawn, shown.remedy, LengthUnit::of(ui.ctx()));
     response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, &name));
 }
 
@@ -140,11 +141,11 @@ fn tip(response: Response, palette: &Palette, strings: &[&StringNotes], fret: Op
     hover::tip(response, palette, &format!("String {}, fret {}, cents", string.string + 1, note.fret), &lines)
 }
 
-fn words(strings: &[&StringNotes], remedy: Option<&Remedy>) -> String {
+fn words(strings: &[&StringNotes], remedy: Option<&Remedy>, unit: LengthUnit) -> String {
     let mut text =
         "Errors of the fretted notes in cents, read and as the instrument found predicts them.".to_owned();
     if let Some(remedy) = remedy {
-        text.push_str(&format!(" After this job: {}", remedy.text));
+        text.push_str(&format!(" After this job: {}", in_unit(&remedy.text, unit)));
     }
     for string in strings {
         text.push_str(&format!(" String {}.", string.string + 1));

@@ -82,7 +82,10 @@ mod tests {
             "the crest stands −0.1 in off (1 in), 3 N"
         );
         assert_eq!(in_unit("30 N·mm² and mm", INCH), "30 N·mm² and mm");
-        assert_eq!(in_unit("string 1 +2.54 mm, string 2 1 mm.", INCH), "string 1 +0.1 in, string 2 0.0394 in.");
+        assert_eq!(
+            in_unit("string 1 +2.54 mm, string 2 1 mm.", INCH),
+            "string 1 +0.1 in, string 2 0.0394 in."
+        );
         assert_eq!(in_unit("from 1 to 2 mm", INCH), "from 0.0394 to 0.0787 in");
         assert_eq!(in_unit("", INCH), "");
     }

@@ -5,16 +5,17 @@ server=
 process=
 window=
 
-# Starts a display that nothing else uses and cleans up when the script ends.
+# Starts a display that nothing else uses, with a state folder of its own, and cleans up when the script ends.
 start_display() {
     local pipe
     pipe=$(mktemp -u)
     mkfifo "$pipe"
     Xvfb -displayfd 7 -screen 0 1920x1080x24 -nolisten tcp 7>"$pipe" >/dev/null 2>&1 &
     server=$!
-    trap 'stop_window; kill "$server" 2>/dev/null || true' EXIT
+    trap 'stop_window; kill "$server" 2>/dev/null || true; rm -rf "$CRESTLINE_STATE"' EXIT
     export DISPLAY=":$(timeout 20 head -1 "$pipe")" LIBGL_ALWAYS_SOFTWARE=1
     rm -f "$pipe"
+    export CRESTLINE_STATE=$(mktemp -d)
     unset WAYLAND_DISPLAY DBUS_SESSION_BUS_ADDRESS XDG_RUNTIME_DIR
 }
 

@@ -9,6 +9,8 @@ pub mod choices;
 pub mod edit;
 pub mod fields;
 pub mod inputs;
+pub mod keep;
+pub mod painter;
 pub mod papers;
 pub mod repair;
 pub mod results;

@@ -30,6 +30,7 @@ pub struct Desk {
     faults: Vec<Fault>,
     outcome: Option<Outcome>,
     changed: bool,
+    revision: u64,
 }
 
 impl Desk {
@@ -45,6 +46,7 @@ impl Desk {
             faults: Vec::new(),
             outcome: None,
             changed: false,
+            revision: 0,
         };
         desk.solve();
         desk
@@ -52,7 +54,8 @@ impl Desk {
 
     /// Puts another plan on the desk; its history starts anew.
     pub fn replace(&mut self, plan: Plan, path: Option<PathBuf>) {
-        *self = Self::new(plan, path);
+        let revision = self.revision + 1;
+        *self = Self { revision, ..Self::new(plan, path) };
     }
 
     /// The plan to edit, beside its faults and the last good result.
@@ -96,6 +99,7 @@ impl Desk {
     fn follow(&mut self) {
         self.settled = self.plan.clone();
         self.changed = self.on_disk.as_ref() != Some(&self.plan);
+        self.revision += 1;
         self.solve();
     }
 
@@ -113,8 +117,20 @@ impl Desk {
     /// Remembers that the plan now stands in the file at `path`.
     pub fn saved_as(&mut self, path: PathBuf) {
         self.path = Some(path);
-        self.on_disk = Some(self.plan.clone());
-        self.changed = false;
+        self.has_on_disk(Some(self.plan.clone()));
+    }
+
+    /// Remembers what the plan's file holds: another plan than was thought, or none at all.
+    pub fn has_on_disk(&mut self, plan: Option<Plan>) {
+        self.on_disk = plan;
+        self.changed = self.on_disk.as_ref() != Some(&self.plan);
+        self.revision += 1;
+    }
+
+    /// A number that grows with every change of the plan, of its file, or of what the file holds.
+    #[must_use]
+    pub fn revision(&self) -> u64 {
+        self.revision
     }
 
     /// The file that the plan is kept in.

@@ -6,7 +6,10 @@ use eframe::egui::{Button, Context, Id, Key, Modal, Modifiers, RichText, Ui};
 
 use super::path_box::PathBox;
 use super::picker::Purpose;
+use super::{disk, recover};
 use crate::edit::command::Command;
+use crate::edit::desk::Desk;
+use crate::keep::found::Found;
 use crate::theme::Palette;
 
 /// A question that stands in front of the window.
@@ -18,6 +21,10 @@ pub enum Question {
     Replace(Purpose, PathBuf),
     /// Which file?
     Path(PathBox),
+    /// Another program has changed the plan's file: which is to stand?
+    Disk(Box<disk::Changed>),
+    /// Work was left behind: take it up?
+    Recovery(Box<Found>),
 }
 
 /// What the user answered.
@@ -31,18 +38,24 @@ pub enum Reply {
     Use(Purpose, PathBuf),
     /// Use this file, and ask if it exists.
     Propose(Purpose, PathBuf),
+    /// What to do about a file that another program has changed.
+    Disk(disk::Choice),
+    /// What to do about work left behind.
+    Recovery(recover::Choice),
     /// Nothing.
     Cancel,
 }
 
 /// Shows the question; gives the answer once there is one.
-pub fn show(ctx: &Context, palette: &Palette, question: &mut Question, plan_name: &str) -> Option<Reply> {
+pub fn show(ctx: &Context, palette: &Palette, question: &mut Question, desk: &Desk) -> Option<Reply> {
     let modal = Modal::new(Id::unique("question")).show(ctx, |ui| {
         ui.set_width(460.0);
         match question {
-            Question::Unsaved(next) => unsaved(ui, palette, next, plan_name),
+            Question::Unsaved(next) => unsaved(ui, palette, next, &desk.file_name()),
             Question::Replace(purpose, path) => replace(ui, palette, *purpose, path),
             Question::Path(path_box) => path_box.show(ui, palette),
+            Question::Disk(changed) => disk::show(ui, palette, changed, &desk.plan),
+            Question::Recovery(found) => recover::show(ui, palette, found),
         }
     });
     if modal.inner.is_none() && modal.should_close() {
@@ -51,7 +64,8 @@ pub fn show(ctx: &Context, palette: &Palette, question: &mut Question, plan_name
     modal.inner
 }
 
-fn heading(ui: &mut Ui, text: &str) {
+/// The words that a question begins with.
+pub fn heading(ui: &mut Ui, text: &str) {
     ui.label(RichText::new(text).heading().strong());
     ui.add_space(4.0);
 }

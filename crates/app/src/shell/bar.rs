@@ -1,5 +1,7 @@
 //! The bar at the top: menus, pages, and the plan's name.
 
+use std::path::{Path, PathBuf};
+
 use crestline_plan::EXAMPLES;
 use crestline_sheets::Format;
 use eframe::egui::{
@@ -13,14 +15,14 @@ use crate::units::LengthUnit;
 use crate::view::{Page, ThemeChoice, View};
 
 /// The bar.
-pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View) -> Vec<Command> {
+pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View, recent: &[PathBuf]) -> Vec<Command> {
     let mut commands = Vec::new();
     let frame = Frame::new().fill(palette.band).inner_margin(Margin::symmetric(10, 4));
     Panel::top("bar").frame(frame).resizable(false).show(ui, |ui| {
         MenuBar::new().ui(ui, |ui| {
             ui.label(RichText::new("Crestline").heading().strong().color(palette.accent));
             ui.add_space(size::GAP);
-            file_menu(ui, &mut commands);
+            file_menu(ui, recent, &mut commands);
             edit_menu(ui, desk, view, &mut commands);
             view_menu(ui, view, &mut commands);
             ui.add_space(size::WIDE_GAP);
@@ -32,7 +34,7 @@ pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View) -> Vec<Com
     commands
 }
 
-fn file_menu(ui: &mut Ui, commands: &mut Vec<Command>) {
+fn file_menu(ui: &mut Ui, recent: &[PathBuf], commands: &mut Vec<Command>) {
     ui.menu_button("File", |ui| {
         ui.menu_button("New from example", |ui| {
             for example in EXAMPLES {
@@ -43,6 +45,9 @@ fn file_menu(ui: &mut Ui, commands: &mut Vec<Command>) {
             }
         });
         item(ui, commands, Command::Open, true);
+        ui.add_enabled_ui(!recent.is_empty(), |ui| {
+            ui.menu_button("Open a recent plan", |ui| recent_plans(ui, recent, commands));
+        });
         ui.separator();
         item(ui, commands, Command::Save, true);
         item(ui, commands, Command::SaveAs, true);
@@ -53,6 +58,14 @@ fn file_menu(ui: &mut Ui, commands: &mut Vec<Command>) {
         ui.separator();
         item(ui, commands, Command::Quit, true);
     });
+}
+
+fn recent_plans(ui: &mut Ui, recent: &[PathBuf], commands: &mut Vec<Command>) {
+    for path in recent {
+        let part = |part: Option<&Path>| part.map(|part| part.display().to_string()).unwrap_or_default();
+        let words = format!("{}  in  {}", part(path.file_name().map(Path::new)), part(path.parent()));
+        entry(ui, commands, Command::OpenFile(path.clone()), words, true);
+    }
 }
 
 fn edit_menu(ui: &mut Ui, desk: &Desk, view: &View, commands: &mut Vec<Command>) {

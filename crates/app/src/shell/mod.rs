@@ -2,6 +2,7 @@
 
 pub mod ask;
 pub mod bar;
+pub mod disk;
 pub mod files;
 pub mod foot;
 pub mod launch;
@@ -10,4 +11,9 @@ pub mod options;
 pub mod path_box;
 pub mod picker;
 pub mod readings;
+pub mod recover;
 pub mod window;
+
+#[cfg(test)]
+#[allow(clippy::unwrap_used, clippy::expect_used, clippy::panic)]
+mod trials;

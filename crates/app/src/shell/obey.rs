@@ -7,14 +7,18 @@ use crestline_sheets::{Format, export};
 use eframe::egui::{Context, ViewportCommand};
 
 use super::ask::{Question, Reply};
+use super::disk;
 use super::files::{self, with_ending};
 use super::path_box::PathBox;
 use super::picker::{Answer, Picker, Purpose};
 use super::readings;
+use super::recover;
 use super::window::Window;
 use crate::edit::command::Command;
 use crate::edit::history::Edit;
 use crate::edit::strings;
+use crate::keep::autosave::whole;
+use crate::keep::watch::Watch;
 use crate::theme;
 use crate::view::{Group, Page};
 
@@ -145,8 +149,7 @@ fn step(window: &mut Window, back: bool) {
     let name = if back { window.desk.history().undo_name() } else { window.desk.history().redo_name() };
     let said = name.map(|name| format!("{}: {name}", if back { "Undone" } else { "Done again" }));
     let stepped = if back { window.desk.undo() } else { window.desk.redo() };
-    window.view.drafts.clear();
-    choose_string(window, window.view.string);
+    forget_what_was_typed(window);
     if let (true, Some(said)) = (stepped, said) {
         window.view.say(said);
     }
@@ -161,6 +164,7 @@ fn new_from_example(window: &mut Window, name: &str) {
     match read_draft(example.text) {
         Ok(plan) => {
             window.desk.replace(plan, None);
+            window.watch_file();
             fresh(window);
         }
         Err(faults) => {
@@ -170,18 +174,28 @@ fn new_from_example(window: &mut Window, name: &str) {
 }
 
 fn open(window: &mut Window, path: &Path) {
+    // Looked at before it is read, so that no change in between goes unseen.
+    let watch = Watch::new(path);
     match files::open(path) {
         Ok(plan) => {
             window.desk.replace(plan, Some(path.to_owned()));
+            window.watch_file();
+            window.watch = Some(watch);
             fresh(window);
             window.view.say(format!("Opened {}", path.display()));
+            recover::look_around(window);
         }
-        Err(words) => window.view.complain(words),
+        Err(words) => {
+            if !path.exists() {
+                window.recent.remove(&whole(path));
+            }
+            window.view.complain(words);
+        }
     }
 }
 
 /// Forgets what belonged to the plan before.
-fn fresh(window: &mut Window) {
+pub fn fresh(window: &mut Window) {
     window.view.drafts.clear();
     window.view.string = 0;
     window.view.saddle_camera.reset();
@@ -193,11 +207,26 @@ fn fresh(window: &mut Window) {
 
 fn save(window: &mut Window, ctx: &Context) {
     match window.desk.path().map(Path::to_owned) {
+        Some(_) if disk::look(window, Some(None)) => {}
         Some(path) => {
             save_to(window, path);
         }
         None => pick(window, ctx, Purpose::Save),
     }
+}
+
+/// Saves to the plan's file, and then does what waits for that.
+pub fn save_then(window: &mut Window, ctx: &Context, next: Option<Command>) {
+    let Some(path) = window.desk.path().map(Path::to_owned) else { return };
+    if let (true, Some(next)) = (save_to(window, path), next) {
+        obey(window, ctx, next);
+    }
+}
+
+/// Forgets what was being typed, because the plan has been changed from elsewhere.
+pub fn forget_what_was_typed(window: &mut Window) {
+    window.view.drafts.clear();
+    choose_string(window, window.view.string);
 }
 
 /// Saves the plan; false where that failed.
@@ -212,10 +241,14 @@ fn save_to(window: &mut Window, path: PathBuf) -> bool {
             };
             window.view.say(format!("Saved {}{remark}", path.display()));
             window.desk.saved_as(path);
+            window.watch_file();
             true
         }
         Err(words) => {
-            window.view.complain(words);
+            window.view.complain(format!(
+                "{words}. The plan is unchanged in this window, and its unsaved changes are kept; it can be saved to \
+                 another place."
+            ));
             false
         }
     }
@@ -269,17 +302,17 @@ pub fn take_reply(window: &mut Window, ctx: &Context, reply: Reply) {
     match reply {
         Reply::Cancel => window.after_saving = None,
         Reply::SaveThen(next) => match window.desk.path().map(Path::to_owned) {
-            Some(path) => {
-                if save_to(window, path) {
-                    obey(window, ctx, next);
-                }
-            }
+            Some(_) if disk::look(window, Some(Some(next.clone()))) => {}
+            Some(_) => save_then(window, ctx, Some(next)),
             None => {
                 pick(window, ctx, Purpose::Save);
                 window.after_saving = Some(next);
             }
         },
         Reply::Without(next) => without_saving(window, ctx, next),
+        Reply::Disk(choice) => disk::take(window, ctx, choice),
+        // Its question holds what it is about; the window passes both on.
+        Reply::Recovery(_) => {}
         Reply::Propose(purpose, path) if purpose.writes() && path.exists() => {
             window.question = Some(Question::Replace(purpose, path));
         }
@@ -291,6 +324,7 @@ fn without_saving(window: &mut Window, ctx: &Context, next: Command) {
     match next {
         Command::Quit => {
             window.may_close = true;
+            window.autosave.forget();
             ctx.send_viewport_cmd(ViewportCommand::Close);
         }
         Command::NewFromExample(name) => new_from_example(window, name),

@@ -1,29 +1,37 @@
 //! The window: one frame after the other.
 
+use std::collections::VecDeque;
 use std::io::Write;
 use std::path::PathBuf;
 use std::time::Instant;
 
 use crestline_plan::Plan;
-use eframe::egui::{CentralPanel, Context, Frame, Margin, Panel, RichText, Ui, ViewportCommand};
+use eframe::egui::{
+    CentralPanel, Color32, Context, Event, Frame, Margin, Panel, RichText, Ui, ViewportCommand,
+};
 
 use super::ask::{self, Question};
 use super::obey;
 use super::options::Options;
 use super::picker::Picker;
 use super::readings::READINGS_ENDING;
-use super::{bar, foot};
+use super::{bar, disk, foot, recover};
 use crate::choices;
 use crate::edit::command::Command;
 use crate::edit::desk::Desk;
 use crate::edit::history::Edit;
 use crate::fields::form::Form;
 use crate::inputs::{self, Surroundings};
-use crate::papers;
+use crate::keep::autosave::Autosave;
+use crate::keep::found::Found;
+use crate::keep::layout::Layout;
+use crate::keep::recent::Recent;
+use crate::keep::watch::Watch;
 use crate::repair::page as repair_page;
 use crate::results::{layout_page, notes_page, notices};
 use crate::theme::{self, Palette};
 use crate::view::{Page, View};
+use crate::{painter, papers};
 
 /// Width of the inputs: as they open, at least, and at most.
 const INPUTS: [f32; 3] = [392.0, 360.0, 620.0];
@@ -42,8 +50,20 @@ pub struct Window {
     pub after_saving: Option<Command>,
     /// Whether the window may close although the plan has changes.
     pub may_close: bool,
+    /// The keeping of unsaved work.
+    pub autosave: Autosave,
+    /// Work of earlier windows that is still to be asked about.
+    pub found: VecDeque<Found>,
+    /// The plans that were open lately.
+    pub recent: Recent,
+    /// The plan's file, as it was last seen.
+    pub watch: Option<Watch>,
+    /// The folder for what outlives the window.
+    pub state: Option<PathBuf>,
     /// Since when the first frame has been waited for, where its time is to be told.
     pub tell_first_frame: Option<Instant>,
+    inputs_width: Option<f32>,
+    context: Context,
     frames: u64,
     title: String,
 }
@@ -54,16 +74,43 @@ impl Window {
     pub fn new(ctx: &Context, plan: Plan, path: Option<PathBuf>, options: &Options) -> Self {
         theme::install(ctx);
         theme::choose(ctx, options.theme);
-        Self {
+        ctx.set_zoom_factor(options.zoom);
+        let wake = ctx.clone();
+        let mut window = Self {
             desk: Desk::new(plan, path),
             view: options.view(),
             question: None,
             picker: None,
             after_saving: None,
             may_close: false,
+            autosave: Autosave::new(options.state.clone(), move || wake.request_repaint()),
+            found: VecDeque::new(),
+            recent: Recent::read(options.state.as_deref()),
+            watch: None,
+            state: options.state.clone(),
             tell_first_frame: None,
+            inputs_width: options.inputs_width,
+            context: ctx.clone(),
             frames: 0,
             title: String::new(),
+        };
+        recover::look_around(&mut window);
+        window.watch_file();
+        window
+    }
+
+    /// Watches the plan's file from now on, and puts it on the list of recent ones.
+    pub fn watch_file(&mut self) {
+        self.watch = self.desk.path().map(Watch::new);
+        if let Some(path) = self.desk.path() {
+            self.recent.add(path);
+        }
+    }
+
+    /// Takes the plan's file as it is now for seen.
+    pub fn take_file_as_seen(&mut self) {
+        if let Some(watch) = &mut self.watch {
+            watch.accept();
         }
     }
 
@@ -74,7 +121,7 @@ impl Window {
         self.view.unit.set(&ctx);
         let mut commands = self.keys(&ctx);
         commands.extend(dropped(&ctx));
-        commands.extend(bar::show(ui, palette, &self.desk, &self.view));
+        commands.extend(bar::show(ui, palette, &self.desk, &self.view, self.recent.plans()));
         commands.extend(foot::show(ui, palette, self.view.message.as_ref()));
         if let Some(picker) = &self.picker {
             commands.extend(foot::waiting(ui, palette, picker.purpose.title()));
@@ -92,9 +139,27 @@ impl Window {
             obey::obey(self, &ctx, command);
         }
         obey::take_answer(self, &ctx);
+        self.keep(&ctx);
         self.guard_closing(&ctx);
         self.follow_title(&ctx);
         self.tell_timing(&ctx);
+    }
+
+    /// Keeps unsaved work, and looks after the plan's file when the user comes back to the window.
+    fn keep(&mut self, ctx: &Context) {
+        if let Some(trouble) = self.autosave.follow(&self.desk) {
+            self.view.complain(trouble);
+        }
+        let comes_back =
+            ctx.input(|input| input.events.iter().any(|event| matches!(event, Event::WindowFocused(true))));
+        if comes_back && self.question.is_none() {
+            disk::look(self, None);
+        }
+        let asked = self.question.is_some();
+        recover::ask_next(self);
+        if comes_back || self.question.is_some() != asked {
+            ctx.request_repaint();
+        }
     }
 
     /// Tells the time to the first frame at the beginning of the second, when the first has been painted.
@@ -126,11 +191,14 @@ impl Window {
 
     fn inputs(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
         let [usual, least, most] = INPUTS;
+        let width = self.inputs_width.unwrap_or(usual).clamp(least, most);
         let frame =
             Frame::new().fill(palette.ground).inner_margin(Margin { left: 8, right: 4, top: 8, bottom: 8 });
         let panel =
-            Panel::left("inputs").resizable(true).default_size(usual).size_range(least..=most).frame(frame);
-        panel.show(ui, |ui| self.form(ui, palette)).inner
+            Panel::left("inputs").resizable(true).default_size(width).size_range(least..=most).frame(frame);
+        let shown = panel.show(ui, |ui| self.form(ui, palette));
+        self.inputs_width = Some(shown.response.rect.width());
+        shown.inner
     }
 
     /// The fields; what they changed is settled at once, so that results follow typing.
@@ -208,12 +276,17 @@ impl Window {
     }
 
     fn ask(&mut self, ctx: &Context, palette: &Palette) {
-        let name = self.desk.file_name();
         let Some(question) = &mut self.question else { return };
-        if let Some(reply) = ask::show(ctx, palette, question, &name) {
-            self.question = None;
+        if let Some(reply) = ask::show(ctx, palette, question, &self.desk) {
+            let question = self.question.take();
             ask::forget_focus(ctx);
-            obey::take_reply(self, ctx, reply);
+            match (question, reply) {
+                (Some(Question::Recovery(found)), ask::Reply::Recovery(choice)) => {
+                    recover::take(self, *found, choice);
+                }
+                (_, reply) => obey::take_reply(self, ctx, reply),
+            }
+            ctx.request_repaint();
         }
     }
 
@@ -224,6 +297,21 @@ impl Window {
             ctx.send_viewport_cmd(ViewportCommand::CancelClose);
             self.question = Some(Question::Unsaved(Command::Quit));
         }
+    }
+
+    /// Remembers the arrangement for the next window.
+    fn remember(&self) {
+        let (Some(folder), ctx) = (&self.state, &self.context) else { return };
+        let zoom = ctx.zoom_factor();
+        let layout = Layout {
+            page: Some(self.view.page),
+            theme: Some(self.view.theme),
+            zoom: Some(zoom),
+            inputs: Some(self.view.inputs),
+            inputs_width: self.inputs_width,
+            size: ctx.input(|input| input.viewport().inner_rect).map(|rect| (rect.size() * zoom).into()),
+        };
+        layout.write(folder);
     }
 
     fn follow_title(&mut self, ctx: &Context) {
@@ -249,7 +337,25 @@ impl eframe::App for Window {
         self.frame(ui);
     }
 
+    fn on_exit(&mut self, _gl: Option<&eframe::glow::Context>) {
+        self.remember();
+    }
+
     fn clear_color(&self, visuals: &eframe::egui::Visuals) -> [f32; 4] {
         visuals.panel_fill.to_normalized_gamma_f32()
+    }
+}
+
+impl painter::window::Show for Window {
+    fn frame(&mut self, ui: &mut Ui) {
+        Self::frame(self, ui);
+    }
+
+    fn ground(&self, ctx: &Context) -> Color32 {
+        Palette::of(ctx.theme()).ground
+    }
+
+    fn leave(&mut self) {
+        self.remember();
     }
 }

@@ -15,7 +15,7 @@ start_display
 export CRESTLINE_THEME=light
 # Of 1,024,000 pixels, as many may be another colour by more than a fiftieth: OpenGL and the processor round
 # the soft edges of letters and lines each in their own way.
-most_different=5000
+most_different=500
 
 fail() {
     echo "no_opengl.sh: $1" >&2

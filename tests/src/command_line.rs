@@ -7,6 +7,7 @@ mod example_files;
 mod faults;
 mod report;
 mod status;
+mod supports;
 mod tables;
 
 use std::io::{self, Write};

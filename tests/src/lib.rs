@@ -17,4 +17,6 @@ mod published;
 #[cfg(test)]
 mod reference;
 #[cfg(test)]
+mod supports;
+#[cfg(test)]
 mod tidy;

@@ -44,6 +44,8 @@ pub(crate) enum Command {
     Compare(Compare),
     /// Find from tuner readings what is wrong with an instrument, and what cures it.
     Diagnose(Diagnose),
+    /// Fit how firmly nut, frets and saddle hold the strings, from readings and measured crests.
+    Supports(Supports),
     /// Print where everything stands from the datum, and how each blank's top is shaped.
     Bench(Bench),
     /// Print setbacks rounded to a step, what that costs, and what a slip costs.
@@ -115,6 +117,22 @@ pub(crate) struct Diagnose {
     #[arg(long, value_name = "FILE")]
     pub readings: Option<PathBuf>,
     /// Print the diagnosis as JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `supports`
+#[derive(Debug, Args)]
+pub(crate) struct Supports {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// Take the readings from this CSV file (string, fret, kind, cents) in place of the plan's own.
+    #[arg(long, value_name = "FILE")]
+    pub readings: Option<PathBuf>,
+    /// Write the plan with the fixities found to this file, in place of printing the result.
+    #[arg(short, long, value_name = "FILE", conflicts_with = "json")]
+    pub output: Option<PathBuf>,
+    /// Print the result as JSON.
     #[arg(long)]
     pub json: bool,
 }

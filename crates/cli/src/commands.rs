@@ -5,13 +5,13 @@ use std::path::{Path, PathBuf};
 
 use clap::Parser;
 use clap::error::ErrorKind;
-use crestline_plan::{Checked, EXAMPLES, Priors, Solution};
+use crestline_plan::{Checked, EXAMPLES, Solution};
 
-use crate::arguments::{Arguments, Bench, Command, Compare, Diagnose, Example, Rounding, Solve, is_standard};
+use crate::arguments::{Arguments, Bench, Command, Compare, Example, Rounding, Solve, is_standard};
 use crate::failure::{STATUS_DONE, STATUS_REFUSED};
 use crate::text::safe;
 use crate::{
-    Failure, Streams, batch, bench_files, bench_table, diagnosis_table, files, print, solve_table, styles,
+    Failure, Streams, batch, bench_files, bench_table, diagnosing, files, print, solve_table, styles,
     workshop_table,
 };
 
@@ -89,7 +89,8 @@ fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failur
         Command::Check(options) => check(&options.plan, streams),
         Command::Example(options) => example(options, streams),
         Command::Compare(options) => compare(options, streams),
-        Command::Diagnose(options) => diagnose(options, streams),
+        Command::Diagnose(options) => diagnosing::diagnose(options, streams),
+        Command::Supports(options) => diagnosing::supports(options, streams),
         Command::Bench(options) => bench(options, streams),
         Command::Workshop(options) => workshop(options, streams),
         Command::Sheet(options) => bench_files::sheet(options, streams),
@@ -147,36 +148,6 @@ fn compare(options: &Compare, streams: &mut Streams<'_>) -> Result<(), Failure> 
     print::result(streams, styles::text(checked.plan(), &comparison).as_bytes())
 }
 
-fn diagnose(options: &Diagnose, streams: &mut Streams<'_>) -> Result<(), Failure> {
-    let path = &options.plan.plan;
-    let checked = with_readings(checked(path, streams)?, options, streams)?;
-    let diagnosis =
-        crestline_plan::diagnose(&checked, &Priors::default()).map_err(|faults| refused(path, faults))?;
-    if options.json {
-        print::notices(streams, &diagnosis.notices);
-        return print::json(streams, &diagnosis);
-    }
-    print::result(streams, diagnosis_table::text(checked.plan(), &diagnosis).as_bytes())
-}
-
-/// The plan with the readings of another file in place of its own, where one is named.
-fn with_readings(
-    checked: Checked,
-    options: &Diagnose,
-    streams: &mut Streams<'_>,
-) -> Result<Checked, Failure> {
-    let Some(path) = &options.readings else { return Ok(checked) };
-    if is_standard(path) && is_standard(&options.plan.plan) {
-        return Err(Failure::Argument(
-            "--readings: plan and readings cannot both be on standard input".to_owned(),
-        ));
-    }
-    let mut plan = checked.plan().clone();
-    plan.readings = crestline_plan::readings_from_csv(&text_of(path, streams)?)
-        .map_err(|faults| refused(path, faults))?;
-    crestline_plan::check(&plan).map_err(|faults| refused(path, faults))
-}
-
 fn bench(options: &Bench, streams: &mut Streams<'_>) -> Result<(), Failure> {
     let (checked, solution) = solved(&options.plan.plan, streams)?;
     let plan = checked.plan();
@@ -214,7 +185,7 @@ pub(crate) fn solved_text(path: &Path, text: &str) -> Result<(Checked, Solution)
 }
 
 /// Reads and checks a plan.
-fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
+pub(crate) fn checked(path: &Path, streams: &mut Streams<'_>) -> Result<Checked, Failure> {
     checked_text(path, &text_of(path, streams)?)
 }
 
@@ -232,7 +203,7 @@ pub(crate) fn text_of(path: &Path, streams: &mut Streams<'_>) -> Result<String, 
     }
 }
 
-fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
+pub(crate) fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
     Failure::Faults { name: shown_name(path), faults }
 }
 

@@ -10,14 +10,16 @@ mod notices;
 mod remedies;
 mod report;
 mod suggest;
+mod supports;
 
 use crestline_physics::PhysicsError;
 use crestline_physics::diagnose::Priors;
 
-use crate::{Checked, Diagnosis, Fault, ReadingKind};
+use crate::{Checked, Diagnosis, Fault, Plan, ReadingKind};
 pub use fitted::fitted_plan;
 pub use import::readings_from_csv;
 pub use suggest::suggested_frets;
+pub use supports::{FixityReport, SupportsFit, fit_supports};
 
 /// Finds what is probably wrong with the instrument that the plan's readings were taken on, and what cures it.
 ///
@@ -38,18 +40,7 @@ pub use suggest::suggested_frets;
 /// # Errors
 /// `readings` where the plan has no fretted reading; as [`crate::solve`]; `priors` where they are out of range.
 pub fn diagnose(checked: &Checked, priors: &Priors) -> Result<Diagnosis, Vec<Fault>> {
-    let readings = &checked.plan().readings;
-    if !readings.iter().any(|reading| reading.kind == ReadingKind::Fretted) {
-        let found = match readings.len() {
-            0 => "no readings".to_owned(),
-            some => format!("{some} readings, none of them of a fretted note"),
-        };
-        return Err(vec![Fault::new(
-            "readings",
-            found,
-            "at least one fretted reading; ten frets a string are many",
-        )]);
-    }
+    some_fretted(checked.plan())?;
     let cases = cases::cases(checked)?;
     let found = crestline_physics::diagnose::diagnose(&cases.strings, priors).map_err(not_found)?;
     let strings = report::strings(checked, &cases, &found);
@@ -64,6 +55,18 @@ pub fn diagnose(checked: &Checked, priors: &Priors) -> Result<Diagnosis, Vec<Fau
         notices,
         found: report::instrument(checked, &cases, &found),
     })
+}
+
+/// Refuses a plan without fretted readings.
+fn some_fretted(plan: &Plan) -> Result<(), Vec<Fault>> {
+    if plan.readings.iter().any(|reading| reading.kind == ReadingKind::Fretted) {
+        return Ok(());
+    }
+    let found = match plan.readings.len() {
+        0 => "no readings".to_owned(),
+        some => format!("{some} readings, none of them of a fretted note"),
+    };
+    Err(vec![Fault::new("readings", found, "at least one fretted reading; ten frets a string are many")])
 }
 
 /// The fault of a plan whose instrument cannot be found.

@@ -48,7 +48,9 @@ pub use bench::{BenchLayout, BenchPiece, BenchString, bench_layout, bench_layout
 pub use check::{Checked, check};
 pub use compare::compare;
 pub use crestline_physics::diagnose::Priors;
-pub use diagnose::{diagnose, fitted_plan, readings_from_csv, suggested_frets};
+pub use diagnose::{
+    FixityReport, SupportsFit, diagnose, fit_supports, fitted_plan, readings_from_csv, suggested_frets,
+};
 pub use diagnosis::*;
 pub use document::*;
 pub use examples::{EXAMPLES, Example, example};

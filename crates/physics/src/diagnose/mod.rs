@@ -13,6 +13,7 @@
 //! together, so that its standard deviation is that of what they agree on.
 
 mod causes;
+mod fixities;
 mod foresight;
 mod moves;
 mod outliers;
@@ -22,6 +23,7 @@ mod search;
 mod unknowns;
 
 pub use causes::{Cause, CauseShare};
+pub use fixities::{FoundFixities, fit_fixities};
 pub use foresight::foreseen_sd_mm;
 pub use moves::{SaddleMove, SaddleNutMove};
 pub use outliers::MisplacedFret;

@@ -122,7 +122,7 @@ impl Unknowns<'_> {
 
     fn kept_legal(&self, mut at: DVector<f64>) -> DVector<f64> {
         for column in 0..at.len() {
-            at[column] = at[column].max(self.lowest(column));
+            at[column] = at[column].max(self.lowest(column)).min(self.highest(column));
         }
         at
     }
@@ -130,7 +130,9 @@ impl Unknowns<'_> {
     /// Takes out of the step what would go through a limit.
     fn hold_at_limits(&self, at: &DVector<f64>, normal: &mut DMatrix<f64>, gradient: &mut DVector<f64>) {
         for column in 0..at.len() {
-            if at[column] <= self.lowest(column) && gradient[column] < 0.0 {
+            let is_held = (at[column] <= self.lowest(column) && gradient[column] < 0.0)
+                || (at[column] >= self.highest(column) && gradient[column] > 0.0);
+            if is_held {
                 normal.row_mut(column).fill(0.0);
                 normal.column_mut(column).fill(0.0);
                 normal[(column, column)] = 1.0;

@@ -1,10 +1,13 @@
 //! The unknowns as one vector in units of their prior standard deviations, and the forward model on it.
 
+use std::ops::Range;
+
 use nalgebra::{DMatrix, DVector};
 
 use super::{Priors, Sounded, StringCase};
+use crate::fretting::{Fixities, NutHeight};
 use crate::mode::{Ends, bending_length_mm, mode_ratio};
-use crate::{Contacts, FrettedString, OpenString, PhysicsError, StringSetup, fretting::NutHeight};
+use crate::{Contacts, FrettedString, OpenString, PhysicsError, StringSetup};
 
 /// The unknowns of one string, in their order.
 pub(super) const CREST: usize = 0;
@@ -15,7 +18,7 @@ pub(super) const SLOT: usize = 4;
 pub(super) const ACTION: usize = 5;
 pub(super) const TUNING: usize = 6;
 pub(super) const OWN: usize = 7;
-/// The shared unknowns: press depth, relief, then the frets.
+/// The shared unknowns: press depth, relief, the three end fixities where they are looked for, then the frets.
 const SHARED: usize = 2;
 
 /// Where the plan presses to no depth at all a factor says nothing; a finger that only just seats the string.
@@ -28,6 +31,8 @@ const DIFFERENCE: f64 = 1e-2;
 pub(super) struct Unknowns<'a> {
     pub strings: &'a [StringCase],
     pub priors: &'a Priors,
+    /// Prior standard deviation of the end fixities, where they are looked for.
+    pub fixity_sd: Option<f64>,
     /// Indices of the frets that any string was pressed to.
     pub frets: Vec<usize>,
     /// Prior standard deviation of each of these frets' places, mm.
@@ -56,6 +61,7 @@ impl<'a> Unknowns<'a> {
         Self {
             strings,
             priors,
+            fixity_sd: None,
             frets,
             fret_sd_mm,
             slot_sd_mm: vec![priors.slot_mm; strings.len()],
@@ -77,7 +83,7 @@ impl<'a> Unknowns<'a> {
     }
 
     pub fn count(&self) -> usize {
-        OWN * self.strings.len() + SHARED + self.frets.len()
+        self.fret_column(self.frets.len())
     }
 
     pub fn press_column(&self) -> usize {
@@ -89,7 +95,28 @@ impl<'a> Unknowns<'a> {
     }
 
     pub fn fret_column(&self, place: usize) -> usize {
-        self.press_column() + SHARED + place
+        self.fixity_columns().end + place
+    }
+
+    /// The columns of the fixities at nut, fret and saddle; none where they are not looked for.
+    pub fn fixity_columns(&self) -> Range<usize> {
+        let start = self.press_column() + SHARED;
+        start..start + if self.fixity_sd.is_some() { 3 } else { 0 }
+    }
+
+    /// The fixities as they are expected, in the order of their columns.
+    pub fn expected_fixities(&self) -> [f64; 3] {
+        let Fixities { nut, fret, saddle } = self.strings[0].setup.fixities;
+        [nut, fret, saddle]
+    }
+
+    /// The fixities of all strings, where they are looked for.
+    pub fn fixities(&self, at: &DVector<f64>) -> Option<Fixities> {
+        let sd = self.fixity_sd?;
+        let columns = self.fixity_columns();
+        let found =
+            |index: usize| (self.expected_fixities()[index] + sd * at[columns.start + index]).clamp(0.0, 1.0);
+        Some(Fixities { nut: found(0), fret: found(1), saddle: found(2) })
     }
 
     /// The columns that a string depends on: its own, then the shared ones.
@@ -145,6 +172,7 @@ impl<'a> Unknowns<'a> {
         setup.frequency_hz *= (own(TUNING) / 1200.0).exp2();
         setup.pressing.depth_mm = self.press_depth_mm(at);
         setup.relief_mm = self.relief_mm(at);
+        setup.fixities = self.fixities(at).unwrap_or(setup.fixities);
         for (place, (&fret, sd_mm)) in self.frets.iter().zip(&self.fret_sd_mm).enumerate() {
             setup.fret_mm[fret] += sd_mm * at[self.fret_column(place)];
         }
@@ -155,10 +183,25 @@ impl<'a> Unknowns<'a> {
         Trial { setup, contacts }
     }
 
-    /// Lowest value of a column: heights and relief cannot be below zero.
+    /// Highest value of a column: a support cannot hold firmer than a clamp.
+    pub fn highest(&self, column: usize) -> f64 {
+        let columns = self.fixity_columns();
+        match self.fixity_sd {
+            Some(sd) if columns.contains(&column) => {
+                (1.0 - self.expected_fixities()[column - columns.start]) / sd
+            }
+            _ => f64::INFINITY,
+        }
+    }
+
+    /// Lowest value of a column: heights, relief and fixities cannot be below zero.
     pub fn lowest(&self, column: usize) -> f64 {
         if column == self.relief_column() {
             return -self.expected_relief_mm() / self.priors.relief_mm;
+        }
+        let columns = self.fixity_columns();
+        if let Some(sd) = self.fixity_sd.filter(|_| columns.contains(&column)) {
+            return -self.expected_fixities()[column - columns.start] / sd;
         }
         if column >= self.press_column() {
             return f64::NEG_INFINITY;
@@ -193,9 +236,11 @@ impl<'a> Unknowns<'a> {
         let mut slopes = DMatrix::zeros(here.len(), columns.len());
         let mut there = at.clone();
         for (place, &column) in columns.iter().enumerate() {
-            there[column] = at[column] + DIFFERENCE;
+            // Away from a limit that the step would go through.
+            let by = if at[column] + DIFFERENCE > self.highest(column) { -DIFFERENCE } else { DIFFERENCE };
+            there[column] = at[column] + by;
             if column < self.fret_column(0) {
-                slopes.set_column(place, &((self.errors_cents(string, &there)? - &here) / DIFFERENCE));
+                slopes.set_column(place, &((self.errors_cents(string, &there)? - &here) / by));
             } else {
                 self.fret_slopes(string, column, &there, &here, &mut slopes.column_mut(place))?;
             }

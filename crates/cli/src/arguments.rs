@@ -50,6 +50,8 @@ pub(crate) enum Command {
     Bench(Bench),
     /// Print setbacks rounded to a step, what that costs, and what a slip costs.
     Workshop(Rounding),
+    /// Print how sure the setbacks are, and what to measure to be surer.
+    Uncertainty(Spread),
     /// Write the dimensioned drawing at 1:1.
     Sheet(Sheet),
     /// Write the schedule for the jig as CSV.
@@ -159,6 +161,25 @@ pub(crate) struct Rounding {
     #[arg(long, value_parser = step, default_value = "0.1mm")]
     pub step: Step,
     /// Print the figures as JSON.
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `uncertainty`
+#[derive(Debug, Args)]
+pub(crate) struct Spread {
+    #[command(flatten)]
+    pub plan: PlanArgument,
+    /// Number of instruments in the sample, 64 to 32768. As the plan's tolerances say where left out.
+    #[arg(long, value_name = "N")]
+    pub samples: Option<u32>,
+    /// Number from which the sample is drawn. As the plan's tolerances say where left out.
+    #[arg(long, value_name = "S")]
+    pub seed: Option<u32>,
+    /// How far from true a note may be, for the chances. As the plan's tolerances say where left out.
+    #[arg(long, value_name = "CENTS")]
+    pub limit: Option<f64>,
+    /// Print the whole report as JSON.
     #[arg(long)]
     pub json: bool,
 }

@@ -12,7 +12,7 @@ use crate::failure::{STATUS_DONE, STATUS_REFUSED};
 use crate::text::safe;
 use crate::{
     Failure, Streams, batch, bench_files, bench_table, diagnosing, files, print, solve_table, styles,
-    workshop_table,
+    uncertainty, workshop_table,
 };
 
 /// What the arguments ask for.
@@ -93,6 +93,7 @@ fn dispatched(command: &Command, streams: &mut Streams<'_>) -> Result<(), Failur
         Command::Supports(options) => diagnosing::supports(options, streams),
         Command::Bench(options) => bench(options, streams),
         Command::Workshop(options) => workshop(options, streams),
+        Command::Uncertainty(options) => uncertainty::uncertainty(options, streams),
         Command::Sheet(options) => bench_files::sheet(options, streams),
         Command::Schedule(options) => bench_files::schedule(options, streams),
     }
@@ -203,6 +204,7 @@ pub(crate) fn text_of(path: &Path, streams: &mut Streams<'_>) -> Result<String, 
     }
 }
 
+/// The failure of a plan that has faults.
 pub(crate) fn refused(path: &Path, faults: Vec<crestline_plan::Fault>) -> Failure {
     Failure::Faults { name: shown_name(path), faults }
 }

@@ -34,6 +34,8 @@ mod styles;
 mod supports_table;
 mod table;
 mod text;
+mod uncertainty;
+mod uncertainty_table;
 mod workshop_table;
 
 pub use arguments::description;

@@ -16,6 +16,7 @@ pub mod error;
 pub mod fit;
 pub mod fretting;
 pub mod mode;
+pub mod near;
 pub mod neck;
 pub mod path;
 mod root;

@@ -39,6 +39,7 @@ mod read;
 mod solution;
 mod solve;
 mod tolerances;
+mod uncertainty;
 mod words;
 mod workshop;
 mod write;
@@ -62,6 +63,10 @@ pub use read::{read, read_draft};
 pub use solution::*;
 pub use solve::solve;
 pub use tolerances::*;
+pub use uncertainty::{
+    Band, FretUncertainty, Input, MeasureNext, Progress, Share, Shares, StringShares, StringUncertainty,
+    Uncertainty, UncertaintyReport, measure_next, shares, uncertainty,
+};
 pub use words::Word;
 pub use workshop::{Sensitivity, Step, Workshop, WorkshopLine, WorkshopString, workshop};
 pub use write::write;

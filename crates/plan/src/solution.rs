@@ -64,6 +64,10 @@ pub struct StringReport {
     /// The best contacts for this string alone; with alternatives those that suit its place in all sets together. The errors
     /// are the plan's own string's.
     pub ideal: ContactReport,
+    /// Half-width of the 90 % band of the ideal saddle setback to first order, mm: 1.645 standard deviations. Only
+    /// where the plan has tolerances.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub plus_minus_mm: Option<f64>,
     /// The contacts that the saddle style gives.
     pub built: BuiltReport,
     /// One entry a fret, fret 1 first.

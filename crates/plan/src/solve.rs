@@ -12,16 +12,17 @@ mod report;
 use crestline_physics::PhysicsError;
 use crestline_physics::fit::{FitOptions, Setbacks, built_setbacks, ideal_setbacks};
 
-use crate::{Checked, Fault, Solution};
+use crate::uncertainty::{HALF_BAND, Models};
+use crate::{Checked, Fault, Notice, Report, Severity, Solution};
 pub(crate) use prepare::{
-    Prepared, PreparedString, core as physics_core, fault, fit_options, prepare, prepare_own,
+    Prepared, PreparedString, core as physics_core, fault, fit_options, overrides, prepare, prepare_own, wrap,
 };
 pub(crate) use report::{Squares, left_over_of};
 
 /// Ideal and built setbacks for one pair of styles.
-struct Fitted {
-    ideal: Setbacks,
-    built: Setbacks,
+pub(crate) struct Fitted {
+    pub ideal: Setbacks,
+    pub built: Setbacks,
 }
 
 /// Solves a checked plan.
@@ -36,8 +37,39 @@ pub fn solve(checked: &Checked) -> Result<Solution, Vec<Fault>> {
     let mut report = report::report(checked, &prepared, &fitted)?;
     report.alternatives = alternatives::alternatives(checked, &prepared, &fitted, &options)?;
     report.notices = notices::notices(checked, &prepared, &fitted, &report);
+    if plan.tolerances.is_some() {
+        bands(checked, &prepared, &fitted, &options, &mut report);
+    }
     let layout = layout::layout(checked, &prepared, &fitted);
     Ok(Solution { report, layout })
+}
+
+/// Says in a report how sure its ideal setbacks are, to first order; the setbacks stand without it too.
+fn bands(checked: &Checked, prepared: &Prepared, fitted: &Fitted, options: &FitOptions, report: &mut Report) {
+    match Models::new(checked, prepared, fitted, options) {
+        Ok(models) => {
+            for (string, sd_mm) in report.strings.iter_mut().zip(models.saddle_sds_mm()) {
+                string.plus_minus_mm = Some(HALF_BAND * sd_mm);
+            }
+        }
+        Err(faults) => report.notices.extend(faults.into_iter().map(|fault| Notice {
+            severity: Severity::Warning,
+            path: fault.path,
+            text: format!("no bands are given: {}", fault.found),
+        })),
+    }
+}
+
+/// The strings of a plan with their tolerances, as built by its styles.
+///
+/// # Errors
+/// As [`solve`], and where one standard deviation of a figure leaves what can be built.
+pub(crate) fn fitted_models(checked: &Checked) -> Result<Models, Vec<Fault>> {
+    let prepared = prepare(checked)?;
+    let plan = checked.plan();
+    let options = fit_options(plan, plan.saddle.style, plan.nut.style);
+    let fitted = fit(&prepared, &options)?;
+    Models::new(checked, &prepared, &fitted, &options)
 }
 
 /// Finds ideal and built setbacks.

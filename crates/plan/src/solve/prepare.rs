@@ -170,17 +170,23 @@ pub(crate) fn core(entry: &PlanString) -> Core {
 }
 
 fn properties(entry: &PlanString, core: &Core) -> Result<section::StringProperties, PhysicsError> {
-    let wrap = entry
-        .wrap
-        .as_ref()
-        .map(|wrap| Wrap { outside_mm: wrap.outside_mm, density_kg_m3: wrap.density_kg_m3 });
+    string_properties(core, wrap(entry).as_ref(), &overrides(entry))
+}
+
+/// The wrap of a string as the physics sees it.
+pub(crate) fn wrap(entry: &PlanString) -> Option<Wrap> {
+    let wrap = entry.wrap.as_ref()?;
+    Some(Wrap { outside_mm: wrap.outside_mm, density_kg_m3: wrap.density_kg_m3 })
+}
+
+/// What is measured of a string as the physics sees it.
+pub(crate) fn overrides(entry: &PlanString) -> Overrides {
     let measured = &entry.measured;
-    let overrides = Overrides {
+    Overrides {
         unit_mass_kg_per_m: measured.unit_mass_kg_per_m,
         axial_stiffness_n: measured.axial_stiffness_n,
         bending_stiffness_n_mm2: measured.bending_stiffness_n_mm2,
-    };
-    string_properties(core, wrap.as_ref(), &overrides)
+    }
 }
 
 /// Wanted intervals above the open string in octaves: n/12, and with targets the difference of the offsets of the

@@ -9,6 +9,7 @@ mod report;
 mod status;
 mod supports;
 mod tables;
+mod uncertainty;
 
 use std::io::{self, Write};
 

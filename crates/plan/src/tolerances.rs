@@ -208,8 +208,9 @@ impl Default for Tolerances {
     /// Wound strings: the core is seldom stated and often guessed to the nearest 0.001 in, so half of that; a round
     /// or hexagonal form and the grip of the wrap widen the modulus; the geometry of a close wrap gives catalogue
     /// masses within about 4 % (from memory). Polymers: the modulus depends on stress and moisture, the diameter on
-    /// how far the string has stretched. Finger, fixities and slips are estimates: players differ that much, and a
-    /// support is known to be between pinned and clamped. ISO 16 allows ±0.5 Hz at 440 Hz, 2 cents. Frets: a slot by
+    /// how far the string has stretched. Finger and slips are estimates: players differ that much.
+    /// Fixities: a string that runs on to an anchor 10 to 100 mm behind its support has 1/(2 − λ/b), 0.50 to 0.56 for
+    /// a bending length of 1 to 2 mm. ISO 16 allows ±0.5 Hz at 440 Hz, 2 cents. Frets: a slot by
     /// template or saw guide and a crown filed by hand. Scale: fret 12 found by a rule to 0.05 mm, doubled. The
     /// maker's hand: a filed crest and a trimmed nut end, each by a scribed line. All common practice.
     fn default() -> Self {
@@ -219,8 +220,8 @@ impl Default for Tolerances {
             limit_cents: 5.0,
             reference_cents: 2.0,
             neck: NeckTolerance { relief_mm: 0.05, scale_mm: 0.1, fret_mm: 0.04 },
-            pressing: PressingTolerance { finger_fraction: 0.1, depth_fraction: 0.5 },
-            supports: Supports { nut: 0.1, fret: 0.1, saddle: 0.1 },
+            pressing: PressingTolerance { finger_fraction: 0.08, depth_fraction: 0.4 },
+            supports: Supports { nut: 0.05, fret: 0.05, saddle: 0.05 },
             slip: Slip { head: 0.1, tail: 0.1 },
             making: MakingTolerance { crest_mm: 0.1, nut_edge_mm: 0.08 },
             plain: PLAIN,

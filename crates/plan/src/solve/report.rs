@@ -81,7 +81,7 @@ fn string_report(
         breaking_fraction: own.breaking_fraction(),
         bending_length_mm: bending_length_mm(stiffness, own.open.tension_n),
         inharmonicity: inharmonicity(stiffness, own.open.tension_n, own.open.length_mm),
-ideal: contact_report(own, ideal, &ideal_notes),
+        ideal: contact_report(own, ideal, &ideal_notes),
         plus_minus_mm: None,
         built: built_report(plan.saddle.style, own, fitted, index, &built_notes),
         frets,

@@ -94,7 +94,7 @@ fn scaled(factor: f64) -> Tolerances {
             finger_fraction: usual.pressing.finger_fraction * factor,
             depth_fraction: usual.pressing.depth_fraction * factor,
         },
-        supports: Supports { nut: 0.1 * factor, fret: 0.1 * factor, saddle: 0.1 * factor },
+        supports: Supports { nut: 0.05 * factor, fret: 0.05 * factor, saddle: 0.05 * factor },
         // Slips are 0 in the plan, where they are held: no straight way leads there.
         slip: Slip { head: 0.0, tail: 0.0 },
         plain: string(usual.plain),

@@ -190,6 +190,7 @@ fn rule_words(rule: FitRule) -> &'static str {
         FitRule::LeastSquares => "least squares",
         FitRule::Twelfth => "twelfth true",
         FitRule::Minimax => "smallest largest error",
+        FitRule::Robust => "least expected squares",
     }
 }
 

@@ -283,6 +283,9 @@ pub enum FitRule {
     Twelfth,
     /// The largest error.
     Minimax,
+    /// The expected sum of squared errors over what the plan's tolerances (the usual ones where it has none) say that
+    /// strings, neck and player may be.
+    Robust,
 }
 
 /// Wanted offsets from equal temperament, so that a tempered tuning can be compensated for. Key `targets` of the

@@ -36,7 +36,7 @@ macro_rules! words {
 
 words! {
     CoreShape { Round = "round", Hex = "hex" }
-    FitRule { LeastSquares = "least_squares", Twelfth = "twelfth", Minimax = "minimax" }
+    FitRule { LeastSquares = "least_squares", Twelfth = "twelfth", Minimax = "minimax", Robust = "robust" }
     SaddleStyle { Separate = "separate", Shaped = "shaped", Straight = "straight", TwoPiece = "two_piece" }
     NutStyle { Plain = "plain", Common = "common", Shaped = "shaped" }
     ReadingKind { Fretted = "fretted", Open = "open", OctaveHarmonic = "octave_harmonic" }
@@ -66,7 +66,7 @@ mod tests {
     #[test]
     fn every_written_word_is_read_back() {
         reads_what_is_written::<CoreShape>(2);
-        reads_what_is_written::<FitRule>(3);
+        reads_what_is_written::<FitRule>(4);
         reads_what_is_written::<SaddleStyle>(4);
         reads_what_is_written::<NutStyle>(3);
         reads_what_is_written::<ReadingKind>(3);

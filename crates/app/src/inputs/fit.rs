@@ -10,7 +10,7 @@ use crate::fields::number::{self, Spec};
 use crate::fields::parse;
 use crate::fields::row::{faults, remark, row};
 
-const RULES: [Choice<FitRule>; 3] = [
+const RULES: [Choice<FitRule>; 4] = [
     (
         FitRule::LeastSquares,
         "Least squares",
@@ -18,6 +18,11 @@ const RULES: [Choice<FitRule>; 3] = [
     ),
     (FitRule::Twelfth, "True octave", "The note at fret 12 is made exactly true."),
     (FitRule::Minimax, "Least worst", "The largest error over the frets of the fit is made least."),
+    (
+        FitRule::Robust,
+        "Robust",
+        "The expected sum of the squared errors is made least, over all that the plan's tolerances allow for.",
+    ),
 ];
 
 /// The fields.

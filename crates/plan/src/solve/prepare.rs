@@ -5,6 +5,7 @@ use crestline_physics::fretting::{Fixities, NutHeight, Pressing, StringSetup, Ta
 use crestline_physics::section::{self, Core, Overrides, Wrap, string_properties};
 use crestline_physics::{Contacts, FrettedString, Note, OpenString, PhysicsError, neck::PlanLine};
 
+use crate::uncertainty::samples;
 use crate::{
     Checked, CoreShape, Fault, FitRule, NutStyle, Plan, PlanString, SaddleStyle, Targets,
     limits::number_words,
@@ -38,6 +39,8 @@ pub(crate) struct PreparedString {
     /// Whether its note at fret 12 sounds from fret 12.
     pub twelfth_sounds: bool,
     pub breaking_load_n: Option<f64>,
+    /// For the rule `robust`: what the string may be as well, with the frets of the fit that do not buzz on it.
+    pub samples: Vec<(FrettedString, Vec<usize>)>,
 }
 
 impl Prepared {
@@ -56,9 +59,7 @@ impl Prepared {
     pub fn fit_strings(&self) -> Vec<FitString<'_>> {
         let cases = |index: usize| {
             let cases = self.cases(index);
-            cases
-                .map(|(weight, own)| FitCase { string: &own.string, frets: own.frets.clone(), weight })
-                .collect()
+            cases.flat_map(|(weight, own)| own.fit_cases(weight)).collect()
         };
         let places = self.strings.iter().enumerate();
         places.map(|(index, string)| FitString { line: string.line, cases: cases(index) }).collect()
@@ -68,7 +69,16 @@ impl Prepared {
 impl PreparedString {
     /// The string for a fit by itself, whatever else the saddle must suit.
     pub fn alone(&self) -> FitString<'_> {
-        FitString::single(&self.string, self.line, self.frets.clone())
+        FitString { line: self.line, cases: self.fit_cases(1.0) }
+    }
+
+    /// The string as the fit sees it: as the plan has it, or in its samples, which share its weight.
+    fn fit_cases(&self, weight: f64) -> Vec<FitCase<'_>> {
+        if self.samples.is_empty() {
+            return vec![FitCase { string: &self.string, frets: self.frets.clone(), weight }];
+        }
+        let weight = weight / self.samples.len() as f64;
+        self.samples.iter().map(|(string, frets)| FitCase { string, frets: frets.clone(), weight }).collect()
     }
 
     /// Tension over breaking load; absent where the tensile strength is not given.
@@ -153,7 +163,20 @@ fn prepare_string(checked: &Checked, index: usize) -> Result<PreparedString, Phy
         frets.clear();
     }
     let breaking_load_n = entry.core.tensile_mpa.map(|tensile_mpa| tensile_mpa * core.area_mm2());
-    Ok(PreparedString { line: on_neck.line, string, open, notes, frets, twelfth_sounds, breaking_load_n })
+    let samples = match plan.fit.rule {
+        FitRule::Robust if !frets.is_empty() => samples(checked, index, &string, &frets),
+        _ => Vec::new(),
+    };
+    Ok(PreparedString {
+        line: on_neck.line,
+        string,
+        open,
+        notes,
+        frets,
+        twelfth_sounds,
+        breaking_load_n,
+        samples,
+    })
 }
 
 /// The core of a string as the physics sees it.
@@ -207,7 +230,7 @@ fn target_octaves(plan: &Plan, index: usize, frequency_hz: f64) -> Vec<f64> {
 pub(crate) fn fit_options(plan: &Plan, saddle: SaddleStyle, nut: NutStyle) -> FitOptions {
     FitOptions {
         rule: match plan.fit.rule {
-            FitRule::LeastSquares => fit::FitRule::LeastSquares,
+            FitRule::LeastSquares | FitRule::Robust => fit::FitRule::LeastSquares,
             FitRule::Twelfth => fit::FitRule::Twelfth,
             FitRule::Minimax => fit::FitRule::Minimax,
         },

@@ -22,12 +22,12 @@ impl FirstOrder {
     pub fn of(model: &StringModel, tolerances: &Tolerances) -> Result<Self, PhysicsError> {
         let mut draw = vec![0.0; model.axes()];
         let nominal = model.work(&draw, tolerances)?;
-        let still = model.string(&draw, tolerances)?;
+        let still = model.figures.string(&draw, tolerances)?;
         let (mut ideal, mut errors) = (Vec::new(), Vec::new());
         for axis in 0..draw.len() {
             let mut at = |by: f64| {
                 draw[axis] = by;
-                let moved = model.string(&draw, tolerances)?;
+                let moved = model.figures.string(&draw, tolerances)?;
                 // Nothing but the contacts as built answers to the maker's hand.
                 let same = moved == still && !super::axes::is_making(axis);
                 if same { Ok(nominal.clone()) } else { model.work(&draw, tolerances) }

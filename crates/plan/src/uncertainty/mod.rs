@@ -17,6 +17,7 @@ mod draw;
 mod first_order;
 mod model;
 mod models;
+mod robust;
 mod sample;
 mod shares;
 
@@ -30,6 +31,7 @@ pub use advice::{MeasureNext, measure_next};
 pub use axes::Input;
 pub use band::Band;
 pub(crate) use models::Models;
+pub(crate) use robust::samples;
 use sample::Sample;
 pub(crate) use shares::HALF_BAND;
 pub use shares::{Share, Shares, StringShares, shares};

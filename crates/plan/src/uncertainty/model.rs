@@ -13,9 +13,9 @@ use super::axes::{FRETS, own, shared};
 use crate::limits::{FINGER_FRACTION, FIXITY, RELIEF_MM, Range, SLIP};
 use crate::{StringTolerance, Tolerances};
 
-/// A string whose figures are uncertain.
+/// The figures of a string and how uncertain its own ones are.
 #[derive(Debug, Clone)]
-pub(super) struct StringModel {
+pub(super) struct Figures {
     pub core: Core,
     pub wrap: Option<Wrap>,
     pub measured: Overrides,
@@ -23,6 +23,12 @@ pub(super) struct StringModel {
     pub setup: StringSetup,
     pub fret_height_mm: f64,
     pub sd: StringTolerance,
+}
+
+/// A string whose figures are uncertain, with its contacts.
+#[derive(Debug, Clone)]
+pub(super) struct StringModel {
+    pub figures: Figures,
     /// What a string's ideal setbacks are and where they may lie.
     pub fit: NearFit,
     /// Its contacts as built.
@@ -44,7 +50,7 @@ pub(super) struct Worked {
 impl StringModel {
     /// Number of axes.
     pub fn axes(&self) -> usize {
-        FRETS + self.setup.fret_mm.len()
+        FRETS + self.figures.setup.fret_mm.len()
     }
 
     /// Ideal contacts and errors as built for a draw.
@@ -52,7 +58,7 @@ impl StringModel {
     /// # Errors
     /// [`PhysicsError`] where the draw leaves what can be built.
     pub fn work(&self, draw: &[f64], tolerances: &Tolerances) -> Result<Worked, PhysicsError> {
-        let string = self.string(draw, tolerances)?;
+        let string = self.figures.string(draw, tolerances)?;
         let ideal = self.fit.contacts(&string, self.expected(draw))?;
         let built = Contacts {
             saddle_setback_mm: self.built.saddle_setback_mm + tolerances.making.crest_mm * draw[own::CREST],
@@ -68,7 +74,7 @@ impl StringModel {
     /// # Errors
     /// As [`work`](Self::work).
     pub fn ideal_of(&self, draw: &[f64], tolerances: &Tolerances) -> Result<Contacts, PhysicsError> {
-        self.fit.contacts(&self.string(draw, tolerances)?, self.expected(draw))
+        self.fit.contacts(&self.figures.string(draw, tolerances)?, self.expected(draw))
     }
 
     /// Where the ideal contacts of a draw are expected to first order.
@@ -85,7 +91,9 @@ impl StringModel {
         }
         at
     }
+}
 
+impl Figures {
     /// The string of a draw.
     ///
     /// # Errors

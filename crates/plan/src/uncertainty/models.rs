@@ -2,12 +2,12 @@
 
 use crestline_physics::fit::{self, FitOptions};
 
-use crestline_physics::PhysicsError;
 use crestline_physics::near::NearFit;
+use crestline_physics::{PhysicsError, StringSetup};
 use rayon::prelude::*;
 
 use super::first_order::FirstOrder;
-use super::model::StringModel;
+use super::model::{Figures, StringModel};
 use crate::solve::{Fitted, Prepared, overrides, physics_core, wrap};
 use crate::{Checked, Fault, NutStyle, Tolerances};
 
@@ -78,14 +78,8 @@ fn model(
     tolerances: &Tolerances,
 ) -> StringModel {
     let (plan, own) = (checked.plan(), &prepared.strings[index]);
-    let entry = &plan.strings[index];
     StringModel {
-        core: physics_core(entry),
-        wrap: wrap(entry),
-        measured: overrides(entry),
-        setup: own.string.setup().clone(),
-        fret_height_mm: plan.instrument.fret_height_mm,
-        sd: tolerances.of_string(plan, index),
+        figures: figures(checked, index, own.string.setup(), tolerances),
         fit: NearFit {
             rule: options.rule,
             frets: own.frets.clone(),
@@ -96,5 +90,24 @@ fn model(
         built: fitted.built.contacts[index],
         ideal: fitted.ideal.contacts[index],
         slopes: Vec::new(),
+    }
+}
+
+/// The figures of the string with this index.
+pub(super) fn figures(
+    checked: &Checked,
+    index: usize,
+    setup: &StringSetup,
+    tolerances: &Tolerances,
+) -> Figures {
+    let plan = checked.plan();
+    let entry = &plan.strings[index];
+    Figures {
+        core: physics_core(entry),
+        wrap: wrap(entry),
+        measured: overrides(entry),
+        setup: setup.clone(),
+        fret_height_mm: plan.instrument.fret_height_mm,
+        sd: tolerances.of_string(plan, index),
     }
 }

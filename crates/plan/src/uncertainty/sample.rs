@@ -43,7 +43,7 @@ impl<'m> Sample<'m> {
             errors: vec![Vec::new(); frets],
             within: Within::default(),
         };
-        let columns = models.strings.iter().map(|model| columns(model.setup.fret_mm.len())).collect();
+        let columns = models.strings.iter().map(|model| columns(model.figures.setup.fret_mm.len())).collect();
         Self { models, names, fit_frets, columns, drawn: 0, left_out: 0, within: Within::default() }
     }
 
@@ -69,7 +69,7 @@ impl<'m> Sample<'m> {
     fn instrument(&self, index: u32) -> Option<Vec<Worked>> {
         let (models, tolerances) = (&self.models.strings, &self.models.tolerances);
         let string = |(place, model): (usize, &super::model::StringModel)| {
-            let draw = draw(index, tolerances.seed, place, models.len(), model.setup.fret_mm.len());
+            let draw = draw(index, tolerances.seed, place, models.len(), model.figures.setup.fret_mm.len());
             model.work(&draw, tolerances).ok()
         };
         models.iter().enumerate().map(string).collect()

@@ -158,7 +158,7 @@ fn variances(models: &Models, index: usize) -> Result<Variances, PhysicsError> {
 
 /// Ideal saddle setbacks for both sets of draws, and for the first with each input in turn from the second.
 fn columns(model: &StringModel, tolerances: &Tolerances, inputs: &[Input]) -> Vec<Vec<f64>> {
-    let frets = model.setup.fret_mm.len();
+    let frets = model.figures.setup.fret_mm.len();
     let rows: Vec<Option<Vec<f64>>> = (0..DRAWS)
         .into_par_iter()
         .map(|index| {

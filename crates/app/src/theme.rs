@@ -82,6 +82,8 @@ pub struct Palette {
     pub strings: [Color32; 8],
     /// The four parts of an error: length, tension, mass, stiffness.
     pub parts: [Color32; 4],
+    /// The causes that a diagnosis names; letters in the colour of the sheet stand on them.
+    pub causes: [Color32; 8],
 }
 
 /// Dark on light, like a workshop drawing.
@@ -117,6 +119,16 @@ pub const LIGHT: Palette = Palette {
         Color32::from_rgb(0x4D, 0x52, 0x57),
         Color32::from_rgb(0x00, 0x8B, 0x6C),
     ],
+    causes: [
+        Color32::from_rgb(0x00, 0x5F, 0x6B),
+        Color32::from_rgb(0x7A, 0x3E, 0x9D),
+        Color32::from_rgb(0xB0, 0x30, 0x5C),
+        Color32::from_rgb(0x8C, 0x5A, 0x00),
+        Color32::from_rgb(0x3F, 0x6B, 0x1F),
+        Color32::from_rgb(0x4A, 0x55, 0x68),
+        Color32::from_rgb(0xB8, 0x3A, 0x08),
+        Color32::from_rgb(0x1D, 0x4E, 0xD8),
+    ],
 };
 
 /// Light on dark.
@@ -151,6 +163,16 @@ pub const DARK: Palette = Palette {
         Color32::from_rgb(0xFF, 0x8F, 0x60),
         Color32::from_rgb(0xB9, 0xBD, 0xC2),
         Color32::from_rgb(0x36, 0xC9, 0xA0),
+    ],
+    causes: [
+        Color32::from_rgb(0x5E, 0xC4, 0xCF),
+        Color32::from_rgb(0xC7, 0x9B, 0xEA),
+        Color32::from_rgb(0xF2, 0x8A, 0xAE),
+        Color32::from_rgb(0xE0, 0xB0, 0x4A),
+        Color32::from_rgb(0x9C, 0xCB, 0x6E),
+        Color32::from_rgb(0xAE, 0xB9, 0xC7),
+        Color32::from_rgb(0xFF, 0x9A, 0x62),
+        Color32::from_rgb(0x8F, 0xB0, 0xFF),
     ],
 };
 
@@ -351,7 +373,7 @@ mod tests {
     }
 
     #[test]
-    fn strings_and_parts_stand_out() {
+    fn strings_causes_and_parts_stand_out() {
         for p in [LIGHT, DARK] {
             for (text, ground) in p.strings.iter().flat_map(|s| [(*s, p.sheet), (*s, p.field), (*s, p.blank)])
             {
@@ -360,6 +382,9 @@ mod tests {
                     "{text:?} on {ground:?}: {}",
                     contrast(text, ground)
                 );
+            }
+            for cause in p.causes {
+                assert!(contrast(cause, p.sheet) >= TEXT_CONTRAST, "{cause:?}: {}", contrast(cause, p.sheet));
             }
             for part in p.parts {
                 assert!(contrast(part, p.sheet) >= MARK_CONTRAST, "{part:?}: {}", contrast(part, p.sheet));

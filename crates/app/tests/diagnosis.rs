@@ -294,3 +294,17 @@ fn a_fault_of_a_reading_leads_to_its_cell() {
     order(&mut opened, Command::GoTo(format!("readings[{index}].cents")));
     assert_eq!(focused(&opened), "Reading of string 6, fret 9");
 }
+
+#[test]
+fn a_reading_that_does_not_belong_is_named_where_it_stands_and_does_not_flatten_the_plot() {
+    let mut plan = sharp();
+    let odd = Place { string: 1, sounded: Sounded::Fretted(12) };
+    odd.put(&mut plan.readings, Some(-80.0));
+    let mut opened = on_page(plan);
+    order(&mut opened, Command::ChooseString(1));
+    assert_eq!(says(&opened, "Read far beyond the plot: string 2, fret 12"), 1);
+    let notice = opened
+        .get_all_by_label_contains("Reading of string 2, fret 12: ")
+        .find(|node| node.accesskit_node().label().is_some_and(|label| label.contains("read it again")));
+    assert!(notice.is_some(), "the diagnosis asks for it to be read again");
+}

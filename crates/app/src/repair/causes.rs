@@ -70,7 +70,7 @@ fn legend(ui: &mut Ui, palette: &Palette, diagnosis: &Diagnosis) {
 }
 
 fn segment(ui: &Ui, palette: &Palette, rect: Rect, cause: Cause, letter: &str) {
-    ui.painter().rect_filled(rect, 1.0, palette.string(place(cause)));
+    ui.painter().rect_filled(rect, 1.0, palette.causes[place(cause)]);
     ui.painter().rect_stroke(rect, 1.0, Stroke::new(1.0, palette.sheet), StrokeKind::Inside);
     const LETTER: f32 = 12.0;
     if rect.width() >= LETTER {

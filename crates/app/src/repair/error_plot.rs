@@ -51,8 +51,7 @@ pub fn choices(ui: &mut Ui, palette: &Palette, shown: &Shown<'_>, all: &mut bool
             *all = true;
         }
     });
-    let after = if shown.remedy.is_some() { "   ── after the job" } else { "" };
-    let words = format!("● read   ╌╌ found, as it is now   ▒ ±2 standard deviations{after}");
+    let words = "● read   ╌╌ found   ▒ ±2 standard deviations   ── after the job";
     ui.label(RichText::new(words).small().color(palette.quiet));
     chosen
 }
@@ -77,6 +76,9 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, shown: &Shown<'_>, all: bool
             draw(plot, palette, notes, !all);
         }
     });
+    if let Some(words) = far_words(&drawn) {
+        ui.label(RichText::new(words).small().color(palette.caution));
+    }
     let frets = shown.plan.instrument.frets as usize;
     let fret = hover::fret(&painted.response, &painted.transform, frets);
     let response = tip(painted.response, palette, &drawn, fret);
@@ -112,11 +114,34 @@ fn draw(plot: &mut PlotUi<'_>, palette: &Palette, string: &StringNotes, is_alone
     );
 }
 
+/// Whether a reading lies so far from what is found that it would flatten everything else.
+fn is_far(note: &Note, cents: f64) -> bool {
+    const FAR_CENTS: f64 = 40.0;
+    (cents - note.predicted_cents).abs() > FAR_CENTS
+}
+
+/// Readings that the plot leaves out, in words.
+fn far_words(strings: &[&StringNotes]) -> Option<String> {
+    let far = |string: &StringNotes, note: &Note, value: &f64| {
+        is_far(note, *value)
+            .then(|| format!("string {}, fret {}: {}", string.string + 1, note.fret, cents(*value)))
+    };
+    let all: Vec<String> = strings
+        .iter()
+        .flat_map(|string| string.notes.iter().map(move |note| (string, note)))
+        .flat_map(|(string, note)| {
+            note.measured_cents.iter().filter_map(move |value| far(string, note, value))
+        })
+        .collect();
+    (!all.is_empty()).then(|| format!("Read far beyond the plot: {}.", all.join("; ")))
+}
+
 /// Everything that is drawn with some air, and at least a few cents to either side.
 fn bounds(plan: &Plan, strings: &[&StringNotes]) -> PlotBounds {
     let of = |note: &Note| {
         let band = BAND * note.sd_cents;
         let mut all = note.measured_cents.clone();
+        all.retain(|cents| !is_far(note, *cents));
         all.extend([note.predicted_cents - band, note.predicted_cents + band]);
         all.extend(note.after_cents);
         all

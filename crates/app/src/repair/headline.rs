@@ -65,7 +65,7 @@ fn job(remedy: &Remedy) -> String {
         RemedyKind::LowerAction => format!("lower the action{of_strings}"),
         RemedyKind::RaiseAction => format!("raise the action{of_strings}"),
         RemedyKind::SetRelief => "set the relief".to_owned(),
-        RemedyKind::ReshapeSaddle => "file the saddle anew on its blank".to_owned(),
+        RemedyKind::ReshapeSaddle => "reshape the saddle on its blank".to_owned(),
         RemedyKind::MoveSaddle => "move the saddle".to_owned(),
         RemedyKind::ShortenNutEnd => "move the saddle and shorten the nut end".to_owned(),
         RemedyKind::MoveNutEdge => "move the saddle and the nut edges".to_owned(),

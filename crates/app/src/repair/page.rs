@@ -2,11 +2,11 @@
 
 use std::sync::Arc;
 
-use crestline_plan::{Diagnosis, Plan};
+use crestline_plan::{Diagnosis, Notice, Plan};
 use eframe::egui::{Button, ComboBox, Frame, Label, Margin, RichText, ScrollArea, Stroke, Ui};
 
 use super::error_plot::{self, Shown};
-use super::place::Sounded;
+use super::place::{Place, Sounded};
 use super::state::Repair;
 use super::{answers, causes, empty, grid, headline, priors, remedies};
 use crate::edit::command::Command;
@@ -16,7 +16,9 @@ use crate::results::notices;
 use crate::theme::{Palette, size};
 
 /// Room in which readings stand beside what comes of them, points.
-const SIDE_BY_SIDE: f32 = 1240.0;
+const SIDE_BY_SIDE: f32 = 1230.0;
+/// Room for the scroll bar, which floats over what it scrolls.
+const BAR: f32 = 8.0;
 /// Room in which plot and remedies stand side by side.
 const PLOT_BESIDE: f32 = 640.0;
 
@@ -39,6 +41,7 @@ pub fn show(
         repair.inquiry.follow(ui.ctx(), &outcome.plan, &repair.priors);
         let room = ui.available_height();
         ScrollArea::vertical().auto_shrink([false, false]).show(ui, |ui| {
+            ui.set_max_width(ui.available_width() - BAR);
             let found = Found::of(repair, string);
             if ui.available_width() >= SIDE_BY_SIDE {
                 columns(ui, |ui, side| match (side, &found) {
@@ -170,12 +173,21 @@ impl Found {
         form.commands.extend(answers::show(ui, form.palette, &self.plan, &self.diagnosis, self.string));
     }
 
+    /// A notice that names the reading it is about.
+    fn placed(&self, notice: &Notice) -> Notice {
+        let about = Place::at_path(&notice.path, &self.plan.readings);
+        let text =
+            about.map_or_else(|| notice.text.clone(), |place| format!("{}: {}", place.name(), notice.text));
+        Notice { text, ..notice.clone() }
+    }
+
     fn causes(&self, ui: &mut Ui, form: &Form) {
         ui.scope(|ui| causes::show(ui, form.palette, &self.diagnosis));
     }
 
     fn notices(&self, ui: &mut Ui, form: &mut Form) {
-        form.commands.extend(notices::show(ui, form.palette, &self.diagnosis.notices));
+        let placed: Vec<Notice> = self.diagnosis.notices.iter().map(|notice| self.placed(notice)).collect();
+        form.commands.extend(notices::show(ui, form.palette, &placed));
         caution(ui, form.palette);
     }
 }

@@ -62,6 +62,13 @@ impl Place {
         Self { string, sounded: Sounded::of(reading) }
     }
 
+    /// The place of the reading that a path such as `readings[3].cents` is about.
+    #[must_use]
+    pub fn at_path(path: &str, readings: &[Reading]) -> Option<Self> {
+        let index: usize = path.strip_prefix("readings[")?.split(']').next()?.parse().ok()?;
+        readings.get(index).map(Self::of)
+    }
+
     /// The name of its field and of the step that typing in it makes.
     #[must_use]
     pub fn name(self) -> String {

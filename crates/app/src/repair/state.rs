@@ -2,7 +2,7 @@
 
 use std::collections::BTreeSet;
 
-use crestline_plan::{Plan, Priors, Reading};
+use crestline_plan::{Plan, Priors};
 use eframe::egui::Id;
 
 use super::inquiry::Inquiry;
@@ -66,10 +66,5 @@ impl Repair {
     pub fn fresh(&mut self) {
         let Self { priors, shows_priors, .. } = *self;
         *self = Self { priors, shows_priors, ..Self::default() };
-    }
-
-    /// Goes to the cell of a reading.
-    pub fn go_to(&mut self, reading: &Reading) {
-        self.going_to = Some(Place::of(reading));
     }
 }

@@ -5,7 +5,7 @@ use std::path::{Path, PathBuf};
 use crestline_plan::EXAMPLES;
 use crestline_sheets::Format;
 use eframe::egui::{
-    Button, CornerRadius, Frame, Margin, MenuBar, Panel, RichText, Stroke, Ui, Vec2, accesskit,
+    Button, CornerRadius, Frame, Margin, MenuBar, Panel, RichText, Stroke, TextStyle, Ui, Vec2, accesskit,
 };
 
 use crate::edit::command::Command;
@@ -13,6 +13,11 @@ use crate::edit::desk::Desk;
 use crate::theme::{Palette, size};
 use crate::units::LengthUnit;
 use crate::view::{Page, ThemeChoice, View};
+
+/// Usual width of a tab, points.
+const TAB: f32 = 76.0;
+/// Room for the switch of units behind the tabs.
+const UNIT: f32 = 40.0;
 
 /// The bar.
 pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View, recent: &[PathBuf]) -> Vec<Command> {
@@ -131,7 +136,24 @@ fn entry(ui: &mut Ui, commands: &mut Vec<Command>, command: Command, words: Stri
     }
 }
 
+/// The tabs; where they do not fit, a menu of the pages.
 fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command>) {
+    let (room, count) = (ui.available_width() - UNIT, Page::ALL.len() as f32);
+    let around = 2.0 * ui.spacing().button_padding.x + ui.spacing().item_spacing.x;
+    let font = TextStyle::Button.resolve(ui.style());
+    let text =
+        |page: Page| ui.painter().layout_no_wrap(page.name().to_owned(), font.clone(), palette.ink).size().x;
+    let least: f32 = Page::ALL.into_iter().map(|page| text(page) + around).sum();
+    if least > room {
+        ui.menu_button(format!("{} ▾", view.page.name()), |ui| {
+            for page in Page::ALL {
+                item(ui, commands, Command::ShowPage(page), true);
+            }
+        });
+        return;
+    }
+    let usual: f32 = Page::ALL.into_iter().map(|page| (text(page) + around).max(TAB)).sum();
+    let width = if usual + count * around > room { 0.0 } else { TAB };
     for page in Page::ALL {
         let is_shown = view.page == page;
         let colour = if is_shown { palette.ink } else { palette.quiet };
@@ -144,7 +166,7 @@ fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command
             .fill(fill)
             .stroke(Stroke::NONE)
             .corner_radius(CornerRadius::same(3))
-            .min_size(Vec2::new(76.0, 24.0));
+            .min_size(Vec2::new(width, 24.0));
         let response = ui.add(button);
         response.ctx.accesskit_node_builder(response.id, |node| {
             node.set_role(accesskit::Role::Tab);
@@ -180,8 +202,12 @@ fn unit(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command>
     }
 }
 
-/// The plan's title, its file, and a mark where it has changes that are not saved.
+/// The plan's title, its file, and a mark where it has changes that are not saved; nothing where there is no room.
 fn name(ui: &mut Ui, palette: &Palette, desk: &Desk) {
+    const LEAST: f32 = 60.0;
+    if ui.available_width() < LEAST {
+        return;
+    }
     let layout = eframe::egui::Layout::right_to_left(eframe::egui::Align::Center);
     ui.with_layout(layout, |ui| {
         let mark = if desk.is_changed() { "● unsaved changes" } else { "" };

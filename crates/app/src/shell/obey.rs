@@ -19,6 +19,7 @@ use crate::edit::history::Edit;
 use crate::edit::strings;
 use crate::keep::autosave::whole;
 use crate::keep::watch::Watch;
+use crate::repair::place::Place;
 use crate::theme;
 use crate::view::{Group, Page};
 
@@ -138,11 +139,7 @@ fn go_to(window: &mut Window, path: String) {
 /// Shows the readings, and goes to the cell of the one with this path.
 fn go_to_reading(window: &mut Window, path: &str) {
     window.view.page = Page::Diagnosis;
-    let index = path.strip_prefix("readings[").and_then(|rest| rest.split(']').next()?.parse::<usize>().ok());
-    let reading = index.and_then(|index| window.desk.plan.readings.get(index));
-    if let Some(reading) = reading {
-        window.view.repair.go_to(reading);
-    }
+    window.view.repair.going_to = Place::at_path(path, &window.desk.plan.readings);
 }
 
 fn step(window: &mut Window, back: bool) {

@@ -14,6 +14,8 @@ import saddles
 
 SEED = 20240611
 FIRST_SET = 40
+# From this plan on kind of neck and supports are not drawn but go through all combinations with styles and rules.
+COVERING_SET = 301
 # A plan whose notes are farther off than this with no setback is pressed or made like no instrument.
 WILD_CENTS = 40.0
 # What a plan is must not change while its numbers are drawn anew: separate streams decide that.
@@ -24,6 +26,8 @@ STYLES = ["separate", "straight", "two_piece", "shaped"]
 NUTS = ["plain", "common", "shaped"]
 SUPPORTS = [None, {"nut": 0.0, "fret": 0.0, "saddle": 0.0}, {"nut": 1.0, "fret": 1.0, "saddle": 1.0},
             {"nut": 0.0, "fret": 0.0, "saddle": 1.0}]
+RUNS_ON = {"nut": 0.5, "fret": 0.5, "saddle": 0.5}
+NECKS = ["one scale", "measured", "fanned"]
 
 # Note, core diameter, outside diameter (None: plain), mm.
 STEEL_SIX = [("E4", 0.28, None), ("B3", 0.37, None), ("G3", 0.36, 0.61), ("D3", 0.37, 0.80), ("A2", 0.41, 1.06),
@@ -76,8 +80,20 @@ def settings(number):
     """(style, nut, rule) of plan `number`: the first set is separate and straight, the rest is everything."""
     if number <= FIRST_SET:
         return STYLES[number % 2], "plain", RULES[(number // 2) % 3]
-    k = number - FIRST_SET - 1
+    k = number - (FIRST_SET + 1 if number < COVERING_SET else COVERING_SET)
     return STYLES[k % 4], NUTS[(k // 4) % 3], RULES[(k // 12) % 3]
+
+
+def covered(number):
+    """(kind of neck, index of the supports) that plan `number` of the covering set has, (None, None) before it.
+
+    180 plans go once through every rule, style, nut and supports; the neck is shifted from one supports to the next, so
+    that necks meet every pair of the others too.
+    """
+    if number < COVERING_SET:
+        return None, None
+    k = number - COVERING_SET
+    return NECKS[(k % 36 + k // 36 + k // 12) % 3], k // 36 % 5
 
 
 def string_entry(draw, family, note, core, outside):
@@ -117,15 +133,15 @@ def measure(draw, entry):
         entry["measured"] = measured
 
 
-def neck_entry(draw, name, family, count):
-    """Scale, frets, spacing and what goes with them."""
+def neck_entry(draw, name, family, count, wanted):
+    """Scale, frets, spacing and what goes with them; measured frets by chance where no kind of neck is wanted."""
     frets = int(draw.rng.integers(family["frets"][0], family["frets"][1] + 1))
     entry = {"scale_mm": draw.between(*family["scale"], 1), "frets": frets}
     if name == "fanned":
         treble = entry["scale_mm"]
         entry["scale_mm"] = {"bass": round(treble + draw.between(15, 60, 1), 1), "treble": treble,
                              "square_fret": draw.pick([0, 5, 7, 7.5, 9, 12])}
-    elif draw.chance(0.2):
+    elif wanted == "measured" or (wanted is None and draw.chance(0.2)):
         divisor = draw.pick([17.817, 17.8171537, 17.835])
         place, positions = 0.0, []
         for _ in range(frets):
@@ -158,7 +174,8 @@ def spaced(draw, name, count, gap):
 
 def plan_entry(draw, number, low):
     """A plan, not yet known to be legal; with a low action or an ordinary one."""
-    names = list(FAMILIES)
+    neck_kind, supports_index = covered(number)
+    names = [name for name in FAMILIES if neck_kind is None or (name == "fanned") == (neck_kind == "fanned")]
     name = Draw(FAMILY_STREAM + number).pick(names)
     family = FAMILIES[name]
     strings_of = draw.pick(family["sets"])
@@ -166,7 +183,7 @@ def plan_entry(draw, number, low):
     if style == "two_piece" and len(strings_of) < 2:
         strings_of = family["sets"][0]
     strings = [string_entry(draw, family, *pattern) for pattern in strings_of]
-    instrument = neck_entry(draw, name, family, len(strings))
+    instrument = neck_entry(draw, name, family, len(strings), neck_kind)
     depth = draw.pick([0.0, 0.05, 0.1, 0.2, 0.35])
     plan = {
         "format": "crestline-plan", "version": 1, "title": f"Random plan {number} ({name})",
@@ -175,7 +192,8 @@ def plan_entry(draw, number, low):
     }
     if draw.chance(0.7):
         plan["pressing"] = {"finger_fraction": draw.between(0.1, 0.8, 2), "depth_mm": depth}
-    supports = draw.pick(SUPPORTS + [{k: draw.between(0, 1, 2) for k in ("nut", "fret", "saddle")}])
+    own = {k: draw.between(0, 1, 2) for k in ("nut", "fret", "saddle")}
+    supports = draw.pick(SUPPORTS + [own]) if supports_index is None else ([RUNS_ON] + SUPPORTS[1:] + [own])[supports_index]
     if supports:
         plan["supports"] = supports
     if draw.chance(0.4):

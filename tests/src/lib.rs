@@ -9,6 +9,8 @@ mod command_line;
 #[cfg(test)]
 mod instruments;
 #[cfg(test)]
+mod limits;
+#[cfg(test)]
 mod places;
 #[cfg(test)]
 mod program;

@@ -33,3 +33,21 @@ pub fn files_under(folder: &Path, ending: &str) -> Vec<PathBuf> {
     found.sort();
     found
 }
+
+/// Compares a kept page of documentation with what it should say; with `CRESTLINE_WRITE` set, writes it instead.
+#[track_caller]
+pub fn assert_page(place: &str, text: &str) {
+    let path = top().join(place);
+    if std::env::var_os("CRESTLINE_WRITE").is_some() {
+        fs::create_dir_all(path.parent().expect("a page lies in a folder")).expect("the folder can be made");
+        fs::write(&path, text).expect("the page can be written");
+    }
+    let kept = text_of(&path);
+    let mut lines = text.lines().zip(kept.lines());
+    if let Some((line, old)) = lines.find(|(line, old)| line != old) {
+        panic!(
+            "{place} is out of date; it says\n{old}\nand should say\n{line}\nSet CRESTLINE_WRITE=1 to write it."
+        );
+    }
+    assert_eq!(text.lines().count(), kept.lines().count(), "{place} is out of date in its length");
+}

@@ -1,13 +1,15 @@
 //! The built program as a process of its own: pipes, full disks, odd arguments, and being killed.
 #![cfg(unix)]
 
+mod hostile;
+mod writing;
+
 use std::ffi::OsStr;
-use std::fs::{self, File};
+use std::fs;
 use std::io::{Read, Write};
 use std::os::unix::ffi::OsStrExt;
 use std::path::{Path, PathBuf};
 use std::process::{Child, Command, Output, Stdio};
-use std::time::Instant;
 
 /// The program beside the tests in the target folder; `cargo test --workspace` and `cargo build` put it there.
 fn program() -> Command {
@@ -86,16 +88,6 @@ fn a_pipe_closed_in_the_middle_ends_it_quietly() {
     assert_quiet_end(&child.wait_with_output().unwrap(), 1);
 }
 
-#[cfg(target_os = "linux")]
-#[test]
-fn a_full_disk_is_told() {
-    let folder = tempfile::tempdir().unwrap();
-    let full = File::options().write(true).open("/dev/full").unwrap();
-    let ended = program().arg("solve").arg(plan_in(folder.path())).stdout(full).output().unwrap();
-    assert_quiet_end(&ended, 1);
-    assert!(String::from_utf8_lossy(&ended.stderr).contains("standard output"));
-}
-
 #[test]
 fn arguments_need_not_be_unicode() {
     let odd = OsStr::from_bytes(b"\xff\xfe.json");
@@ -106,43 +98,4 @@ fn arguments_need_not_be_unicode() {
     let ended = program().args(["example", "mandolin", "-o"]).arg(&output).output().unwrap();
     assert_quiet_end(&ended, 0);
     assert_eq!(fs::read_to_string(output).unwrap(), example("mandolin"));
-}
-
-/// Killed at many moments of its run, the program leaves the old file or the new one, and never a part.
-#[test]
-fn a_kill_leaves_the_old_file_or_the_new_one() {
-    const KILLS: u32 = 40;
-    let folder = tempfile::tempdir().unwrap();
-    let (plan, target) = (plan_in(folder.path()), folder.path().join("drawing.svg"));
-    let drawing = |target: &Path| {
-        let mut drawing = program();
-        drawing.arg("sheet").arg(&plan).arg("-o").arg(target).stderr(Stdio::null());
-        drawing
-    };
-    let began = Instant::now();
-    assert!(drawing(&target).status().unwrap().success());
-    let whole_run = began.elapsed();
-    let new = fs::read(&target).unwrap();
-    let (mut kept, mut replaced) = (0, 0);
-    for kill in 0..=KILLS {
-        fs::write(&target, "old").unwrap();
-        let mut child = drawing(&target).spawn().unwrap();
-        // From the start to somewhat past the usual end.
-        std::thread::sleep(whole_run * kill * 6 / (5 * KILLS));
-        child.kill().unwrap();
-        child.wait().unwrap();
-        match fs::read(&target).unwrap() {
-            found if found == b"old" => kept += 1,
-            found if found == new => replaced += 1,
-            found => panic!("part of a file was left: {} of {} bytes", found.len(), new.len()),
-        }
-    }
-    assert!(kept > 0, "the first kill comes before the end");
-    assert_eq!(kept + replaced, KILLS + 1);
-    let target_name = target.file_name();
-    for entry in fs::read_dir(folder.path()).unwrap() {
-        let name = entry.unwrap().file_name();
-        let known = Some(name.as_os_str()) == target_name || name == "plan.json";
-        assert!(known || name.as_bytes().starts_with(b".crestline-"), "{name:?} was left");
-    }
 }

@@ -173,12 +173,17 @@ fn the_readme_opens_with_the_job_and_gives_the_two_commands() {
 
 #[test]
 fn pictures_and_files_that_the_documents_name_exist() {
-    for name in ["README.md", "DEVELOPERS.md"] {
-        let text = text_of(&top().join(name));
+    let mut pages = vec![top().join("README.md"), top().join("DEVELOPERS.md")];
+    pages.extend(files_under(&top().join("crates/physics/doc"), "md"));
+    assert!(pages.len() > 4, "the pages of the model's documentation were found");
+    for page in pages {
+        let text = text_of(&page);
+        let folder = page.parent().expect("a page lies in a folder");
         for link in text.split("](").skip(1).filter_map(|rest| rest.split(')').next()) {
             let is_local = !link.contains("://") && !link.starts_with('#');
             let path = link.split('#').next().unwrap_or(link);
-            assert!(!is_local || top().join(path).exists(), "{name} points to {link}, which is not there");
+            let is_there = !is_local || folder.join(path).exists();
+            assert!(is_there, "{} points to {link}, which is not there", page.display());
         }
     }
 }

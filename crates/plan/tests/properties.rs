@@ -3,7 +3,7 @@
 
 mod common;
 
-use common::{fixed, legal_plan};
+use common::{fixed, legal_plan, reads_or_says_why};
 use crestline_plan::{EXAMPLES, Plan, check, read, read_draft, write};
 use proptest::prelude::*;
 use serde_json::{Value, json};
@@ -68,31 +68,6 @@ fn mutated() -> impl Strategy<Value = String> {
         }
         value.to_string()
     })
-}
-
-/// Checks what must hold of any text: a plan comes out whole, or faults with words do.
-fn reads_or_says_why(text: &str) {
-    match read(text) {
-        Ok(plan) => {
-            assert!(check(&plan).is_ok());
-            assert_eq!(read(&write(&plan)), Ok(plan));
-        }
-        Err(faults) => {
-            assert!(!faults.is_empty());
-            assert!(
-                faults.iter().all(|fault| !fault.found.is_empty() && !fault.allowed.is_empty()),
-                "{faults:?}"
-            );
-            let mut seen = std::collections::BTreeSet::new();
-            assert!(faults.iter().all(|fault| seen.insert(fault.to_string())), "said twice: {faults:#?}");
-        }
-    }
-    if let Ok(draft) = read_draft(text) {
-        match check(&draft) {
-            Ok(checked) => assert_eq!(read(text).as_ref(), Ok(checked.plan())),
-            Err(faults) => assert_eq!(read(text), Err(faults)),
-        }
-    }
 }
 
 fn strings_rise_in_order(plan: &Plan) {

@@ -5,7 +5,23 @@ use std::f64::consts::PI;
 use crestline_physics::mode::{Ends, SpeakingString, bending_length_mm, inharmonicity, mode_ratio};
 use crestline_physics::section::{Core, CoreShape, Overrides, string_properties};
 
-use super::{INCH_MM, assert_near, cents};
+use super::{By, INCH_MM, assert_between, assert_near, cents, origin};
+
+checks![
+    exact_modes_are_reached,
+    a_clamped_string_is_two_clamped_halves,
+    turning_a_string_round_changes_nothing,
+    fletchers_forms_hold_to_their_order,
+    morses_expansion_holds_to_its_order,
+    the_expansion_for_unlike_ends_holds_to_its_order,
+    youngs_constant_comes_out,
+    middle_c_of_a_piano,
+    three_strings_of_a_piano,
+    a_stopped_bass_string_loses_its_harmonics_as_published,
+    feynmans_first_order_term,
+    a_clamped_end_takes_one_bending_length_off,
+    a_plain_third_is_sharp_at_the_octave_by_its_stiffness_alone,
+];
 
 const PINNED: Ends = Ends { first: 0.0, second: 0.0 };
 const CLAMPED_PINNED: Ends = Ends { first: 1.0, second: 0.0 };
@@ -35,11 +51,34 @@ const EXACT_CENTS: f64 = 1e-9;
 
 #[test]
 fn exact_modes_are_reached() {
+    origin(
+        "Characteristic equations of pinned, clamped–pinned and clamped–clamped stiff strings",
+        By::Computed,
+    );
     for (epsilon, mode, pinned, clamped_pinned, clamped) in EXACT_MODES {
-        for (ends, expected) in [(PINNED, pinned), (CLAMPED_PINNED, clamped_pinned), (CLAMPED, clamped)] {
-            let what = format!("mode {mode} at {epsilon} with {ends:?}");
+        for (ends, words, expected) in [
+            (PINNED, "pinned", pinned),
+            (CLAMPED_PINNED, "clamped–pinned", clamped_pinned),
+            (CLAMPED, "clamped–clamped", clamped),
+        ] {
+            let what = format!("mode {mode}, ε {epsilon}, {words}, cents above the flexible string");
             assert_near(above_flexible(mode, epsilon, ends), expected, EXACT_CENTS, &what);
         }
+    }
+}
+
+/// Identity: the second mode of a clamped string of ε is the first of a clamped–pinned one of 2ε, because a node in the
+/// middle is a pinned end. Computed.
+#[test]
+fn a_clamped_string_is_two_clamped_halves() {
+    origin(
+        "Identity of the second clamped–clamped mode and the first clamped–pinned one of half the length",
+        By::Computed,
+    );
+    for epsilon in [0.001, 0.003, 0.01, 0.02] {
+        let half = above_flexible(1, 2.0 * epsilon, CLAMPED_PINNED);
+        let what = format!("mode 2, ε {epsilon}, clamped–clamped, cents above the flexible string");
+        assert_near(above_flexible(2, epsilon, CLAMPED), half, EXACT_CENTS, &what);
     }
 }
 
@@ -47,12 +86,8 @@ fn exact_modes_are_reached() {
 fn turning_a_string_round_changes_nothing() {
     for (epsilon, mode, ..) in EXACT_MODES {
         let turned = above_flexible(mode, epsilon, Ends { first: 0.0, second: 1.0 });
-        assert_near(
-            turned,
-            above_flexible(mode, epsilon, CLAMPED_PINNED),
-            EXACT_CENTS,
-            "clamped at the other end",
-        );
+        let off = turned - above_flexible(mode, epsilon, CLAMPED_PINNED);
+        assert!(off.abs() <= EXACT_CENTS, "clamped at the other end: {off} cents off");
     }
 }
 
@@ -69,7 +104,9 @@ fn assert_second_order(form: impl Fn(f64, f64) -> f64, ends: Ends) {
         let missed =
             |epsilon: f64| above_flexible(mode, epsilon, ends) - cents(form(f64::from(mode), epsilon));
         let (whole, half) = (missed(0.004), missed(0.002));
-        assert!(whole.abs() < third_order_cents(0.004), "mode {mode} misses {whole}");
+        let published = cents(form(f64::from(mode), 0.004));
+        let what = format!("mode {mode}, ε 0.004, published form, cents above the flexible string");
+        assert_near(above_flexible(mode, 0.004, ends), published, third_order_cents(0.004), &what);
         assert!(HALVING.contains(&(whole / half)), "mode {mode} misses {whole}, then {half}");
     }
 }
@@ -78,9 +115,14 @@ fn assert_second_order(form: impl Fn(f64, f64) -> f64, ends: Ends) {
 /// n·f₀·√(1 + Bn²), clamped that times 1 + (2/π)√B + (4/π²)B with B = π²ε². Memory (sure), confirmed by computation.
 #[test]
 fn fletchers_forms_hold_to_their_order() {
+    origin(
+        "H. Fletcher, \"Normal vibration frequencies of a stiff piano string\", J. Acoust. Soc. Am. 36, 203 (1964)",
+        By::Memory("sure"),
+    );
     for (mode, epsilon) in [(1, 0.001), (2, 0.01), (9, 0.02)] {
         let form = (1.0 + (PI * epsilon * f64::from(mode)).powi(2)).sqrt();
-        assert_near(above_flexible(mode, epsilon, PINNED), cents(form), EXACT_CENTS, "pinned is exact");
+        let what = format!("mode {mode}, ε {epsilon}, pinned, exact form, cents above the flexible string");
+        assert_near(above_flexible(mode, epsilon, PINNED), cents(form), EXACT_CENTS, &what);
     }
     let clamped = |mode: f64, epsilon: f64| {
         let coefficient = (PI * epsilon).powi(2);
@@ -93,6 +135,7 @@ fn fletchers_forms_hold_to_their_order() {
 /// P. M. Morse, Vibration and Sound, clamped: 1 + 2ε + (4 + π²n²/2)ε². Memory (sure), confirmed by computation.
 #[test]
 fn morses_expansion_holds_to_its_order() {
+    origin("P. M. Morse, Vibration and Sound, chapter IV, clamped ends", By::Memory("sure"));
     let form =
         |n: f64, epsilon: f64| 1.0 + 2.0 * epsilon + (4.0 + 0.5 * (PI * n).powi(2)) * epsilon * epsilon;
     assert_second_order(form, CLAMPED);
@@ -102,6 +145,11 @@ fn morses_expansion_holds_to_its_order() {
 /// J. Acoust. Soc. Am. 156, 683 (2024), abstract read; the formula computed.
 #[test]
 fn the_expansion_for_unlike_ends_holds_to_its_order() {
+    origin(
+        "Clamped–pinned ends as in M. B. Anderson and R. G. Beausoleil, J. Acoust. Soc. Am. 156, 683 (2024), abstract \
+         read; the expansion",
+        By::Computed,
+    );
     let form = |n: f64, epsilon: f64| 1.0 + epsilon + (1.0 + 0.5 * (PI * n).powi(2)) * epsilon * epsilon;
     assert_second_order(form, CLAMPED_PINNED);
 }
@@ -125,6 +173,10 @@ fn flexible(length_mm: f64, unit_mass_kg_per_m: f64) -> SpeakingString {
 /// 3.4e13·n²d²/(f²L⁴) cents (cm, Hz) where E/ρ = 25.5e10 cm²/s²; the constant computed, 3.40397e13.
 #[test]
 fn youngs_constant_comes_out() {
+    origin(
+        "R. W. Young, \"Inharmonicity of plain wire piano strings\", J. Acoust. Soc. Am. 24, 267 (1952)",
+        By::AbstractRead,
+    );
     let core = wire(1.0, 25.5e6 * 7850.0 * 1e-9, 7850.0);
     let (unit_mass, stiffness) = plain(&core);
     let (length_mm, frequency_hz) = (620.0, 262.0);
@@ -133,13 +185,10 @@ fn youngs_constant_comes_out() {
     let per_square = 600.0 / 2f64.ln() * inharmonicity(stiffness, tension_n, length_mm);
     let (diameter_cm, length_cm) = (core.diameter_mm / 10.0, length_mm / 10.0);
     let constant = per_square * frequency_hz.powi(2) * length_cm.powi(4) / diameter_cm.powi(2);
-    assert_near(
-        constant,
-        3.40397e13,
-        0.000005e13,
-        "Young's constant, half a unit of the last digit computed",
-    );
-    assert_near(constant, 3.4e13, 0.05e13, "Young's constant, half a unit of the last digit published");
+    // Half a unit of the last digit published, then of the last computed.
+    assert_near(constant, 3.4e13, 0.05e13, "constant, cents·Hz²·cm²");
+    origin("The same constant", By::Computed);
+    assert_near(constant, 3.40397e13, 0.000005e13, "constant, cents·Hz²·cm²");
 }
 
 /// A. Chaigne and A. Askenfelt, J. Acoust. Soc. Am. 95 (1994), C4: L 0.62 m, mass 3.93 g, T 670 N,
@@ -148,13 +197,23 @@ fn youngs_constant_comes_out() {
 #[test]
 fn middle_c_of_a_piano() {
     const SPREAD_OF_PIANOS_CENTS: f64 = 0.3; // "about 1.2" of six instruments; this is a seventh
+    origin(
+        "From the C4 of A. Chaigne and A. Askenfelt, J. Acoust. Soc. Am. 95 (1994), second-hand; the figures",
+        By::Computed,
+    );
     let (length_mm, tension_n, ratio) = (620.0, 670.0, 3.82e-5);
     let string = flexible(length_mm, 3.93e-3 / 0.62);
-    assert_near(string.frequency_hz(tension_n).expect("a legal string"), 262.189, 0.0005, "f₀ in Hz");
+    assert_near(
+        string.frequency_hz(tension_n).expect("a legal string"),
+        262.189,
+        0.0005,
+        "flexible string at 670 N, Hz",
+    );
     let coefficient = inharmonicity(ratio * tension_n * length_mm * length_mm, tension_n, length_mm);
-    assert_near(coefficient, 3.7702e-4, 0.00005e-4, "B");
+    assert_near(coefficient, 3.7702e-4, 0.00005e-4, "inharmonicity B");
+    origin("R. W. Young (1952), middle C of six pianos, about 1.2 cents", By::AbstractRead);
     let second = above_flexible(2, ratio.sqrt(), PINNED);
-    assert_near(second, 1.2, SPREAD_OF_PIANOS_CENTS, "second mode in cents");
+    assert_near(second, 1.2, SPREAD_OF_PIANOS_CENTS, "second mode, cents above the flexible string");
 }
 
 /// J. Chabassier, A. Chaigne and P. Joly, J. Acoust. Soc. Am. 134, 648 (2013), second-hand: length m, diameter mm,
@@ -163,15 +222,28 @@ fn middle_c_of_a_piano() {
 fn three_strings_of_a_piano() {
     // The list rounds its inputs to three or four digits, and 555.6 includes more than the flexible string.
     const LISTED_RELATIVE: f64 = 0.002;
-    for (length_m, diameter_mm, density, tension_n, listed_hz, computed_hz) in [
-        (0.960, 1.049, 7850.0, 766.0, 175.01, 175.008),
-        (0.326, 0.928, 7850.0, 695.0, 555.6, 554.903),
-        (1.602, 1.051, 23919.0, 915.0, 65.56, 65.539),
-    ] {
+    let strings = [
+        ("F3", 0.960, 1.049, 7850.0, 766.0, 175.01, 175.008),
+        ("C#5", 0.326, 0.928, 7850.0, 695.0, 555.6, 554.903),
+        ("C2", 1.602, 1.051, 23919.0, 915.0, 65.56, 65.539),
+    ];
+    let found_hz = |length_m: f64, diameter_mm, density, tension_n| {
         let (unit_mass, _) = plain(&wire(diameter_mm, 202.0, density));
-        let found = flexible(length_m * 1e3, unit_mass).frequency_hz(tension_n).expect("a legal string");
-        assert_near(found, computed_hz, 0.0005, "flexible string in Hz, half a unit of the last digit");
-        assert_near(found, listed_hz, LISTED_RELATIVE * listed_hz, "listed in Hz");
+        flexible(length_m * 1e3, unit_mass).frequency_hz(tension_n).expect("a legal string")
+    };
+    origin(
+        "J. Chabassier, A. Chaigne and P. Joly, J. Acoust. Soc. Am. 134, 648 (2013), frequencies listed",
+        By::SecondHand,
+    );
+    for (name, length_m, diameter_mm, density, tension_n, listed_hz, _) in strings {
+        let found = found_hz(length_m, diameter_mm, density, tension_n);
+        assert_near(found, listed_hz, LISTED_RELATIVE * listed_hz, &format!("{name}, Hz"));
+    }
+    origin("The same strings without stiffness", By::Computed);
+    for (name, length_m, diameter_mm, density, tension_n, _, computed_hz) in strings {
+        // Half a unit of the last digit.
+        let found = found_hz(length_m, diameter_mm, density, tension_n);
+        assert_near(found, computed_hz, 0.0005, &format!("{name}, flexible, Hz"));
     }
 }
 
@@ -180,20 +252,36 @@ fn three_strings_of_a_piano() {
 #[test]
 fn a_stopped_bass_string_loses_its_harmonics_as_published() {
     const ABOUT_100_CENTS: f64 = 5.0; // partials are whole numbers: the next one up would be 130 cents
+    origin(
+        "J. A. Kemp, \"On inharmonicity in bass guitar strings\", SN Applied Sciences 2:636 (2020), lowest string of five",
+        By::AbstractRead,
+    );
     let hundred_cents = 2f64.powf(1.0 / 6.0) - 1.0;
     let epsilon_at_12 = (hundred_cents / 100.0).sqrt() / PI;
-    assert_near(above_flexible(10, epsilon_at_12, PINNED), 100.0, EXACT_CENTS, "partial 10 at fret 12");
+    let at_12 = above_flexible(10, epsilon_at_12, PINNED);
+    assert!((at_12 - 100.0).abs() <= EXACT_CENTS, "the string is the published one: {at_12} cents");
     let at = |fret: f64| inharmonicity(1e4, 150.0, 864.0 * 2f64.powf(-fret / 12.0));
     let growth = at(21.0) / at(12.0);
-    assert_near(growth, 2.83, 0.005, "growth of B from fret 12 to 21, computed");
     let at_21 = above_flexible(6, epsilon_at_12 * growth.sqrt(), PINNED);
-    assert_near(at_21, 100.0, ABOUT_100_CENTS, "partial 6 at fret 21");
+    assert_near(
+        at_21,
+        100.0,
+        ABOUT_100_CENTS,
+        "partial 6 at fret 21 where partial 10 at fret 12 is 100 cents up, cents",
+    );
+    origin("The same string: B goes with 1/L² at equal tension", By::Computed);
+    // Half a unit of the last digit.
+    assert_near(growth, 2.83, 0.005, "B at fret 21 over B at fret 12");
+    origin("The same string: what the two partials of 100 cents ask of B", By::Computed);
+    // From 100 cents given for both partials to "about": a cent of either is a per cent of B.
+    assert_between(growth, [2.78, 2.78], 0.02 * 2.78, "B at fret 21 over B at fret 12");
 }
 
 /// R. P. Feynman's letter of 1961, Physics Today 62(12), 46 (2009), read: to first order the stiffness of a wire raises
 /// its pitch by 1 + (π/2)(E·A²·μ/T²)·f².
 #[test]
 fn feynmans_first_order_term() {
+    origin("R. P. Feynman's letter of 1961, Physics Today 62(12), 46 (2009)", By::Read);
     let core = wire(1.0, 200.0, 7850.0);
     let (unit_mass, stiffness) = plain(&core);
     let (length_mm, tension_n) = (650.0, 700.0);
@@ -204,7 +292,12 @@ fn feynmans_first_order_term() {
     let epsilon = bending_length_mm(stiffness, tension_n) / length_mm;
     let found = mode_ratio(1, epsilon, PINNED).expect("a legal string") - 1.0;
     // √(1 + 2x) = 1 + x − x²/2 + …
-    assert_near(found, raised, 0.51 * raised * raised, "rise of the pitch");
+    assert_near(
+        found,
+        raised,
+        0.51 * raised * raised,
+        "rise of the pitch of a steel wire of 1 mm, 650 mm, 700 N, as a fraction",
+    );
 }
 
 /// Plain steel, 647.7 mm, 200 GPa, 7850 kg/m³, as flexible strings at pitch; computed: gauge in, pitch Hz,
@@ -212,6 +305,7 @@ fn feynmans_first_order_term() {
 #[test]
 fn a_clamped_end_takes_one_bending_length_off() {
     const NOMINAL_MM: f64 = 647.7;
+    origin("Plain steel wires of 200 GPa and 7850 kg/m³ on 647.7 mm, flexible, at pitch", By::Computed);
     for (gauge_in, frequency_hz, tension_n, length_mm) in [
         (0.010, 329.627_556_913, 72.5240, 0.7506),
         (0.016, 246.941_650_628, 104.199, 1.6032),
@@ -219,9 +313,11 @@ fn a_clamped_end_takes_one_bending_length_off() {
     ] {
         let (unit_mass, stiffness) = plain(&wire(gauge_in * INCH_MM, 200.0, 7850.0));
         let (found_n, _) = flexible(NOMINAL_MM, unit_mass).tension_for(frequency_hz).expect("a legal pitch");
-        assert_near(found_n, tension_n, 5e-6 * tension_n, "tension in N, half a unit of the sixth digit");
+        let what = |figure: &str| format!("{gauge_in:.3} in at {frequency_hz:.2} Hz, {figure}");
+        // Half a unit of the sixth digit; then of the last one.
+        assert_near(found_n, tension_n, 5e-6 * tension_n, &what("tension, N"));
         let found_mm = bending_length_mm(stiffness, found_n);
-        assert_near(found_mm, length_mm, 0.00005, "bending length in mm, half a unit of the last digit");
+        assert_near(found_mm, length_mm, 0.00005, &what("bending length, mm"));
         let epsilon = found_mm / NOMINAL_MM;
         // To first order in ε; the second-order terms are (4 + π²/2)ε², some tenths of a per cent of one end's share.
         let shortened = cents(NOMINAL_MM / (NOMINAL_MM - length_mm));
@@ -230,7 +326,7 @@ fn a_clamped_end_takes_one_bending_length_off() {
             above_flexible(1, epsilon, CLAMPED_PINNED),
             shortened,
             second_order,
-            "one clamped end in cents",
+            &what("one clamped end against a string shorter by it, cents"),
         );
     }
 }
@@ -239,12 +335,14 @@ fn a_clamped_end_takes_one_bending_length_off() {
 /// length, so that the octave is 6.047 cents sharp.
 #[test]
 fn a_plain_third_is_sharp_at_the_octave_by_its_stiffness_alone() {
+    origin("Characteristic equation for a plain third of .017 in, clamped saddle, pinned fret", By::Computed);
     let (unit_mass, stiffness) = plain(&wire(0.017 * INCH_MM, 200.0, 7850.0));
     let (tension_n, _) = flexible(647.7, unit_mass).tension_for(195.997_717_991).expect("a legal pitch");
     let bending_mm = bending_length_mm(stiffness, tension_n);
     let open = above_flexible(1, bending_mm / 647.7, CLAMPED_PINNED);
     let octave = above_flexible(1, bending_mm / 323.85, CLAMPED_PINNED);
-    assert_near(open, 5.8397, 0.00005, "open in cents, half a unit of the last digit");
-    assert_near(octave, 11.8866, 0.00005, "at half the length in cents");
-    assert_near(octave - open, 6.047, 0.0005, "octave in cents");
+    // Half a unit of the last digit.
+    assert_near(open, 5.8397, 0.00005, "open, cents above the flexible string");
+    assert_near(octave, 11.8866, 0.00005, "at half the length, cents above the flexible string");
+    assert_near(octave - open, 6.047, 0.0005, "octave, cents sharp");
 }

@@ -1,5 +1,25 @@
 //! Differences of one kind, from the smallest to the largest.
 
+/// What a tally comes to.
+pub struct Figures {
+    /// What was compared.
+    pub name: &'static str,
+    /// How many numbers.
+    pub count: usize,
+    /// Median, 99 % point and largest difference.
+    pub measured: [f64; 3],
+    /// The largest allowed.
+    pub limit: f64,
+}
+
+impl Figures {
+    /// A row of the printed table.
+    pub fn row(&self) -> String {
+        let Self { name, count, measured: [median, most, largest], limit } = self;
+        format!("{name:30} {count:7} {median:9.1e} {most:9.1e} {largest:9.1e} {limit:9.0e}")
+    }
+}
+
 /// All differences of one kind, each with where it was found.
 pub struct Tally {
     name: &'static str,
@@ -30,11 +50,10 @@ impl Tally {
         self.found.get(index.saturating_sub(1)).map_or(0.0, |found| found.0)
     }
 
-    /// A row of the table: name, count, median, 99 % point, largest, limit.
-    pub fn row(&self) -> String {
-        let [median, most, largest] = [0.5, 0.99, 1.0].map(|share| self.at_share(share));
-        let count = self.found.len();
-        format!("{:30} {count:7} {median:9.1e} {most:9.1e} {largest:9.1e} {:9.0e}", self.name, self.limit)
+    /// The figures of the table.
+    pub fn figures(&self) -> Figures {
+        let measured = [0.5, 0.99, 1.0].map(|share| self.at_share(share));
+        Figures { name: self.name, count: self.found.len(), measured, limit: self.limit }
     }
 
     /// What lies beyond the limit, worst last, or that nothing was compared.

@@ -6,7 +6,7 @@ use crestline_plan::{
     Across, Action, Afterlength, Alternative, AsBuilt, Core, CoreShape, Datum, Fan, Fit, FitRule, Instrument,
     Measured, Nut, NutStyle, OtherStrings, OwnTolerance, Paper, Pitch, Plan, PlanString, Pressing, Reading,
     ReadingKind, Saddle, SaddleStyle, Scale, Sheet, Slip, Spread, Supports, Targets, Tolerances, Units, Word,
-    check,
+    check, read, read_draft, write,
 };
 use proptest::collection::vec;
 use proptest::option;
@@ -321,4 +321,29 @@ pub fn likely_plan() -> BoxedStrategy<Plan> {
         },
     );
     likely.prop_filter("the parts go together", |plan| check(plan).is_ok()).boxed()
+}
+
+/// Checks what must hold of any text: a plan comes out whole, or faults with words do.
+pub fn reads_or_says_why(text: &str) {
+    match read(text) {
+        Ok(plan) => {
+            assert!(check(&plan).is_ok());
+            assert_eq!(read(&write(&plan)), Ok(plan));
+        }
+        Err(faults) => {
+            assert!(!faults.is_empty());
+            assert!(
+                faults.iter().all(|fault| !fault.found.is_empty() && !fault.allowed.is_empty()),
+                "{faults:?}"
+            );
+            let mut seen = std::collections::BTreeSet::new();
+            assert!(faults.iter().all(|fault| seen.insert(fault.to_string())), "said twice: {faults:#?}");
+        }
+    }
+    if let Ok(draft) = read_draft(text) {
+        match check(&draft) {
+            Ok(checked) => assert_eq!(read(text).as_ref(), Ok(checked.plan())),
+            Err(faults) => assert_eq!(read(text), Err(faults)),
+        }
+    }
 }

@@ -106,11 +106,15 @@ fn plans_with_several_sets_come_out_as_computed_independently() {
         compared.plan(name, &found, &expected);
         sets.plan(name, &found, &expected);
     }
-    let rows = sets.tallies().map(|tally| {
+    let mut figures = compared.figures();
+    figures.extend(sets.tallies().map(|tally| {
         tally.sort();
-        tally.row()
-    });
-    println!("{} plans with several sets\n{}\n{}", results.len(), compared.table(), rows.join("\n"));
+        tally.figures()
+    }));
+    println!("{} plans with several sets: count, median, 99 %, largest, allowed", results.len());
+    for row in &figures {
+        println!("{}", row.row());
+    }
     let mut complaints = compared.complaints();
     complaints.extend(sets.tallies().iter().filter_map(|tally| tally.complaint()));
     complaints.append(&mut sets.unequal);

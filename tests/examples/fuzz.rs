@@ -84,6 +84,12 @@ impl Random {
         (self.next() % end.max(1) as u64) as usize
     }
 
+    /// 1 and upward, small numbers the most often: below 2 to the power of `most`.
+    fn few(&mut self, most: usize) -> usize {
+        let power = self.below(most);
+        1 + self.below(1 << power)
+    }
+
     fn pick<'a, T>(&mut self, of: &'a [T]) -> &'a T {
         &of[self.below(of.len())]
     }
@@ -92,7 +98,7 @@ impl Random {
 /// One change of `bytes`; `other` is a text to take pieces from.
 fn spoil(random: &mut Random, bytes: &mut Vec<u8>, other: &[u8]) {
     let at = random.below(bytes.len() + 1);
-    let length = 1 + random.below(1 << random.below(8));
+    let length = random.few(8);
     let end = (at + length).min(bytes.len());
     match random.below(8) {
         0 if at < bytes.len() => bytes[at] ^= 1 << random.below(8),
@@ -208,7 +214,7 @@ fn targets() -> [Target; 2] {
 fn once(random: &mut Random, target: &mut Target) -> Option<(String, Vec<u8>)> {
     let mut bytes = random.pick(&target.kept).clone();
     let other = random.pick(&target.kept).clone();
-    for _ in 0..1 + random.below(1 << random.below(5)) {
+    for _ in 0..random.few(5) {
         spoil(random, &mut bytes, &other);
     }
     let solves = random.next().is_multiple_of(SOLVED_ONE_IN);

@@ -304,18 +304,20 @@ type Section = fn(&mut String, &[RealString]) -> Plot;
 fn the_study_says_what_the_physics_does() {
     let all = strings::all();
     let scales = quantiles(all.iter().map(|string| string.scale_mm));
-    assert!(all.len() > 50 && scales[0] == 330.0 && scales[2] == 864.0, "{} strings, {scales:?}", all.len());
+    assert!(all.len() > 50 && scales[0] <= 330.0 && scales[2] >= 864.0, "{} strings, {scales:?}", all.len());
     let mut text = HEAD.to_owned();
     let _ = write!(
         text,
         "
-{} strings, {} of them wound and {} of nylon or fluorocarbon; scales of 330 to 864 mm; frets 1 to 24; relief 0.15 mm; over frets 1 and 12 the strings
+{} strings, {} of them wound and {} of nylon or fluorocarbon; scales of {} to {} mm; frets 1 to 24; relief 0.15 mm; over frets 1 and 12 the strings
 stand 0.45 and 2.0 mm (steel) or 0.6 and 3.3 mm (nylon, fluorocarbon) high. \"Best setback\" is the least squares of frets 1 to 12 with the
 nut where it is. \"Left\" is the largest difference at frets 1 to 12 once both ways of reckoning have their own best crest, or crest and nut edge.
 ",
         all.len(),
         all.iter().filter(|string| string.solid_stiffness_n_mm2.is_some()).count(),
         all.iter().filter(|string| string.is_polymer).count(),
+        scales[0],
+        scales[2],
     );
     let sections: [(&str, Section); 4] = [
         ("fret", fret_section),

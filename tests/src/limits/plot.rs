@@ -124,7 +124,8 @@ impl Plot {
                 number = Some(number.map_or(0, |number| number + 1));
             }
             let index = number.unwrap_or(0);
-            let style = if index / colours.len() % 2 == 0 { LineStyle::Solid } else { LineStyle::Dashed };
+            let style =
+                if (index / colours.len()).is_multiple_of(2) { LineStyle::Solid } else { LineStyle::Dashed };
             let layer = colours[index % colours.len()];
             let points: Vec<_> = curve.points.iter().map(|point| axes.at(*point)).collect();
             if let (Some(last), false) = (points.last(), curve.name.is_empty()) {

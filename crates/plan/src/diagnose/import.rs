@@ -6,6 +6,9 @@ use crate::fault::quoted;
 use crate::limits::{self, number_words};
 use crate::{Fault, Reading, ReadingKind, Word};
 
+/// Most faults that are listed; a table with more is no table of readings, and is looked at no further.
+const MOST_FAULTS: usize = 1000;
+
 /// The columns, by name or, without a heading, in this order.
 const COLUMNS: [&str; 4] = ["string", "fret", "kind", "cents"];
 
@@ -22,7 +25,7 @@ const COLUMNS: [&str; 4] = ["string", "fret", "kind", "cents"];
 /// ```
 ///
 /// # Errors
-/// Every line that is no reading, by its number.
+/// Every line that is no reading, by its number; from a thousand faults on the rest is not looked at.
 pub fn readings_from_csv(text: &str) -> Result<Vec<Reading>, Vec<Fault>> {
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
     let mut reader = ReaderBuilder::new()
@@ -56,6 +59,11 @@ pub fn readings_from_csv(text: &str) -> Result<Vec<Reading>, Vec<Fault>> {
                 "one reading more",
                 format!("at most {}", limits::READINGS),
             ));
+            break;
+        }
+        if faults.len() >= MOST_FAULTS {
+            let found = format!("{} faults; the lines after it were not looked at", faults.len());
+            faults.push(Fault::new(format!("line {line}"), found, "a table of readings"));
             break;
         }
     }
@@ -152,5 +160,13 @@ mod tests {
             ["line 2, string", "line 3, fret", "line 4, cents", "line 5, kind", "line 5, cents"]
         );
         assert_eq!(readings_from_csv(" \n").unwrap_err()[0].found, "no readings");
+    }
+
+    #[test]
+    fn a_table_full_of_faults_is_looked_at_no_further() {
+        let faults = readings_from_csv(&"odd\n".repeat(100_000)).unwrap_err();
+        // Four faults a line at most: the last line is still told whole.
+        assert!((MOST_FAULTS..MOST_FAULTS + 5).contains(&faults.len()), "{}", faults.len());
+        assert!(faults.last().unwrap().found.contains("not looked at"));
     }
 }

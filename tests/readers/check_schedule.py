@@ -39,6 +39,9 @@ def check_rows(words, rows, plan, report, unit, datum_mm):
             "crest_height": built["crest_mm"]["z"],
             "nut_setback": built["nut_setback_mm"],
         }
+        check(("ideal_plus_minus_" + unit in row) == ("plus_minus_mm" in string), f"{words}: a band too many or few")
+        if "plus_minus_mm" in string:
+            lengths["ideal_plus_minus"] = string["plus_minus_mm"]
         for name, value in lengths.items():
             close(row, f"{name}_{unit}", None if value is None else value * scale, words)
         octave = next(fret for fret in string["frets"] if fret["fret"] == 12)

@@ -35,6 +35,8 @@ pub(crate) struct StringFacts {
     /// The crest as built.
     pub crest: Point,
     pub ideal_setback_mm: f64,
+    /// Half-width of its 90 % band, where the plan has tolerances.
+    pub plus_minus_mm: Option<f64>,
     pub built: BuiltReport,
     /// Error left at fret 12, cents.
     pub octave_cents: Option<f64>,
@@ -95,6 +97,11 @@ impl<'a> Facts<'a> {
         }
     }
 
+    /// Whether it is known how sure the setbacks are.
+    pub fn has_bands(&self) -> bool {
+        self.strings.iter().any(|string| string.plus_minus_mm.is_some())
+    }
+
     /// Whether any nut edge has been moved.
     pub fn nut_is_compensated(&self) -> bool {
         self.strings.iter().any(|s| s.built.nut_setback_mm != 0.0)
@@ -149,6 +156,7 @@ fn strings(plan: &Plan, solution: &Solution) -> Vec<StringFacts> {
             saddle: point(line.saddle),
             crest: point(line.crest),
             ideal_setback_mm: report.ideal.saddle_setback_mm,
+            plus_minus_mm: report.plus_minus_mm,
             built: report.built,
             octave_cents: report.frets.iter().find(|fret| fret.fret == 12).map(|fret| fret.built_cents),
         })

@@ -9,21 +9,21 @@ use crate::{LengthUnits, SheetOptions};
 ///
 /// Lengths are in millimetres to 0.001, or in inches to 0.0001 where the options ask for inches, decimal or not:
 /// a file for a machine has no use for fractions. x is measured from the options' datum. Cells without a value
-/// are empty. A name that a spreadsheet would run as a formula has an apostrophe put before it.
+/// are empty. Where the plan has tolerances a last column holds the half-width of the ideal setback's 90 % band. A name that a spreadsheet would run as a formula has an apostrophe put before it.
 #[must_use]
 pub fn schedule_csv(plan: &Plan, solution: &Solution, options: &SheetOptions) -> String {
     let facts = Facts::new(plan, solution, options);
     let mut writer = csv::Writer::from_writer(vec![]);
     // Writing to memory cannot fail; were it to, the text would end early and the tests would see it.
-    let _ = writer.write_record(header(options));
+    let _ = writer.write_record(header(&facts));
     for string in &facts.strings {
         let _ = writer.write_record(row(&facts, string));
     }
     writer.into_inner().ok().and_then(|bytes| String::from_utf8(bytes).ok()).unwrap_or_default()
 }
 
-fn header(options: &SheetOptions) -> Vec<String> {
-    let unit = options.units.sign();
+fn header(facts: &Facts<'_>) -> Vec<String> {
+    let unit = facts.options.units.sign();
     let lengths = [
         "gauge",
         "ideal_setback",
@@ -36,13 +36,14 @@ fn header(options: &SheetOptions) -> Vec<String> {
     ];
     let first = ["string", "name"].map(str::to_owned);
     let last = ["octave_error_cents", "worst_error_cents"].map(str::to_owned);
-    first.into_iter().chain(lengths.map(|name| format!("{name}_{unit}"))).chain(last).collect()
+    let band = facts.has_bands().then(|| format!("ideal_plus_minus_{unit}"));
+    first.into_iter().chain(lengths.map(|name| format!("{name}_{unit}"))).chain(last).chain(band).collect()
 }
 
 fn row(facts: &Facts<'_>, string: &StringFacts) -> Vec<String> {
     let units = facts.options.units;
     let length = |mm: f64| length(units, mm);
-    vec![
+    let mut row = vec![
         string.number.to_string(),
         harmless(&string.name),
         length(string.gauge_mm),
@@ -55,7 +56,11 @@ fn row(facts: &Facts<'_>, string: &StringFacts) -> Vec<String> {
         length(string.built.nut_setback_mm),
         string.octave_cents.map(|cents| plain(cents, 2)).unwrap_or_default(),
         plain(string.built.max_cents, 2),
-    ]
+    ];
+    if facts.has_bands() {
+        row.push(string.plus_minus_mm.map(length).unwrap_or_default());
+    }
+    row
 }
 
 fn length(units: LengthUnits, mm: f64) -> String {

@@ -7,12 +7,15 @@ use crate::facts::Facts;
 use crate::lengths::{cents, decimals};
 use crate::table::{Column, Table};
 
+/// Where the plus-minus of the ideal setback stands, behind the setback itself.
+const BAND_COLUMN: usize = 3;
+
 /// One row a string.
 pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
     let unit = facts.options.units.sign();
     let mut block = Block::new("Schedule", format!("Schedule of crests, x from {}", facts.datum_short()));
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
-    let columns = vec![
+    let mut columns = vec![
         Column { heading: ["String", ""], unit: "", width_mm: 20.0, number: false },
         number("Gauge", "w wound", unit, 17.5),
         number("Ideal", "setback", unit, 16.0),
@@ -24,9 +27,12 @@ pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
         number("Fret 12", "error", "cents", 14.5),
         number("Worst", "error", "cents", 14.5),
     ];
+    if facts.has_bands() {
+        columns.insert(BAND_COLUMN, number("± at", "90 %", unit, 13.0));
+    }
     let rows = facts.strings.iter().map(|s| {
         let gauge = facts.options.units.gauge(s.gauge_mm);
-        vec![
+        let mut row = vec![
             s.label(),
             if s.wound { format!("{gauge} w") } else { gauge },
             facts.text(s.ideal_setback_mm),
@@ -37,7 +43,11 @@ pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
             facts.text(s.built.crest_mm.z),
             s.octave_cents.map_or_else(|| "–".to_owned(), cents),
             decimals(s.built.max_cents, 1),
-        ]
+        ];
+        if facts.has_bands() {
+            row.insert(BAND_COLUMN, s.plus_minus_mm.map_or_else(|| "–".to_owned(), |mm| facts.text(mm)));
+        }
+        row
     });
     Table { columns, rows: rows.collect() }.draw(&mut block);
     block

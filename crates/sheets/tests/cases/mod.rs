@@ -49,7 +49,7 @@ pub fn cases() -> Vec<Case> {
             cases.push(solved(&format!("{} {style:?}", example.name), plan));
         }
     }
-    cases.extend([hostile(), crowded(), widest(), single()]);
+    cases.extend([hostile(), crowded(), widest(), single(), banded("steel_six"), banded("fanned_eight")]);
     cases
 }
 
@@ -79,6 +79,13 @@ pub fn widest() -> Case {
     plan.saddle.style = SaddleStyle::Shaped;
     plan.saddle.thickness_mm = 20.0;
     solved("widest", plan)
+}
+
+/// With tolerances, so that the schedule has a column more.
+pub fn banded(name: &str) -> Case {
+    let mut plan = example(name);
+    plan.tolerances = Some(crestline_plan::Tolerances::default());
+    solved(&format!("{name} with tolerances"), plan)
 }
 
 /// One string only.

@@ -14,7 +14,7 @@ use crate::nut_view::nut_view;
 use crate::pack::{column_width_mm, pack};
 use crate::plan_view::plan_view;
 use crate::profile::profile;
-use crate::tables::{schedule, slots};
+use crate::tables::{bands, schedule, slots};
 use crate::template::template;
 
 /// The dimensioned drawing of a solved plan on paper. Views are never scaled: what does not fit a sheet
@@ -50,6 +50,7 @@ fn blocks(facts: &Facts<'_>, width_mm: f64) -> Vec<Block> {
     if contents.tables {
         blocks.extend(slots(facts));
         blocks.push(schedule(facts));
+        blocks.extend(bands(facts));
     }
     if contents.nut_view {
         blocks.extend(nut_view(facts));

@@ -3,19 +3,16 @@
 use crestline_plan::SaddleStyle;
 
 use crate::block::Block;
-use crate::facts::Facts;
+use crate::facts::{Facts, StringFacts};
 use crate::lengths::{cents, decimals};
 use crate::table::{Column, Table};
-
-/// Where the plus-minus of the ideal setback stands, behind the setback itself.
-const BAND_COLUMN: usize = 3;
 
 /// One row a string.
 pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
     let unit = facts.options.units.sign();
     let mut block = Block::new("Schedule", format!("Schedule of crests, x from {}", facts.datum_short()));
     let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
-    let mut columns = vec![
+    let columns = vec![
         Column { heading: ["String", ""], unit: "", width_mm: 20.0, number: false },
         number("Gauge", "w wound", unit, 17.5),
         number("Ideal", "setback", unit, 16.0),
@@ -27,12 +24,9 @@ pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
         number("Fret 12", "error", "cents", 14.5),
         number("Worst", "error", "cents", 14.5),
     ];
-    if facts.has_bands() {
-        columns.insert(BAND_COLUMN, number("± at", "90 %", unit, 13.0));
-    }
     let rows = facts.strings.iter().map(|s| {
         let gauge = facts.options.units.gauge(s.gauge_mm);
-        let mut row = vec![
+        vec![
             s.label(),
             if s.wound { format!("{gauge} w") } else { gauge },
             facts.text(s.ideal_setback_mm),
@@ -43,14 +37,35 @@ pub(crate) fn schedule(facts: &Facts<'_>) -> Block {
             facts.text(s.built.crest_mm.z),
             s.octave_cents.map_or_else(|| "–".to_owned(), cents),
             decimals(s.built.max_cents, 1),
-        ];
-        if facts.has_bands() {
-            row.insert(BAND_COLUMN, s.plus_minus_mm.map_or_else(|| "–".to_owned(), |mm| facts.text(mm)));
-        }
-        row
+        ]
     });
     Table { columns, rows: rows.collect() }.draw(&mut block);
     block
+}
+
+/// How sure every ideal setback is; `None` where the plan has no tolerances. The schedule has no room for more columns.
+pub(crate) fn bands(facts: &Facts<'_>) -> Option<Block> {
+    if !facts.has_bands() {
+        return None;
+    }
+    let unit = facts.options.units.sign();
+    let mut block = Block::new("Bands", "How sure the ideal setbacks are");
+    let number = |a, b, unit, width_mm| Column { heading: [a, b], unit, width_mm, number: true };
+    let columns = vec![
+        Column { heading: ["String", ""], unit: "", width_mm: 20.0, number: false },
+        number("Ideal", "setback", unit, 20.0),
+        number("±, nine", "of ten", unit, 20.0),
+        number("From", "", unit, 20.0),
+        number("To", "", unit, 20.0),
+    ];
+    let row = |s: &StringFacts| {
+        let by_mm = s.plus_minus_mm?;
+        let ends = [s.ideal_setback_mm - by_mm, s.ideal_setback_mm + by_mm];
+        let lengths = [s.ideal_setback_mm, by_mm, ends[0], ends[1]].map(|mm| facts.text(mm));
+        Some(std::iter::once(s.label()).chain(lengths).collect())
+    };
+    Table { columns, rows: facts.strings.iter().filter_map(row).collect() }.draw(&mut block);
+    Some(block)
 }
 
 /// The ends of every slot or piece; `None` where there is none.

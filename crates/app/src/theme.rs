@@ -216,10 +216,12 @@ impl Palette {
     }
 }
 
-/// The marker of a string, 0 first.
+/// The marker of a string, 0 first. Strings beyond the markers share one with a string whose hue is a neighbour of
+/// theirs, because neighbouring hues are told apart also by those who see fewer colours.
 #[must_use]
 pub fn marker(index: usize) -> MarkerShape {
-    MARKERS[index % MARKERS.len()]
+    const NEIGHBOUR: usize = 3;
+    MARKERS[(index + NEIGHBOUR * (index / MARKERS.len())) % MARKERS.len()]
 }
 
 /// Puts fonts, sizes and both palettes into the context.
@@ -315,6 +317,9 @@ fn visuals(theme: Theme, p: &Palette) -> Visuals {
 }
 
 #[cfg(test)]
+mod sight;
+
+#[cfg(test)]
 mod tests {
     use super::*;
 
@@ -352,6 +357,7 @@ mod tests {
                 (p.ink, p.caution_ground),
                 (p.ink, p.blank),
                 (p.accent, p.accent_ground),
+                (p.quiet, p.accent_ground),
             ];
             for (text, ground) in pairs.chain(own) {
                 assert!(

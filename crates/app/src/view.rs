@@ -2,6 +2,8 @@
 
 use std::collections::BTreeSet;
 
+use eframe::egui::Key;
+
 use crate::choices::study::Study;
 use crate::fields::draft::Drafts;
 use crate::papers::preview::Preview;
@@ -23,11 +25,17 @@ pub enum Page {
     Sheets,
     /// Tuner readings, and what they say of the instrument.
     Diagnosis,
+    /// What the program computes, its limits and its sources.
+    Help,
 }
 
 impl Page {
     /// All pages in the order of their tabs.
-    pub const ALL: [Self; 5] =
+    pub const ALL: [Self; 6] =
+        [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets, Self::Diagnosis, Self::Help];
+
+    /// The pages that have a tab; Help stands in a menu.
+    pub const TABS: [Self; 5] =
         [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets, Self::Diagnosis];
 
     /// The word on its tab.
@@ -39,7 +47,29 @@ impl Page {
             Self::Compare => "Compare",
             Self::Sheets => "Sheets",
             Self::Diagnosis => "Diagnosis",
+            Self::Help => "Help",
         }
+    }
+
+    /// One sentence on what it is for.
+    #[must_use]
+    pub fn meaning(self) -> &'static str {
+        match self {
+            Self::Saddle => "Where each string's crest must stand so that the fretted notes are in tune.",
+            Self::FrettedNotes => "How far each fretted note is off, on every string and at every fret.",
+            Self::Compare => "What each way of making saddle and nut can reach, and figures for setting out.",
+            Self::Sheets => "The drawing as it prints, at full size.",
+            Self::Diagnosis => "What tuner readings say about an instrument that exists.",
+            Self::Help => "What the program computes, how far it can be trusted, and where it comes from.",
+        }
+    }
+
+    /// The digit of its key, by its place among the tabs.
+    #[must_use]
+    pub fn digit(self) -> Option<Key> {
+        const DIGITS: [Key; 6] = [Key::Num1, Key::Num2, Key::Num3, Key::Num4, Key::Num5, Key::Num6];
+        let place = Self::ALL.into_iter().position(|page| page == self)?;
+        DIGITS.get(place).copied()
     }
 }
 
@@ -65,6 +95,18 @@ pub enum Group {
 }
 
 impl Group {
+    /// All groups.
+    pub const ALL: [Self; 8] = [
+        Self::About,
+        Self::Instrument,
+        Self::Strings,
+        Self::Pressing,
+        Self::Saddle,
+        Self::Nut,
+        Self::Fit,
+        Self::Sheet,
+    ];
+
     /// The words on its heading.
     #[must_use]
     pub fn name(self) -> &'static str {

@@ -75,6 +75,8 @@ pub enum Command {
     ResetPlots,
     /// Put the last message away.
     DismissMessage,
+    /// Search the commands by their names.
+    FindCommand,
 }
 
 impl Command {
@@ -117,6 +119,7 @@ impl Command {
             Self::UsualText => "Usual text size".into(),
             Self::ResetPlots => "Show the whole layout".into(),
             Self::DismissMessage => "Put the message away".into(),
+            Self::FindCommand => "Find a command…".into(),
         }
     }
 
@@ -137,6 +140,9 @@ impl Command {
             Self::UsualText => (Modifiers::COMMAND, Key::Num0),
             Self::ResetPlots => (Modifiers::COMMAND, Key::R),
             Self::ShowLengthsIn(_) => (Modifiers::COMMAND, Key::M),
+            Self::FindCommand => (Modifiers::COMMAND, Key::K),
+            Self::ShowPage(Page::Help) => (Modifiers::NONE, Key::F1),
+            Self::ShowPage(page) => (Modifiers::COMMAND, page.digit()?),
             _ => return None,
         };
         Some(KeyboardShortcut::new(modifiers, key))
@@ -145,19 +151,20 @@ impl Command {
     /// A second key that calls it, where hands expect one.
     #[must_use]
     pub fn spare_shortcut(&self) -> Option<KeyboardShortcut> {
-        let key = match self {
-            Self::LargerText => Key::Equals,
-            Self::Redo => Key::Y,
+        let (modifiers, key) = match self {
+            Self::LargerText => (Modifiers::COMMAND, Key::Equals),
+            Self::Redo => (Modifiers::COMMAND, Key::Y),
+            Self::FindCommand => (Modifiers::NONE, Key::F2),
             _ => return None,
         };
-        Some(KeyboardShortcut::new(Modifiers::COMMAND, key))
+        Some(KeyboardShortcut::new(modifiers, key))
     }
 
     /// The commands that keys call. The more particular combination stands before the plainer one,
     /// because a key pressed with more modifiers also matches fewer.
     #[must_use]
-    pub fn with_keys() -> [Self; 11] {
-        [
+    pub fn with_keys() -> Vec<Self> {
+        let mut all = vec![
             Self::SaveAs,
             Self::Redo,
             Self::Open,
@@ -169,6 +176,9 @@ impl Command {
             Self::SmallerText,
             Self::UsualText,
             Self::ResetPlots,
-        ]
+            Self::FindCommand,
+        ];
+        all.extend(Page::ALL.map(Self::ShowPage));
+        all
     }
 }

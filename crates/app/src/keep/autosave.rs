@@ -263,11 +263,7 @@ mod tests {
         assert_eq!(list.len(), 1);
         let found = list.pop().unwrap();
         assert_eq!(found.kept.plan, desk.plan, "the newest state");
-        assert!(
-            found.lines().iter().any(|line| line.contains("relief_mm: 0.15 → 0.4")),
-            "{:?}",
-            found.lines()
-        );
+        assert!(found.lines().iter().any(|line| line.contains("relief: 0.15 → 0.4")), "{:?}", found.lines());
 
         let mut autosave = begin(state.path());
         autosave.adopt(found);

@@ -3,12 +3,14 @@
 use crestline_plan::Plan;
 use serde_json::Value;
 
+use crate::fields::form::place_in_words;
+
 /// So many fields are named; the rest is counted.
 const MOST_NAMED: usize = 4;
 /// The longest text of a value, in letters.
 const LONGEST_VALUE: usize = 24;
 
-/// The fields in which `other` differs from `one`, a line each: path, value in `one`, value in `other`.
+/// The fields in which `other` differs from `one`, a line each: field, value in `one`, value in `other`.
 /// Empty where they are the same.
 #[must_use]
 pub fn lines(one: &Plan, other: &Plan) -> Vec<String> {
@@ -38,7 +40,9 @@ fn collect(path: &str, one: &Value, other: &Value, all: &mut Vec<String>) {
                 collect(&format!("{path}[{index}]"), a, b, all);
             }
         }
-        (one, other) if one != other => all.push(format!("{path}: {} → {}", short(one), short(other))),
+        (one, other) if one != other => {
+            all.push(format!("{}: {} → {}", place_in_words(path), short(one), short(other)))
+        }
         _ => {}
     }
 }
@@ -68,7 +72,7 @@ mod tests {
         assert!(lines(&one, &one).is_empty());
         let mut other = one.clone();
         other.instrument.relief_mm = 0.5;
-        assert_eq!(lines(&one, &other), ["instrument.relief_mm: 0.15 → 0.5"]);
+        assert_eq!(lines(&one, &other), ["Instrument, relief: 0.15 → 0.5"]);
         for string in &mut other.strings {
             string.action_mm.twelfth = 3.25;
         }
@@ -76,6 +80,6 @@ mod tests {
         assert_eq!(named.len(), MOST_NAMED + 1);
         assert_eq!(named.last().map(String::as_str), Some("and 3 more"), "seven fields in all");
         other.strings.pop();
-        assert!(lines(&one, &other).contains(&"strings: 6 of them → 5 of them".to_owned()));
+        assert!(lines(&one, &other).contains(&"Strings: 6 of them → 5 of them".to_owned()));
     }
 }

@@ -1,7 +1,7 @@
 //! What egui wants painted, onto a canvas.
 
-use eframe::egui::epaint::{ClippedPrimitive, Primitive};
-use eframe::egui::{Color32, Context, FullOutput, Rect, TexturesDelta};
+use eframe::egui::epaint::{ClippedPrimitive, ClippedShape, Primitive};
+use eframe::egui::{Context, Rect, TexturesDelta};
 
 use super::canvas::{Canvas, Window};
 use super::texture::Textures;
@@ -17,25 +17,23 @@ impl Painter {
     /// The largest texture, in texels on a side, that egui may ask for; letters take far less.
     pub const LARGEST_TEXTURE: usize = 8192;
 
-    /// Takes new textures in, where they come without anything to paint.
-    pub fn take_textures(&mut self, delta: &mut TexturesDelta) {
+    /// Takes new textures in, before the frame that wants them is painted.
+    pub fn take(&mut self, delta: &TexturesDelta) {
         self.textures.take(delta);
+    }
+
+    /// Lets textures go that are not wanted after this frame, and says that the delta is dealt with.
+    pub fn drop_old(&mut self, delta: &mut TexturesDelta) {
         self.textures.drop_old(delta);
         delta.clear();
     }
 
-    /// Paints a frame of `size` pixels on a ground of one colour.
+    /// Paints shapes, `scale` pixels to a point, onto a canvas.
     #[must_use]
-    pub fn paint(&mut self, ctx: &Context, output: FullOutput, size: [usize; 2], ground: Color32) -> Canvas {
-        let mut delta = output.textures_delta;
-        self.textures.take(&delta);
-        let scale = output.pixels_per_point;
-        let mut canvas = Canvas::new(size[0], size[1], ground);
-        for primitive in ctx.tessellate(output.shapes, scale) {
+    pub fn paint(&self, ctx: &Context, shapes: Vec<ClippedShape>, scale: f32, mut canvas: Canvas) -> Canvas {
+        for primitive in ctx.tessellate(shapes, scale) {
             self.primitive(&mut canvas, &primitive, scale);
         }
-        self.textures.drop_old(&delta);
-        delta.clear();
         canvas
     }
 
@@ -70,7 +68,7 @@ fn pixels(rect: Rect, scale: f32, whole: Window) -> Window {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use eframe::egui::{CornerRadius, RawInput, Sense, pos2, vec2};
+    use eframe::egui::{Color32, CornerRadius, FullOutput, RawInput, Sense, pos2, vec2};
 
     /// A frame with one square of 20 points at (10, 10), clipped to its upper half.
     fn square(ctx: &Context) -> FullOutput {
@@ -90,8 +88,10 @@ mod tests {
     fn a_square_is_painted_where_it_stands_and_clipped() {
         let ctx = Context::default();
         let mut painter = Painter::default();
-        let output = square(&ctx);
-        let canvas = painter.paint(&ctx, output, [60, 60], Color32::WHITE);
+        let mut output = square(&ctx);
+        painter.take(&output.textures_delta);
+        let canvas = painter.paint(&ctx, output.shapes, 1.0, Canvas::new(60, 60, Color32::WHITE));
+        painter.drop_old(&mut output.textures_delta);
         for (x, y) in [(12, 12), (28, 19), (20, 15)] {
             assert_eq!(canvas.at(x, y), Color32::RED, "{x}, {y}");
         }

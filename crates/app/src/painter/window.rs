@@ -256,15 +256,16 @@ impl Opened {
     }
 
     fn paint(&mut self, mut output: FullOutput) -> Result<(), String> {
+        self.painter.take(&output.textures_delta);
         let size = self.window.inner_size();
         let (Some(width), Some(height)) = (NonZeroU32::new(size.width), NonZeroU32::new(size.height)) else {
             // A window that is folded away still brings textures.
-            self.painter.take_textures(&mut output.textures_delta);
+            self.painter.drop_old(&mut output.textures_delta);
             return Ok(());
         };
-        let ground = self.show.ground(&self.ctx);
-        let sides = [size.width as usize, size.height as usize];
-        let canvas = self.painter.paint(&self.ctx, output, sides, ground);
+        let blank = Canvas::new(size.width as usize, size.height as usize, self.show.ground(&self.ctx));
+        let canvas = self.painter.paint(&self.ctx, output.shapes, output.pixels_per_point, blank);
+        self.painter.drop_old(&mut output.textures_delta);
         self.surface.resize(width, height).map_err(|error| error.to_string())?;
         let mut buffer = self.surface.buffer_mut().map_err(|error| error.to_string())?;
         copy(&canvas, &mut buffer);

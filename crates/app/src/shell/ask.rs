@@ -4,6 +4,7 @@ use std::path::PathBuf;
 
 use eframe::egui::{Button, Context, Id, Key, Modal, Modifiers, RichText, Ui};
 
+use super::finder::Finder;
 use super::path_box::PathBox;
 use super::picker::Purpose;
 use super::{disk, recover};
@@ -23,6 +24,8 @@ pub enum Question {
     Path(PathBox),
     /// Another program has changed the plan's file: which is to stand?
     Disk(Box<disk::Changed>),
+    /// Which command?
+    Find(Finder),
     /// Work was left behind: take it up?
     Recovery(Box<Found>),
 }
@@ -40,6 +43,8 @@ pub enum Reply {
     Propose(Purpose, PathBuf),
     /// What to do about a file that another program has changed.
     Disk(disk::Choice),
+    /// Do this.
+    Do(Command),
     /// What to do about work left behind.
     Recovery(recover::Choice),
     /// Nothing.
@@ -55,6 +60,7 @@ pub fn show(ctx: &Context, palette: &Palette, question: &mut Question, desk: &De
             Question::Replace(purpose, path) => replace(ui, palette, *purpose, path),
             Question::Path(path_box) => path_box.show(ui, palette),
             Question::Disk(changed) => disk::show(ui, palette, changed, &desk.plan),
+            Question::Find(finder) => finder.show(ui, palette),
             Question::Recovery(found) => recover::show(ui, palette, found),
         }
     });

@@ -30,6 +30,7 @@ pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View, recent: &[
             file_menu(ui, recent, &mut commands);
             edit_menu(ui, desk, view, &mut commands);
             view_menu(ui, view, &mut commands);
+            help_menu(ui, &mut commands);
             ui.add_space(size::WIDE_GAP);
             pages(ui, palette, view, &mut commands);
             unit(ui, palette, view, &mut commands);
@@ -113,6 +114,14 @@ fn view_menu(ui: &mut Ui, view: &View, commands: &mut Vec<Command>) {
     });
 }
 
+fn help_menu(ui: &mut Ui, commands: &mut Vec<Command>) {
+    ui.menu_button("Help", |ui| {
+        item(ui, commands, Command::FindCommand, true);
+        let page = Command::ShowPage(Page::Help);
+        entry(ui, commands, page, "The model, its limits and sources".to_owned(), true);
+    });
+}
+
 fn named_item(ui: &mut Ui, commands: &mut Vec<Command>, command: Command, what: Option<&str>) {
     let words = what.map_or_else(|| command.name(), |what| format!("{}: {what}", command.name()));
     entry(ui, commands, command, words, what.is_some());
@@ -138,12 +147,12 @@ fn entry(ui: &mut Ui, commands: &mut Vec<Command>, command: Command, words: Stri
 
 /// The tabs; where they do not fit, a menu of the pages.
 fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command>) {
-    let (room, count) = (ui.available_width() - UNIT, Page::ALL.len() as f32);
+    let (room, count) = (ui.available_width() - UNIT, Page::TABS.len() as f32);
     let around = 2.0 * ui.spacing().button_padding.x + ui.spacing().item_spacing.x;
     let font = TextStyle::Button.resolve(ui.style());
     let text =
         |page: Page| ui.painter().layout_no_wrap(page.name().to_owned(), font.clone(), palette.ink).size().x;
-    let least: f32 = Page::ALL.into_iter().map(|page| text(page) + around).sum();
+    let least: f32 = Page::TABS.into_iter().map(|page| text(page) + around).sum();
     if least > room {
         ui.menu_button(format!("{} ▾", view.page.name()), |ui| {
             for page in Page::ALL {
@@ -152,9 +161,9 @@ fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command
         });
         return;
     }
-    let usual: f32 = Page::ALL.into_iter().map(|page| (text(page) + around).max(TAB)).sum();
+    let usual: f32 = Page::TABS.into_iter().map(|page| (text(page) + around).max(TAB)).sum();
     let width = if usual + count * around > room { 0.0 } else { TAB };
-    for page in Page::ALL {
+    for page in Page::TABS {
         let is_shown = view.page == page;
         let colour = if is_shown { palette.ink } else { palette.quiet };
         let mut text = RichText::new(page.name()).color(colour);
@@ -167,11 +176,12 @@ fn pages(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command
             .stroke(Stroke::NONE)
             .corner_radius(CornerRadius::same(3))
             .min_size(Vec2::new(width, 24.0));
-        let response = ui.add(button);
+        let response = ui.add(button).on_hover_text(page.meaning());
         response.ctx.accesskit_node_builder(response.id, |node| {
             node.set_role(accesskit::Role::Tab);
             node.set_label(page.name());
             node.set_selected(is_shown);
+            node.set_description(page.meaning());
         });
         if is_shown {
             let line = response.rect.bottom() + 1.0;

@@ -4,6 +4,7 @@ pub mod ask;
 pub mod bar;
 pub mod disk;
 pub mod files;
+pub mod finder;
 pub mod foot;
 pub mod launch;
 pub mod obey;

@@ -9,11 +9,13 @@ use eframe::egui::{Context, ViewportCommand};
 use super::ask::{Question, Reply};
 use super::disk;
 use super::files::{self, with_ending};
+use super::finder::Finder;
 use super::path_box::PathBox;
 use super::picker::{Answer, Picker, Purpose};
 use super::readings;
 use super::recover;
 use super::window::Window;
+use crate::edit::catalogue::offers;
 use crate::edit::command::Command;
 use crate::edit::history::Edit;
 use crate::edit::strings;
@@ -59,6 +61,10 @@ pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
             }
         }
         Command::UsualText => ctx.set_zoom_factor(1.0),
+        Command::FindCommand => {
+            let offers = offers(&window.desk, &window.view, window.recent.plans());
+            window.question = Some(Question::Find(Finder::new(offers)));
+        }
         other => arrange(window, other),
     }
 }
@@ -307,6 +313,7 @@ pub fn take_reply(window: &mut Window, ctx: &Context, reply: Reply) {
             }
         },
         Reply::Without(next) => without_saving(window, ctx, next),
+        Reply::Do(command) => obey(window, ctx, command),
         Reply::Disk(choice) => disk::take(window, ctx, choice),
         // Its question holds what it is about; the window passes both on.
         Reply::Recovery(_) => {}

@@ -21,6 +21,7 @@ use crate::edit::command::Command;
 use crate::edit::desk::Desk;
 use crate::edit::history::Edit;
 use crate::fields::form::Form;
+use crate::help;
 use crate::inputs::{self, Surroundings};
 use crate::keep::autosave::Autosave;
 use crate::keep::found::Found;
@@ -244,6 +245,10 @@ impl Window {
             Frame::new().fill(palette.ground).inner_margin(Margin { left: 4, right: 8, top: 8, bottom: 8 });
         let mut commands = Vec::new();
         CentralPanel::default().frame(frame).show(ui, |ui| {
+            if self.view.page == Page::Help {
+                help::page::show(ui, palette);
+                return;
+            }
             let outcome = self.desk.outcome();
             commands.extend(notices::stale(
                 ui,
@@ -269,7 +274,7 @@ impl Window {
                 Page::FrettedNotes => notes_page::show(ui, palette, outcome, view),
                 Page::Compare => choices::page::show(ui, palette, outcome, view.string, &mut view.study),
                 Page::Sheets => papers::page::show(ui, palette, outcome, &mut view.preview),
-                Page::Diagnosis => Vec::new(),
+                Page::Diagnosis | Page::Help => Vec::new(),
             });
         });
         commands

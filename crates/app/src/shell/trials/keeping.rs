@@ -59,7 +59,7 @@ fn work_left_behind_is_offered_once_and_taken_up_as_one_step() {
     let mut opened = open(steel_six(), Some(&path), Some(state.path()));
     assert_eq!(says(&opened, "Work that was not saved"), 1);
     assert_eq!(says(&opened, "newer than the file"), 1);
-    assert_eq!(says(&opened, "instrument.relief_mm: 0.15 → 0.4"), 1);
+    assert_eq!(says(&opened, "Instrument, relief: 0.15 → 0.4"), 1);
     opened.check_accessibility();
     press(&mut opened, "Take it up");
     assert_eq!(relief(&opened), 0.4);
@@ -130,7 +130,7 @@ fn a_file_that_another_program_changed_is_noticed_when_the_user_comes_back() {
     assert!(opened.state().question.is_none(), "nothing has changed");
     written_elsewhere(&path, 0.3);
     come_back(&mut opened);
-    assert_eq!(says(&opened, "instrument.relief_mm: 0.3 → 0.15"), 1);
+    assert_eq!(says(&opened, "Instrument, relief: 0.3 → 0.15"), 1);
     opened.check_accessibility();
     press(&mut opened, "Keep mine");
     assert_eq!(relief(&opened), 0.15);

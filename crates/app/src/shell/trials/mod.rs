@@ -1,6 +1,8 @@
 //! The window around the pages, tried without a display.
 
+mod commands;
 mod keeping;
+mod pictures;
 
 use std::path::{Path, PathBuf};
 

@@ -1,0 +1,138 @@
+//! A picture of every page, light and dark, painted by the processor and compared with the one that is kept.
+//!
+//! `CRESTLINE_UPDATE_PICTURES=1 cargo test -p crestline pictures` makes them anew; look at them before they are
+//! committed.
+
+use std::cell::RefCell;
+use std::fs::{self, File};
+use std::io::{BufReader, BufWriter};
+use std::path::{Path, PathBuf};
+use std::rc::Rc;
+
+use crestline_plan::{example, read};
+use eframe::egui::{Color32, TexturesDelta};
+use egui_kittest::{Harness, TestRenderer};
+
+use super::FRAMES;
+use crate::painter::canvas::Canvas;
+use crate::painter::paint::Painter;
+use crate::shell::options::Options;
+use crate::shell::window::Window;
+use crate::theme::Palette;
+use crate::view::Page;
+
+const SIZE: [usize; 2] = [1280, 800];
+
+/// A channel may be this far off, in steps of 255: sines and powers of another system's library move the edge of
+/// a circle by a hair, and with it the soft rim of a mark.
+const NEAR: u8 = 8;
+/// So many pixels may be farther off, of a million: a figure that rounds the other way is some thirty, a word that
+/// moved by a pixel is more than this.
+const MOST_OFF: usize = 100;
+
+/// Keeps the textures for the painter.
+#[derive(Clone, Default)]
+struct Keeper(Rc<RefCell<Painter>>);
+
+impl TestRenderer for Keeper {
+    fn handle_delta(&mut self, delta: &mut TexturesDelta) {
+        let mut painter = self.0.borrow_mut();
+        painter.take(delta);
+        painter.drop_old(delta);
+    }
+}
+
+fn picture(page: Page, theme: &'static str) -> Canvas {
+    let name = if page == Page::Diagnosis { "steel_six_sharp" } else { "steel_six" };
+    let plan = read(example(name).unwrap().text).unwrap();
+    let options = Options::read(|variable| match variable {
+        "CRESTLINE_PAGE" => Some(Options::page_word(page)),
+        "CRESTLINE_THEME" => Some(theme.to_owned()),
+        _ => None,
+    });
+    let keeper = Keeper::default();
+    let builder = Harness::builder()
+        .with_size(SIZE.map(|side| side as f32))
+        .with_max_steps(FRAMES)
+        .renderer(keeper.clone());
+    let mut opened: Harness<'_, Window> =
+        builder.build_eframe(move |creation| Window::new(&creation.egui_ctx, plan, None, &options));
+    opened.run();
+    let ground = Palette::of(opened.ctx.theme()).ground;
+    let blank = Canvas::new(SIZE[0], SIZE[1], ground);
+    let shapes = opened.output().shapes.clone();
+    keeper.0.borrow().paint(&opened.ctx, shapes, 1.0, blank)
+}
+
+fn kept(page: Page, theme: &str) -> PathBuf {
+    let name = format!("{}-{theme}.png", Options::page_word(page));
+    Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/pictures").join(name)
+}
+
+fn write(path: &Path, canvas: &Canvas) {
+    fs::create_dir_all(path.parent().unwrap()).unwrap();
+    let file = BufWriter::new(File::create(path).unwrap());
+    let mut encoder = png::Encoder::new(file, canvas.width() as u32, canvas.height() as u32);
+    encoder.set_color(png::ColorType::Rgb);
+    encoder.set_compression(png::Compression::High);
+    let bytes: Vec<u8> = canvas.pixels().iter().flat_map(|pixel| [pixel.r(), pixel.g(), pixel.b()]).collect();
+    encoder.write_header().unwrap().write_image_data(&bytes).unwrap();
+}
+
+fn read_back(path: &Path) -> Vec<Color32> {
+    let file = File::open(path).unwrap_or_else(|error| panic!("{}: {error}", path.display()));
+    let mut reader = png::Decoder::new(BufReader::new(file)).read_info().unwrap();
+    let mut bytes = vec![0; reader.output_buffer_size().unwrap()];
+    let info = reader.next_frame(&mut bytes).unwrap();
+    assert_eq!([info.width as usize, info.height as usize], SIZE, "{}", path.display());
+    bytes.chunks_exact(3).map(|pixel| Color32::from_rgb(pixel[0], pixel[1], pixel[2])).collect()
+}
+
+fn is_off(a: Color32, b: Color32) -> bool {
+    a.to_array().iter().zip(b.to_array()).any(|(a, b)| a.abs_diff(b) > NEAR)
+}
+
+#[test]
+fn pages_look_as_they_did() {
+    let update = std::env::var_os("CRESTLINE_UPDATE_PICTURES").is_some();
+    let mut changed = Vec::new();
+    for page in Page::ALL {
+        for theme in ["light", "dark"] {
+            let (now, path) = (picture(page, theme), kept(page, theme));
+            if update {
+                write(&path, &now);
+                continue;
+            }
+            let before = read_back(&path);
+            let off = now.pixels().iter().zip(&before).filter(|(a, b)| is_off(**a, **b)).count();
+            if off > MOST_OFF {
+                let seen =
+                    std::env::temp_dir().join(format!("crestline-{}", path.file_name().unwrap().display()));
+                write(&seen, &now);
+                changed.push(format!(
+                    "{}: {off} pixels differ; now it is {}",
+                    path.display(),
+                    seen.display()
+                ));
+            }
+        }
+    }
+    assert!(
+        changed.is_empty(),
+        "look at the pictures, and make them anew if they are right\n{}",
+        changed.join("\n")
+    );
+}
+
+/// The comparison sees a word that moves by one pixel.
+#[test]
+fn a_small_change_is_seen() {
+    let now = picture(Page::Help, "light");
+    let mut moved = now.clone();
+    for y in 100..120 {
+        let row = moved.row(y, [0, SIZE[0]]);
+        row.rotate_right(1);
+    }
+    let off = now.pixels().iter().zip(moved.pixels()).filter(|(a, b)| is_off(**a, **b)).count();
+    assert!(off > MOST_OFF, "{off}");
+}

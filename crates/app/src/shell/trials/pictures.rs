@@ -10,7 +10,7 @@ use std::path::{Path, PathBuf};
 use std::rc::Rc;
 
 use crestline_plan::{example, read};
-use eframe::egui::{Color32, TexturesDelta};
+use eframe::egui::{Color32, TexturesDelta, Theme};
 use egui_kittest::{Harness, TestRenderer};
 
 use super::FRAMES;
@@ -23,9 +23,11 @@ use crate::view::Page;
 
 const SIZE: [usize; 2] = [1280, 800];
 
-/// A channel may be this far off, in steps of 255: sines and powers of another system's library move the edge of
-/// a circle by a hair, and with it the soft rim of a mark.
-const NEAR: u8 = 8;
+/// The pictures are kept in so many levels of each channel, which halves their files.
+const LEVELS: u32 = 32;
+/// A channel may be this far off, in steps of 255: half a level, and what sines and powers of another system's
+/// library make of the soft rim of a round mark.
+const NEAR: u8 = 4 + 8;
 /// So many pixels may be farther off, of a million: a figure that rounds the other way is some thirty, a word that
 /// moved by a pixel is more than this.
 const MOST_OFF: usize = 100;
@@ -54,6 +56,7 @@ fn picture(page: Page, theme: &'static str) -> Canvas {
     let builder = Harness::builder()
         .with_size(SIZE.map(|side| side as f32))
         .with_max_steps(FRAMES)
+        .with_theme(if theme == "dark" { Theme::Dark } else { Theme::Light })
         .renderer(keeper.clone());
     let mut opened: Harness<'_, Window> =
         builder.build_eframe(move |creation| Window::new(&creation.egui_ctx, plan, None, &options));
@@ -75,8 +78,16 @@ fn write(path: &Path, canvas: &Canvas) {
     let mut encoder = png::Encoder::new(file, canvas.width() as u32, canvas.height() as u32);
     encoder.set_color(png::ColorType::Rgb);
     encoder.set_compression(png::Compression::High);
-    let bytes: Vec<u8> = canvas.pixels().iter().flat_map(|pixel| [pixel.r(), pixel.g(), pixel.b()]).collect();
+    encoder.set_filter(png::Filter::Up);
+    let colours = canvas.pixels().iter().flat_map(|pixel| [pixel.r(), pixel.g(), pixel.b()]);
+    let bytes: Vec<u8> = colours.map(coarse).collect();
     encoder.write_header().unwrap().write_image_data(&bytes).unwrap();
+}
+
+/// The nearest of the levels.
+fn coarse(byte: u8) -> u8 {
+    let level = (u32::from(byte) * (LEVELS - 1) + 127) / 255;
+    (level * 255 / (LEVELS - 1)) as u8
 }
 
 fn read_back(path: &Path) -> Vec<Color32> {

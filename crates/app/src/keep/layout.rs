@@ -6,6 +6,7 @@ use serde_json::{Value, json};
 
 use super::place;
 use crate::shell::options::{Options, size_is_sensible};
+use crate::units::LengthUnit;
 use crate::view::{Page, ThemeChoice};
 
 const FILE: &str = "layout.json";
@@ -17,6 +18,8 @@ pub struct Layout {
     pub page: Option<Page>,
     /// Light or dark.
     pub theme: Option<ThemeChoice>,
+    /// The unit of all lengths.
+    pub unit: Option<LengthUnit>,
     /// Scale of all text, 0.8 to 2.
     pub zoom: Option<f32>,
     /// Whether the inputs were shown.
@@ -42,6 +45,7 @@ impl Layout {
         Self {
             page: word("page").and_then(Options::page_named),
             theme: word("theme").and_then(Options::theme_named),
+            unit: word("unit").and_then(|word| LengthUnit::ALL.into_iter().find(|unit| unit.sign() == word)),
             zoom: number(whole.get("zoom")).filter(|zoom| (0.8..=2.0).contains(zoom)),
             inputs: whole.get("inputs").and_then(Value::as_bool),
             inputs_width: number(whole.get("inputs_width")).filter(|width| (100.0..=2000.0).contains(width)),
@@ -54,6 +58,7 @@ impl Layout {
         let whole = json!({
             "page": self.page.map(Options::page_word),
             "theme": self.theme.map(Options::theme_word),
+            "unit": self.unit.map(LengthUnit::sign),
             "zoom": self.zoom,
             "inputs": self.inputs,
             "inputs_width": self.inputs_width,
@@ -74,6 +79,7 @@ mod tests {
         let layout = Layout {
             page: Some(Page::Sheets),
             theme: Some(ThemeChoice::Dark),
+            unit: Some(LengthUnit::Inches),
             zoom: Some(1.25),
             inputs: Some(false),
             inputs_width: Some(500.0),

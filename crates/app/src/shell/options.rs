@@ -11,6 +11,7 @@ use std::path::PathBuf;
 
 use crate::keep::layout::Layout;
 use crate::keep::place::state_folder;
+use crate::units::LengthUnit;
 use crate::view::{Page, ThemeChoice, View};
 
 /// Size of the window where nothing else is asked for, points.
@@ -27,6 +28,8 @@ pub struct Options {
     pub theme: ThemeChoice,
     /// Its size in points.
     pub size: [f32; 2],
+    /// The unit of all lengths.
+    pub unit: LengthUnit,
     /// Scale of all text.
     pub zoom: f32,
     /// Whether the inputs are shown.
@@ -53,6 +56,7 @@ impl Options {
             page: page.or(last.page).unwrap_or(Page::Saddle),
             theme: theme.or(last.theme).unwrap_or_default(),
             size: size.or(last.size).unwrap_or(USUAL_SIZE),
+            unit: last.unit.unwrap_or_default(),
             zoom: last.zoom.unwrap_or(1.0),
             inputs: last.inputs.unwrap_or(true),
             inputs_width: last.inputs_width,
@@ -65,7 +69,7 @@ impl Options {
     /// The window's state as it opens.
     #[must_use]
     pub fn view(&self) -> View {
-        View { page: self.page, theme: self.theme, inputs: self.inputs, ..View::new() }
+        View { page: self.page, theme: self.theme, unit: self.unit, inputs: self.inputs, ..View::new() }
     }
 
     /// The word for a page.
@@ -144,6 +148,7 @@ mod tests {
             page: Page::Saddle,
             theme: ThemeChoice::System,
             size: USUAL_SIZE,
+            unit: LengthUnit::Millimetres,
             zoom: 1.0,
             inputs: true,
             inputs_width: None,

@@ -311,6 +311,7 @@ impl Window {
         let layout = Layout {
             page: Some(self.view.page),
             theme: Some(self.view.theme),
+            unit: Some(self.view.unit),
             zoom: Some(zoom),
             inputs: Some(self.view.inputs),
             inputs_width: self.inputs_width,

@@ -12,8 +12,13 @@ plan=${3:-}
 mkdir -p "$folder"
 start_display
 
+# The page of readings wants a plan that has some.
+read_plan=$(mktemp -d)/read.json
+"$program" example steel_six_sharp -o "$read_plan"
+
 photograph() {
-    local page=$1 theme=$2 size=$3
+    local page=$1 theme=$2 size=$3 plan=$plan
+    [ "$page" = diagnosis ] && plan=${plan:-$read_plan}
     CRESTLINE_PAGE=$page CRESTLINE_THEME=$theme CRESTLINE_SIZE=$size start_window "$program" ${plan:+"$plan"}
     come_to_rest
     local picture=$folder/$page-$theme-$size.png

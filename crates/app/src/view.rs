@@ -292,6 +292,12 @@ impl View {
         self.message = Some(Message { text: text.into(), is_error: false });
     }
 
+    /// Says what went wrong behind what stands at the foot of the window already.
+    pub fn complain_too(&mut self, text: String) {
+        let before = self.message.take().map(|message| format!("{}  ·  ", message.text)).unwrap_or_default();
+        self.complain(before + &text);
+    }
+
     /// Says at the foot of the window what went wrong.
     pub fn complain(&mut self, text: impl Into<String>) {
         self.message = Some(Message { text: text.into(), is_error: true });

@@ -149,7 +149,7 @@ impl Window {
     /// Keeps unsaved work, and looks after the plan's file when the user comes back to the window.
     fn keep(&mut self, ctx: &Context) {
         if let Some(trouble) = self.autosave.follow(&self.desk) {
-            self.view.complain(trouble);
+            self.view.complain_too(trouble);
         }
         let comes_back =
             ctx.input(|input| input.events.iter().any(|event| matches!(event, Event::WindowFocused(true))));

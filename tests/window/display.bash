@@ -26,7 +26,7 @@ start_window() {
     window=$(timeout 60 xdotool search --sync --onlyvisible --pid "$process" | head -1)
     xdotool windowmove "$window" 0 0
     # Away from everything that reacts to the pointer.
-    xdotool mousemove --window "$window" 700 1
+    xdotool mousemove --window "$window" 800 1
     xdotool windowfocus "$window" 2>/dev/null || true
 }
 

@@ -19,6 +19,8 @@ mod published;
 #[cfg(test)]
 mod reference;
 #[cfg(test)]
+mod spread;
+#[cfg(test)]
 mod supports;
 #[cfg(test)]
 mod tidy;

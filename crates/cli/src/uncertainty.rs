@@ -11,7 +11,11 @@ use crate::{Failure, Streams, print, uncertainty_table};
 
 pub(crate) fn uncertainty(options: &Spread, streams: &mut Streams<'_>) -> Result<(), Failure> {
     let path = &options.plan.plan;
-    let checked = with_options(checked(path, streams)?, options)?;
+    let checked = checked(path, streams)?;
+    if checked.plan().tolerances.is_none() {
+        print::message(streams.messages, "crestline: the plan has no tolerances; the usual ones are taken");
+    }
+    let checked = with_options(checked, options)?;
     let refused = |faults| refused(path, faults);
     let Some(sample) = sample(&checked, streams).map_err(refused)? else { return Ok(()) };
     let shares = crestline_plan::shares(&checked).map_err(refused)?;

@@ -64,6 +64,7 @@ fn the_keys_stand_as_the_format_says_and_the_seed_decides() {
 fn the_words_fit_the_page_and_name_bands_chances_and_what_to_measure() {
     let ran = crestline(&["uncertainty", "--samples", "256", "--limit", "4", "-"], example("steel_six"));
     assert_eq!(ran.status, 0, "{}", ran.err);
+    assert!(ran.err.contains("no tolerances"), "{}", ran.err);
     println!("{}", ran.out);
     assert!(ran.out.lines().all(|line| line.chars().count() <= 100), "{}", ran.out);
     for words in ["256 instruments", "±4.0 cents", "Chance %", "What to measure next", "1. ±"] {

@@ -90,7 +90,7 @@ impl Input {
             }
             Self::FingerPlace => "watch how far behind the fret the player presses",
             Self::Supports => {
-                "find how firmly the ends hold: take tuner readings of a trial saddle and diagnose them"
+                "find how firmly the ends hold: fit the fixities to tuner readings of a trial saddle whose crests are measured"
             }
             Self::Slip => "find whether the strings slip over nut and saddle, or clamp them behind",
             Self::Crest => "file the crests more closely to the line",

@@ -9,6 +9,7 @@ pub mod choices;
 pub mod edit;
 pub mod fields;
 pub mod help;
+pub mod hints;
 pub mod inputs;
 pub mod keep;
 pub mod painter;

@@ -6,6 +6,7 @@ use eframe::egui::Key;
 
 use crate::choices::study::Study;
 use crate::fields::draft::Drafts;
+use crate::hints::card::About;
 use crate::papers::preview::Preview;
 use crate::repair::state::Repair;
 use crate::results::camera::Camera;
@@ -230,6 +231,10 @@ pub struct View {
     pub unit: LengthUnit,
     /// Whether the inputs are shown.
     pub inputs: bool,
+    /// Whether the card about the field with the focus is shown below the inputs.
+    pub card: bool,
+    /// The field that it is about.
+    pub about: Option<About>,
     /// The chosen string, 0 first.
     pub string: usize,
     /// The groups that are folded away.
@@ -265,6 +270,8 @@ impl View {
             theme: ThemeChoice::default(),
             unit: LengthUnit::default(),
             inputs: true,
+            card: true,
+            about: None,
             string: 0,
             folded: BTreeSet::from([Group::About, Group::Pressing, Group::Nut, Group::Fit, Group::Sheet]),
             drafts: Drafts::default(),

@@ -7,7 +7,7 @@ mod cases;
 mod fitted;
 mod import;
 mod notices;
-mod remedies;
+pub(crate) mod remedies;
 mod report;
 mod suggest;
 mod supports;

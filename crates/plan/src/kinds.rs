@@ -92,12 +92,18 @@ impl Kind {
         notes.map(|notes: Vec<&str>| notes.join(" ")).unwrap_or_default()
     }
 
+    /// Its name as a title.
+    #[must_use]
+    pub fn title(&self) -> String {
+        capital(&self.name)
+    }
+
     /// A plan of this kind.
     #[must_use]
     pub fn plan(&self) -> Plan {
         let strings = self.strings();
         let mut plan = Plan::new(self.instrument(strings.len()), strings);
-        plan.title = capital(&self.name);
+        plan.title = self.title();
         let set = self.set().map_or("", |set| set.name.as_str());
         plan.notes = format!(
             "Started from the kind “{}” with the set “{set}”. {} Correct what you have measured.",

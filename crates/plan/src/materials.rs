@@ -7,6 +7,6 @@ mod estimates;
 mod make;
 mod table;
 
-pub use estimates::{Estimate, estimates};
+pub use estimates::{Estimate, estimate_notes, estimates};
 pub use make::StringMake;
 pub use table::{Construction, Material, Modulus, SetString, StringSet, StringTable, string_table};

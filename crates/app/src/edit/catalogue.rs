@@ -2,11 +2,12 @@
 
 use std::path::PathBuf;
 
-use crestline_plan::EXAMPLES;
+use crestline_plan::{EXAMPLES, kinds};
 use crestline_sheets::Format;
 
 use super::command::Command;
 use super::desk::Desk;
+use super::spread::Spread;
 use super::strings::MOST_STRINGS;
 use crate::view::{Group, Page, ThemeChoice, View};
 
@@ -26,12 +27,14 @@ pub fn offers(desk: &Desk, view: &View, recent: &[PathBuf]) -> Vec<Offer> {
     all.extend([Format::Pdf, Format::Svg, Format::Dxf, Format::Csv].map(Command::Export));
     all.push(Command::ImportReadings);
     all.extend(recent.iter().cloned().map(Command::OpenFile));
+    all.extend(kinds().iter().map(|kind| Command::NewFromKind(&kind.id)));
     all.extend(EXAMPLES.iter().map(|example| Command::NewFromExample(example.name)));
     all.extend(Page::ALL.map(Command::ShowPage));
     all.extend(changes(desk, view));
     all.extend((0..desk.plan.strings.len()).map(Command::ChooseString));
     all.extend(Group::ALL.map(Command::Fold));
     all.push(Command::ShowInputs(!view.inputs));
+    all.push(Command::ShowCard(!view.card));
     all.push(Command::ShowLengthsIn(view.unit.other()));
     all.extend(ThemeChoice::ALL.map(Command::Theme));
     all.extend([Command::LargerText, Command::SmallerText, Command::UsualText, Command::ResetPlots]);
@@ -53,7 +56,8 @@ fn changes(desk: &Desk, view: &View) -> Vec<Command> {
         (Command::MoveStringUp(string), string > 0),
         (Command::MoveStringDown(string), string + 1 < count),
     ];
-    possible.into_iter().filter(|(_, can)| *can).map(|(command, _)| command).collect()
+    let spread = Spread::ALL.map(|of| (Command::Spread(of), count > 2));
+    possible.into_iter().chain(spread).filter(|(_, can)| *can).map(|(command, _)| command).collect()
 }
 
 /// The name in the list, where no menu or heading says what the word is about.
@@ -93,6 +97,9 @@ mod tests {
             Command::TakeStyle(..) => Some("its button stands in the row of the table that it takes"),
             Command::FindCommand => Some("it is the list"),
             Command::NewFromExample(_)
+            | Command::NewFromKind(_)
+            | Command::Spread(_)
+            | Command::ShowCard(_)
             | Command::Open
             | Command::OpenFile(_)
             | Command::Save
@@ -123,6 +130,9 @@ mod tests {
     fn one_of_each() -> Vec<Command> {
         vec![
             Command::NewFromExample("mandolin"),
+            Command::NewFromKind("mandolin"),
+            Command::Spread(Spread::ActionTwelfth),
+            Command::ShowCard(false),
             Command::Open,
             Command::OpenFile(PathBuf::from("/a.json")),
             Command::Save,
@@ -201,7 +211,8 @@ mod tests {
         let heard = Command::with_keys();
         for command in offers(&desk, &view, &[]).into_iter().map(|offer| offer.command) {
             // One key goes both ways, and the window knows which of both is meant.
-            let is_switch = matches!(command, Command::ShowInputs(_) | Command::ShowLengthsIn(_));
+            let is_switch =
+                matches!(command, Command::ShowInputs(_) | Command::ShowLengthsIn(_) | Command::ShowCard(_));
             assert!(command.shortcut().is_none() || is_switch || heard.contains(&command), "{command:?}");
         }
         assert!(heard.contains(&Command::FindCommand));

@@ -2,10 +2,11 @@
 
 use std::path::PathBuf;
 
-use crestline_plan::{NutStyle, SaddleStyle};
+use crestline_plan::{Kind, NutStyle, SaddleStyle};
 use crestline_sheets::Format;
 use eframe::egui::{Key, KeyboardShortcut, Modifiers};
 
+use super::spread::Spread;
 use crate::repair::block::Filling;
 use crate::units::LengthUnit;
 use crate::view::{Group, Page, ThemeChoice};
@@ -63,6 +64,12 @@ pub enum Command {
     GoTo(String),
     /// Light, dark, or as the system has it.
     Theme(ThemeChoice),
+    /// Show the card about the field with the focus, or put it away.
+    ShowCard(bool),
+    /// Start from the kind of instrument of this key.
+    NewFromKind(&'static str),
+    /// Spread the outer strings' values over the strings between.
+    Spread(Spread),
     /// Show all lengths in this unit.
     ShowLengthsIn(LengthUnit),
     /// Larger text.
@@ -113,6 +120,13 @@ impl Command {
             Self::Fold(group) => group.name().into(),
             Self::GoTo(path) => format!("Go to {path}"),
             Self::Theme(choice) => choice.name().into(),
+            Self::ShowCard(true) => "Show help on fields".into(),
+            Self::ShowCard(false) => "Hide help on fields".into(),
+            Self::NewFromKind(id) => {
+                let name = Kind::of(id).map_or(*id, |kind| kind.name.as_str());
+                format!("New plan: {name}")
+            }
+            Self::Spread(of) => format!("Spread between the outer strings: {}", of.name()),
             Self::ShowLengthsIn(unit) => format!("Lengths in {}", unit.name().to_lowercase()),
             Self::LargerText => "Larger text".into(),
             Self::SmallerText => "Smaller text".into(),
@@ -143,6 +157,7 @@ impl Command {
             Self::FindCommand => (Modifiers::COMMAND, Key::K),
             Self::ShowPage(Page::Help) => (Modifiers::NONE, Key::F1),
             Self::ShowPage(page) => (Modifiers::COMMAND, page.digit()?),
+            Self::ShowCard(_) => (Modifiers::SHIFT, Key::F1),
             _ => return None,
         };
         Some(KeyboardShortcut::new(modifiers, key))

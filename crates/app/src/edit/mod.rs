@@ -4,4 +4,5 @@ pub mod catalogue;
 pub mod command;
 pub mod desk;
 pub mod history;
+pub mod spread;
 pub mod strings;

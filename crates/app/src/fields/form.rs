@@ -6,6 +6,7 @@ use eframe::egui::{Frame, Id, Response, Stroke, Ui};
 use super::draft::{Draft, Drafts};
 use crate::edit::command::Command;
 use crate::edit::history::Edit;
+use crate::hints::card::About;
 use crate::theme::{Palette, size};
 use crate::units::{LengthUnit, fault_words};
 
@@ -23,6 +24,8 @@ pub struct Form<'a> {
     pub palette: &'static Palette,
     /// The change made in this frame.
     pub edit: Option<Edit>,
+    /// The field that has the focus.
+    pub about: Option<About>,
     /// Whether a field has been left in this frame.
     pub left: bool,
     /// What buttons ask for.
@@ -38,7 +41,17 @@ impl<'a> Form<'a> {
         palette: &'static Palette,
         unit: LengthUnit,
     ) -> Self {
-        Self { faults, drafts, going_to, unit, palette, edit: None, left: false, commands: Vec::new() }
+        Self {
+            faults,
+            drafts,
+            going_to,
+            unit,
+            palette,
+            edit: None,
+            about: None,
+            left: false,
+            commands: Vec::new(),
+        }
     }
 
     /// Notes that a panel has changed the plan at once.

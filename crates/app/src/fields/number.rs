@@ -5,8 +5,10 @@ use eframe::egui::{Align, Align2, Id, Key, Modifiers, Response, TextEdit, Ui, Ve
 use super::draft::Draft;
 use super::form::Form;
 use super::parse;
+use crate::hints::card::{self, About};
+use crate::hints::topic;
 use crate::theme::size;
-use crate::units::{self, Fineness};
+use crate::units::{self, Fineness, LengthUnit};
 
 /// The keys held down with an arrow key, and the steps that it then makes.
 const STEPS: [(Modifiers, f64); 3] =
@@ -178,7 +180,7 @@ fn typed_in_steps<T>(
     let stepped = step(ui, id, spec.step, &mut text, stepper);
     let error = form.error(&spec.path);
     let response = text_box(ui, form, spec, id, &mut text, error.is_some());
-    describe(&response, spec, error.as_deref());
+    describe(&response, spec, error.as_deref(), form.unit);
     form.arrive(ui, &spec.path, &response);
 
     if response.changed() || stepped {
@@ -191,7 +193,7 @@ fn typed_in_steps<T>(
             form.drafts.forget(&spec.path);
         }
     }
-    tip(response, spec, error)
+    tip(form, response, spec, error)
 }
 
 /// Takes what `text` says; where it cannot be read, takes what stood there before, so that no half-typed
@@ -216,14 +218,18 @@ fn read_or_go_back<T>(
     }
 }
 
-/// What is wrong and what the field is for, where the pointer rests.
-fn tip(response: Response, spec: &Spec, error: Option<String>) -> Response {
-    match (error, spec.help) {
-        (None, "") => response,
-        (None, help) => response.on_hover_text(help),
-        (Some(error), "") => response.on_hover_text(error),
-        (Some(error), help) => response.on_hover_text(format!("{error}\n\n{help}")),
+/// What is wrong and what the field is for, where the pointer rests; and for the card where the focus is.
+pub fn tip(form: &mut Form, response: Response, spec: &Spec, error: Option<String>) -> Response {
+    let about = || About { path: spec.path.clone(), name: spec.name.clone(), what: spec.help.to_owned() };
+    if response.has_focus() {
+        form.about = Some(about());
     }
+    let says_something = error.is_some() || !spec.help.is_empty() || topic(&spec.path).is_some();
+    if !says_something {
+        return response;
+    }
+    let (palette, unit) = (form.palette, form.unit);
+    response.on_hover_ui(|ui| card::tip(ui, palette, &about(), error.as_deref(), unit))
 }
 
 /// Steps the number in `text` by the arrow keys; true if it has been stepped.
@@ -264,7 +270,8 @@ fn text_box(ui: &mut Ui, form: &Form, spec: &Spec, id: Id, text: &mut String, wr
 }
 
 /// Names the field for screen readers and says there what is wrong.
-pub fn describe(response: &Response, spec: &Spec, error: Option<&str>) {
+pub fn describe(response: &Response, spec: &Spec, error: Option<&str>, unit: LengthUnit) {
+    let help = card::in_words(&spec.path, spec.help, unit);
     response.ctx.accesskit_node_builder(response.id, |node| {
         node.set_label(spec.name.clone());
         match error {
@@ -272,7 +279,7 @@ pub fn describe(response: &Response, spec: &Spec, error: Option<&str>) {
                 node.set_invalid(accesskit::Invalid::True);
                 node.set_description(error.to_owned());
             }
-            None if !spec.help.is_empty() => node.set_description(spec.help.to_owned()),
+            None if !help.is_empty() => node.set_description(help),
             None => {}
         }
     });

@@ -3,7 +3,7 @@
 use eframe::egui::{Id, Response, TextEdit, Ui, Vec2};
 
 use super::form::Form;
-use super::number::{Spec, describe};
+use super::number::{Spec, describe, tip};
 use crate::edit::history::Edit;
 use crate::theme::size;
 
@@ -34,11 +34,11 @@ pub fn lines(ui: &mut Ui, form: &mut Form, spec: &Spec, rows: usize, value: &mut
 fn finish(ui: &mut Ui, form: &mut Form, spec: &Spec, id: Id, edit: TextEdit) -> Response {
     let response = ui.add(edit);
     let error = form.error(&spec.path);
-    describe(&response, spec, error.as_deref());
+    describe(&response, spec, error.as_deref(), form.unit);
     form.arrive(ui, &spec.path, &response);
     if response.changed() {
         form.edit = Some(Edit { name: spec.name.clone(), gesture: Some(id) });
     }
     form.left |= response.lost_focus();
-    response
+    tip(form, response, spec, error)
 }

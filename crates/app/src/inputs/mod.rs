@@ -5,6 +5,7 @@ mod fit;
 mod group;
 mod instrument;
 mod lists;
+mod make;
 mod nut;
 mod pressing;
 mod saddle;
@@ -39,8 +40,12 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, around: &Surroundings
         group::show(ui, form, folded, Group::About, |ui, form| about::show(ui, form, plan));
         group::show(ui, form, folded, Group::Instrument, |ui, form| instrument::show(ui, form, plan));
         group::show(ui, form, folded, Group::Strings, |ui, form| {
+            let before = plan.strings.clone();
             string_table::show(ui, form, plan, around.string);
             string_detail::show(ui, form, plan, around);
+            if form.edit.is_some() {
+                make::follow(&before, plan);
+            }
         });
         group::show(ui, form, folded, Group::Saddle, |ui, form| saddle::show(ui, form, plan));
         group::show(ui, form, folded, Group::Nut, |ui, form| nut::show(ui, form, plan));

@@ -61,11 +61,11 @@ pub fn travel(ui: &mut Ui, form: &mut Form, path: &str, name: &str, travel_mm: &
     let [least, greatest] = travel_mm;
     row(ui, &format!("{name} from"), |ui| {
         let help = "The least setback that the bridge or fingerboard allows.";
-        let spec = Spec::new(format!("{path}[0]"), format!("{name}, least"), 0.5, help).width(56.0);
+        let spec = Spec::new(format!("{path}[0]"), format!("{name}, least"), 0.5, help).width(64.0);
         number::length(ui, form, &spec, least);
         ui.label("to");
         let help = "The greatest setback that the bridge or fingerboard allows.";
-        let spec = Spec::new(format!("{path}[1]"), format!("{name}, greatest"), 0.5, help).width(56.0);
+        let spec = Spec::new(format!("{path}[1]"), format!("{name}, greatest"), 0.5, help).width(64.0);
         number::length(ui, form, &spec, greatest);
         unit(ui, form, form.unit.sign());
     });

@@ -4,7 +4,7 @@ use crestline_plan::{CoreShape, Plan, PlanString, StringReport};
 use eframe::egui::{RichText, Ui};
 
 use super::instrument::length;
-use super::{Surroundings, wrap};
+use super::{Surroundings, make, wrap};
 use crate::fields::choice::{self, Choice};
 use crate::fields::form::Form;
 use crate::fields::number::{self, Spec};
@@ -27,6 +27,8 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, around: &Surroundings
     let at = At { index };
     faults_of_whole(ui, form, &format!("strings[{index}]"));
     name_and_pitch(ui, form, &at, string);
+    make::choice(ui, form, plan, index);
+    let Some(string) = plan.strings.get_mut(index) else { return };
     core(ui, form, &at, string);
     wrap::show(ui, form, &at, string);
     heights(ui, form, &at, string, zero_fret);
@@ -34,6 +36,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, around: &Surroundings
     if let Some(report) = around.report {
         figures(ui, form, report);
     }
+    make::estimated(ui, form, plan, index);
 }
 
 /// Makes fields of one string.

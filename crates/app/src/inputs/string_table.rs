@@ -4,6 +4,7 @@ use crestline_plan::{Plan, PlanString};
 use eframe::egui::{Align2, Button, FontId, RichText, Sense, Stroke, Ui, Vec2, WidgetInfo, accesskit};
 
 use crate::edit::command::Command;
+use crate::edit::spread::Spread;
 use crate::edit::strings::MOST_STRINGS;
 use crate::fields::form::Form;
 use crate::fields::number::{self, Spec};
@@ -27,7 +28,10 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, chosen: usize) {
         let line = Line { index, is_chosen: chosen == index, zero_fret, width };
         ui.horizontal(|ui| line.show(ui, form, string));
     }
-    buttons(ui, form, chosen, plan.strings.len());
+    ui.horizontal_wrapped(|ui| {
+        buttons(ui, form, chosen, plan.strings.len());
+        spread(ui, form);
+    });
     ui.spacing_mut().item_spacing.x = size::GAP;
     other_faults(ui, form, chosen);
     row(ui, "Reference pitch, A4", |ui| {
@@ -124,27 +128,40 @@ fn blank(ui: &mut Ui, form: &Form, width: f32, text: &str) {
 }
 
 fn buttons(ui: &mut Ui, form: &mut Form, chosen: usize, count: usize) {
-    ui.horizontal_wrapped(|ui| {
-        let mut button = |text: &str, name: &str, enabled: bool, command: Command| {
-            let response =
-                ui.add_enabled(enabled, Button::new(RichText::new(text).small())).on_hover_text(name);
-            response.ctx.accesskit_node_builder(response.id, |node| node.set_label(name));
+    let mut button = |text: &str, name: &str, enabled: bool, command: Command| {
+        let response = ui.add_enabled(enabled, Button::new(RichText::new(text).small())).on_hover_text(name);
+        response.ctx.accesskit_node_builder(response.id, |node| node.set_label(name));
+        if response.clicked() {
+            form.commands.push(command);
+        }
+    };
+    let string = format!("string {}", chosen + 1);
+    let copy = format!("Add a copy of {string} behind it");
+    button("Add copy", &copy, count < MOST_STRINGS, Command::DuplicateString(chosen));
+    button("Remove", &format!("Remove {string}"), count > 1, Command::RemoveString(chosen));
+    button("Up", &format!("Move {string} up"), chosen > 0, Command::MoveStringUp(chosen));
+    button("Down", &format!("Move {string} down"), chosen + 1 < count, Command::MoveStringDown(chosen));
+}
+
+/// A menu of what can be spread between the outer strings.
+fn spread(ui: &mut Ui, form: &mut Form) {
+    let help = "The outer strings keep their values, and those between get equal steps";
+    let menu = ui.menu_button(RichText::new("Spread ▾").small(), |ui| {
+        ui.label(RichText::new(format!("{help}.")).small().color(form.palette.quiet));
+        for of in Spread::ALL {
+            let command = Command::Spread(of);
+            let response = ui.button(of.name());
+            response.ctx.accesskit_node_builder(response.id, |node| node.set_label(command.name()));
             if response.clicked() {
                 form.commands.push(command);
+                ui.close();
             }
-        };
-        let string = format!("string {}", chosen + 1);
-        let copy = format!("Add a copy of {string} behind it");
-        button("Add copy", &copy, count < MOST_STRINGS, Command::DuplicateString(chosen));
-        button("Remove", &format!("Remove {string}"), count > 1, Command::RemoveString(chosen));
-        button("Move up", &format!("Move {string} up"), chosen > 0, Command::MoveStringUp(chosen));
-        button(
-            "Move down",
-            &format!("Move {string} down"),
-            chosen + 1 < count,
-            Command::MoveStringDown(chosen),
-        );
+        }
     });
+    let response = menu.response.on_hover_text(help);
+    response
+        .ctx
+        .accesskit_node_builder(response.id, |node| node.set_label("Spread between the outer strings"));
 }
 
 /// Faults of the strings that the editor below does not show.

@@ -18,7 +18,7 @@ pub struct Layout {
     pub page: Option<Page>,
     /// Light or dark.
     pub theme: Option<ThemeChoice>,
-    /// The unit of all lengths.
+    /// The unit of lengths.
     pub unit: Option<LengthUnit>,
     /// Scale of all text, 0.8 to 2.
     pub zoom: Option<f32>,
@@ -45,7 +45,7 @@ impl Layout {
         Self {
             page: word("page").and_then(Options::page_named),
             theme: word("theme").and_then(Options::theme_named),
-            unit: word("unit").and_then(|word| LengthUnit::ALL.into_iter().find(|unit| unit.sign() == word)),
+            unit: word("unit").and_then(LengthUnit::of_word),
             zoom: number(whole.get("zoom")).filter(|zoom| (0.8..=2.0).contains(zoom)),
             inputs: whole.get("inputs").and_then(Value::as_bool),
             inputs_width: number(whole.get("inputs_width")).filter(|width| (100.0..=2000.0).contains(width)),
@@ -58,7 +58,7 @@ impl Layout {
         let whole = json!({
             "page": self.page.map(Options::page_word),
             "theme": self.theme.map(Options::theme_word),
-            "unit": self.unit.map(LengthUnit::sign),
+            "unit": self.unit.map(LengthUnit::word),
             "zoom": self.zoom,
             "inputs": self.inputs,
             "inputs_width": self.inputs_width,

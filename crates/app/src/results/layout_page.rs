@@ -1,5 +1,6 @@
 //! The page `Saddle`: plan view, errors and their parts, schedule and notices.
 
+use crestline_plan::estimate_notes;
 use eframe::egui::{Align, Button, Frame, Layout, Margin, Panel, RichText, ScrollArea, Stroke, Ui, Vec2};
 
 use super::{error_plot, layout_plot, notices, nut_plot, schedule, split_plot, table};
@@ -101,8 +102,8 @@ fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &m
             }
         });
     });
-    let sign = LengthUnit::of(ui.ctx()).sign();
-    let words = format!("╌ nominal   ○ ideal   ● crest   setbacks in {sign}");
+    let setbacks = LengthUnit::of(ui.ctx()).named("setbacks");
+    let words = format!("╌ nominal   ○ ideal   ● crest   {setbacks}");
     ui.label(RichText::new(words).small().color(palette.quiet));
     if layout_plot::nut_is_moved(&outcome.solution.layout) {
         let width = 0.4 * ui.available_width();
@@ -140,6 +141,8 @@ fn bottom(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &View
         }
     });
     schedule::foot(ui, palette, outcome);
-    commands.extend(notices::show(ui, palette, &outcome.solution.report.notices));
+    let mut said = outcome.solution.report.notices.clone();
+    said.extend(estimate_notes(&outcome.plan));
+    commands.extend(notices::show(ui, palette, &said));
     commands
 }

@@ -2,7 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-use crestline_plan::EXAMPLES;
+use crestline_plan::{EXAMPLES, kinds};
 use crestline_sheets::Format;
 use eframe::egui::{
     Button, CornerRadius, Frame, Margin, MenuBar, Panel, RichText, Stroke, TextStyle, Ui, Vec2, accesskit,
@@ -42,6 +42,14 @@ pub fn show(ui: &mut Ui, palette: &Palette, desk: &Desk, view: &View, recent: &[
 
 fn file_menu(ui: &mut Ui, recent: &[PathBuf], commands: &mut Vec<Command>) {
     ui.menu_button("File", |ui| {
+        ui.menu_button("New plan", |ui| {
+            for kind in kinds() {
+                let words = format!("{}: {}", kind.title(), kind.tuning());
+                if ui.button(words).clicked() {
+                    commands.push(Command::NewFromKind(&kind.id));
+                }
+            }
+        });
         ui.menu_button("New from example", |ui| {
             for example in EXAMPLES {
                 let words = format!("{}: {}", example.name.replace('_', " "), example.summary);
@@ -96,6 +104,7 @@ fn view_menu(ui: &mut Ui, view: &View, commands: &mut Vec<Command>) {
                 commands.push(Command::Theme(choice));
             }
         }
+        item(ui, commands, Command::ShowCard(!view.card), true);
         ui.separator();
         for unit in LengthUnit::ALL {
             let command = Command::ShowLengthsIn(unit);
@@ -203,7 +212,9 @@ fn unit(ui: &mut Ui, palette: &Palette, view: &View, commands: &mut Vec<Command>
         view.unit.name().to_lowercase(),
         command.name()
     );
-    let response = ui.add(Button::new(text).min_size(Vec2::new(28.0, 24.0))).on_hover_text(tip);
+    let edge = Stroke::new(size::EDGE, palette.edge);
+    let button = Button::new(text).fill(palette.sheet).stroke(edge).min_size(Vec2::new(30.0, 22.0));
+    let response = ui.add(button).on_hover_text(tip);
     response.ctx.accesskit_node_builder(response.id, |node| {
         node.set_label(format!("Unit of lengths: {}", view.unit.name().to_lowercase()));
     });

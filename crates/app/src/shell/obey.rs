@@ -2,7 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-use crestline_plan::{example, read_draft};
+use crestline_plan::{Kind, example, read_draft};
 use crestline_sheets::{Format, export};
 use eframe::egui::{Context, ViewportCommand};
 
@@ -33,12 +33,17 @@ const ZOOM_STEP: f32 = 0.1;
 /// Does what a command says.
 pub fn obey(window: &mut Window, ctx: &Context, command: Command) {
     match command {
-        Command::NewFromExample(_) | Command::Open | Command::OpenFile(_) | Command::Quit
+        Command::NewFromExample(_)
+        | Command::NewFromKind(_)
+        | Command::Open
+        | Command::OpenFile(_)
+        | Command::Quit
             if window.desk.is_changed() =>
         {
             window.question = Some(Question::Unsaved(command));
         }
         Command::NewFromExample(name) => new_from_example(window, name),
+        Command::NewFromKind(id) => new_from_kind(window, id),
         Command::Open => pick(window, ctx, Purpose::Open),
         Command::OpenFile(path) => open(window, &path),
         Command::Save => save(window, ctx),
@@ -96,6 +101,11 @@ fn arrange(window: &mut Window, command: Command) {
         Command::ChooseString(index) => view.string = index,
         Command::ShowPage(page) => view.page = page,
         Command::ShowInputs(shown) => view.inputs = shown,
+        Command::ShowCard(shown) => view.card = shown,
+        Command::Spread(of) => {
+            let string = view.string;
+            change_strings(window, string, &format!("Spread {}", of.name()), |plan| of.spread(plan));
+        }
         Command::ShowLengthsIn(unit) => {
             view.unit = unit;
             view.drafts.clear();
@@ -174,6 +184,15 @@ fn new_from_example(window: &mut Window, name: &str) {
             window.view.complain(faults.iter().map(ToString::to_string).collect::<Vec<_>>().join("; "))
         }
     }
+}
+
+fn new_from_kind(window: &mut Window, id: &str) {
+    let Some(kind) = Kind::of(id) else { return };
+    window.desk.replace(kind.plan(), None);
+    fresh(window);
+    window
+        .view
+        .say(format!("New plan: {}. Its figures are common ones; enter what you have measured.", kind.name));
 }
 
 fn open(window: &mut Window, path: &Path) {

@@ -1,7 +1,8 @@
 //! How the window opens: from the environment, so that pictures of it can be taken by a script.
 //!
 //! `CRESTLINE_PAGE` is a page's name in lower case with hyphens (`saddle`, `fretted-notes`), `CRESTLINE_THEME`
-//! is `light`, `dark` or `system`, and `CRESTLINE_SIZE` is a size in points such as `1280x800`.
+//! is `light`, `dark` or `system`, `CRESTLINE_UNITS` is `mm` or `inch`, and `CRESTLINE_SIZE` is a size in points such as
+//! `1280x800`.
 //! `CRESTLINE_STATE` is the folder that remembers what outlives the window, its last arrangement among it, which
 //! stands behind the other variables.
 //! `CRESTLINE_PAINTER` is `processor` to do without OpenGL.
@@ -26,6 +27,8 @@ pub struct Options {
     pub page: Page,
     /// Light or dark.
     pub theme: ThemeChoice,
+    /// The unit of lengths.
+    pub unit: LengthUnit,
     /// Its size in points.
     pub size: [f32; 2],
     /// The unit of all lengths.
@@ -49,12 +52,14 @@ impl Options {
     pub fn read(variable: impl Fn(&str) -> Option<String>) -> Self {
         let page = variable("CRESTLINE_PAGE").and_then(|word| Self::page_named(&word));
         let theme = variable("CRESTLINE_THEME").and_then(|word| Self::theme_named(&word));
+        let unit = variable("CRESTLINE_UNITS").and_then(|word| LengthUnit::of_word(&word));
         let size = variable("CRESTLINE_SIZE").and_then(|word| size(&word));
         let state = state_folder(&variable);
         let last = state.as_deref().map(Layout::read).unwrap_or_default();
         Self {
             page: page.or(last.page).unwrap_or(Page::Saddle),
             theme: theme.or(last.theme).unwrap_or_default(),
+            unit: unit.or(last.unit).unwrap_or_default(),
             size: size.or(last.size).unwrap_or(USUAL_SIZE),
             unit: last.unit.unwrap_or_default(),
             zoom: last.zoom.unwrap_or(1.0),
@@ -141,12 +146,14 @@ mod tests {
         let given = Options::read(|name| match name {
             "CRESTLINE_PAGE" => Some("fretted-notes".into()),
             "CRESTLINE_THEME" => Some("dark".into()),
+            "CRESTLINE_UNITS" => Some("inch".into()),
             "CRESTLINE_SIZE" => Some("1920x1080".into()),
             _ => None,
         });
         let usual = Options {
             page: Page::Saddle,
             theme: ThemeChoice::System,
+            unit: LengthUnit::Millimetres,
             size: USUAL_SIZE,
             unit: LengthUnit::Millimetres,
             zoom: 1.0,
@@ -159,6 +166,7 @@ mod tests {
         let wanted = Options {
             page: Page::FrettedNotes,
             theme: ThemeChoice::Dark,
+            unit: LengthUnit::Inches,
             size: [1920.0, 1080.0],
             ..usual.clone()
         };

@@ -22,6 +22,7 @@ use crate::edit::desk::Desk;
 use crate::edit::history::Edit;
 use crate::fields::form::Form;
 use crate::help;
+use crate::hints::card;
 use crate::inputs::{self, Surroundings};
 use crate::keep::autosave::Autosave;
 use crate::keep::found::Found;
@@ -187,7 +188,9 @@ impl Window {
         };
         let inputs = Command::ShowInputs(!self.view.inputs);
         let unit = Command::ShowLengthsIn(self.view.unit.other());
-        Command::with_keys().into_iter().chain([inputs, unit]).filter(called).collect()
+        // Its key is that of the page on the model with one modifier more, so it is looked for first.
+        let card = Command::ShowCard(!self.view.card);
+        [card].into_iter().chain(Command::with_keys()).chain([inputs, unit]).filter(called).collect()
     }
 
     fn inputs(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
@@ -197,7 +200,12 @@ impl Window {
             Frame::new().fill(palette.ground).inner_margin(Margin { left: 8, right: 4, top: 8, bottom: 8 });
         let panel =
             Panel::left("inputs").resizable(true).default_size(width).size_range(least..=most).frame(frame);
-        let shown = panel.show(ui, |ui| self.form(ui, palette));
+        let shown = panel.show(ui, |ui| {
+            if self.view.card {
+                card::foot(ui, palette, self.view.about.as_ref(), self.view.unit);
+            }
+            self.form(ui, palette)
+        });
         self.inputs_width = Some(shown.response.rect.width());
         shown.inner
     }
@@ -210,7 +218,11 @@ impl Window {
         let mut form =
             Form::new(faults, &mut self.view.drafts, &mut self.view.going_to, palette, self.view.unit);
         inputs::show(ui, &mut form, plan, &around);
-        let Form { edit, left, commands, .. } = form;
+        let Form { edit, left, commands, about, .. } = form;
+        if about.is_some() && about != self.view.about {
+            self.view.about = about;
+            ui.ctx().request_repaint();
+        }
         // A path that no field has shown by now has none.
         self.view.going_to = None;
         self.settle(ui.ctx(), edit, left);

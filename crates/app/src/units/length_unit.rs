@@ -63,6 +63,21 @@ impl LengthUnit {
         }
     }
 
+    /// The word in settings that outlive the window.
+    #[must_use]
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Millimetres => "mm",
+            Self::Inches => "inch",
+        }
+    }
+
+    /// The unit of a word.
+    #[must_use]
+    pub fn of_word(word: &str) -> Option<Self> {
+        Self::ALL.into_iter().find(|unit| unit.word() == word)
+    }
+
     /// The other one.
     #[must_use]
     pub const fn other(self) -> Self {

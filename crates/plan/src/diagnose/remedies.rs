@@ -12,7 +12,7 @@ use crate::{Checked, Fault, ReadingKind, Remedy, RemedyKind};
 
 mod jobs;
 mod saddle;
-mod words;
+pub(crate) mod words;
 
 /// Errors within this are not worth a job, cents: less than most ears tell in a single note (common practice).
 const GOOD_CENTS: f64 = 2.0;

@@ -2,12 +2,15 @@
 
 use super::make::{StringMake, modulus_at_pitch_gpa};
 use super::table::string_table;
+use crate::diagnose::remedies::words::strings_words;
 use crate::limits::number_words;
-use crate::{Plan, PlanString, Scale, note_frequency_hz};
+use crate::{Notice, Plan, PlanString, Scale, Severity, note_frequency_hz};
 
 /// A figure that is an estimate.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Estimate {
+    /// The string, 1 first.
+    pub string: u32,
     /// Path of the figure, such as `strings[2].core.diameter_mm`.
     pub path: String,
     /// What it is estimated from and what would settle it, in words.
@@ -21,13 +24,31 @@ pub fn estimates(plan: &Plan) -> Vec<Estimate> {
     plan.strings.iter().enumerate().flat_map(|(index, string)| of_string(plan, index, string)).collect()
 }
 
+/// The estimates as notes, those of one kind together: `strings 3, 4 and 5: the core is …`.
+#[must_use]
+pub fn estimate_notes(plan: &Plan) -> Vec<Notice> {
+    let mut kinds: Vec<(String, String, Vec<u32>)> = Vec::new();
+    for estimate in estimates(plan) {
+        match kinds.iter_mut().find(|(_, text, _)| *text == estimate.text) {
+            Some((_, _, strings)) => strings.push(estimate.string),
+            None => kinds.push((estimate.path, estimate.text, vec![estimate.string])),
+        }
+    }
+    let note = |(path, text, strings): (String, String, Vec<u32>)| {
+        let text = format!("{}: {text}", strings_words(&strings));
+        Notice { severity: Severity::Note, path, text }
+    };
+    kinds.into_iter().map(note).collect()
+}
+
+fn number(index: usize) -> u32 {
+    u32::try_from(index + 1).unwrap_or(u32::MAX)
+}
+
 fn of_string(plan: &Plan, index: usize, string: &PlanString) -> Vec<Estimate> {
     let mut found = Vec::new();
     let mut add = |field: &str, text: String| {
-        found.push(Estimate {
-            path: format!("strings[{index}].{field}"),
-            text: format!("string {}: {text}", index + 1),
-        });
+        found.push(Estimate { string: number(index), path: format!("strings[{index}].{field}"), text });
     };
     let follows = StringMake::of(string).is_some_and(|make| make.core_still_follows(string));
     let settled =
@@ -102,6 +123,9 @@ mod tests {
         let paths: Vec<String> = estimates(&plan).into_iter().map(|estimate| estimate.path).collect();
         let expected = [2, 3, 4, 5].map(|index| format!("strings[{index}].core.diameter_mm"));
         assert_eq!(paths, expected);
+        let notes = estimate_notes(&plan);
+        assert_eq!(notes.len(), 1);
+        assert!(notes[0].text.starts_with("strings 3, 4, 5 and 6: the core"), "{}", notes[0].text);
         plan.strings[2].core.diameter_mm += 0.01;
         assert_eq!(estimates(&plan).len(), 3);
     }

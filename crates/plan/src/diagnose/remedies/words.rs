@@ -1,7 +1,7 @@
 //! Amounts in words.
 
 /// `string 3`, `strings 1, 2 and 4`.
-pub(super) fn strings_words(strings: &[u32]) -> String {
+pub(crate) fn strings_words(strings: &[u32]) -> String {
     let numbers: Vec<String> = strings.iter().map(u32::to_string).collect();
     match numbers.as_slice() {
         [] => "no string".to_owned(),

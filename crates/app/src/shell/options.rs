@@ -31,8 +31,6 @@ pub struct Options {
     pub unit: LengthUnit,
     /// Its size in points.
     pub size: [f32; 2],
-    /// The unit of all lengths.
-    pub unit: LengthUnit,
     /// Scale of all text.
     pub zoom: f32,
     /// Whether the inputs are shown.
@@ -61,7 +59,6 @@ impl Options {
             theme: theme.or(last.theme).unwrap_or_default(),
             unit: unit.or(last.unit).unwrap_or_default(),
             size: size.or(last.size).unwrap_or(USUAL_SIZE),
-            unit: last.unit.unwrap_or_default(),
             zoom: last.zoom.unwrap_or(1.0),
             inputs: last.inputs.unwrap_or(true),
             inputs_width: last.inputs_width,
@@ -155,7 +152,6 @@ mod tests {
             theme: ThemeChoice::System,
             unit: LengthUnit::Millimetres,
             size: USUAL_SIZE,
-            unit: LengthUnit::Millimetres,
             zoom: 1.0,
             inputs: true,
             inputs_width: None,

@@ -126,9 +126,13 @@ fn strings_are_added_moved_and_removed_by_their_buttons() {
     opened.run();
     assert_eq!(plan(&opened).strings.len(), 7);
     assert_eq!(opened.state().view.string, 1, "the copy is chosen");
+    opened.get_by_label("Move string 2 down").scroll_to_me();
+    opened.run();
     opened.get_by_label("Move string 2 down").click();
     opened.run();
     assert_eq!(plan(&opened).strings[1].pitch, Pitch::Note("B3".into()));
+    opened.get_by_label("Remove string 3").scroll_to_me();
+    opened.run();
     opened.get_by_label("Remove string 3").click();
     opened.run();
     assert_eq!(pitches(&opened), before);

@@ -88,15 +88,15 @@ fn scale(pen: &Pen) {
 
 fn relief(pen: &Pen) {
     let place = |i: usize| 12.0 + 17.0 * i as f32;
-    let dip = |x: f32| 16.0 * (1.0 - ((x - 80.0) / 68.0).powi(2));
+    let dip = |x: f32| 20.0 * (1.0 - ((x - 80.0) / 68.0).powi(2));
     let points: Vec<[f32; 2]> = (0..=16).map(|i| 12.0 + 8.5 * i as f32).map(|x| [x, 52.0 + dip(x)]).collect();
     pen.curve(&points, 2.0);
     for i in 0..9 {
         pen.disc([place(i), 49.0 + dip(place(i))], 3.0, pen.palette.edge);
     }
     pen.body(&[[4.0, 34.0], [156.0, 34.0], [156.0, 46.0], [4.0, 46.0]], pen.palette.field);
-    pen.word([80.0, 40.0], "straightedge");
-    pen.measure([80.0, 46.0], [80.0, 62.0]);
+    pen.word([38.0, 40.0], "straightedge");
+    pen.measure([80.0, 46.0], [80.0, 66.0]);
 }
 
 fn fret_height(pen: &Pen) {

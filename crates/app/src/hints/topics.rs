@@ -71,7 +71,7 @@ const TOPICS: &[Topic] = &[
     topic_of("scale_mm.bass", SCALE_HOW, usual(330.0, 890.0, MM), limits::SCALE_MM).sketched(Sketch::Scale),
     topic_of("scale_mm.square_fret", "Look for the fret that lies square to the neck's centre line.", usual(5.0, 9.0, ""), limits::SQUARE_FRET),
     topic_of("instrument.frets", "Count them, without a zero fret.", usual(12.0, 24.0, ""), limits::FRETS),
-    topic_of("instrument.relief_mm", "Lay a straightedge on the first and the last fret, strings at pitch, and find the widest gap below it with feeler gauges.", usual(0.0, 0.3, MM), limits::RELIEF_MM).sketched(Sketch::Relief),
+    topic_of("instrument.relief_mm", "Strings at pitch: lay a straightedge on the first and the last fret and find the widest gap with feeler gauges.", usual(0.0, 0.3, MM), limits::RELIEF_MM).sketched(Sketch::Relief),
     topic_of("instrument.fret_height_mm", "Measure from the fingerboard to the crown with a depth gauge or a caliper's tail.", usual(0.7, 1.5, MM), limits::FRET_HEIGHT_MM).sketched(Sketch::FretHeight),
     topic_of("instrument.fret_positions_mm", "Measure every crown from the nut line with one long rule, never from fret to fret.", None, limits::FRET_POSITION_MM),
     topic_of("spread_mm.nut", SPREAD_HOW, usual(24.0, 45.0, MM), limits::SPREAD_MM).sketched(Sketch::SpreadNut),

@@ -76,6 +76,9 @@ fn mirrored(plan: &Plan) -> Plan {
     if let Some(targets) = &mut mirror.targets {
         targets.open_cents.reverse();
     }
+    for own in mirror.tolerances.iter_mut().flat_map(|tolerances| &mut tolerances.strings) {
+        own.string = strings as u32 + 1 - own.string;
+    }
     mirror.saddle.split_after = plan.saddle.split_after.map(|first| strings as u32 - first);
     (mirror.as_built, mirror.readings) = (None, vec![]);
     mirror

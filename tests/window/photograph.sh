@@ -28,7 +28,7 @@ photograph() {
     stop_window
 }
 
-for page in ${CRESTLINE_PAGES:-saddle fretted-notes compare sheets diagnosis help}; do
+for page in ${CRESTLINE_PAGES:-saddle fretted-notes compare how-sure sheets diagnosis help}; do
     for size in ${CRESTLINE_SIZES:-1280x800 1920x1080}; do
         for theme in ${CRESTLINE_THEMES:-light dark}; do
             photograph "$page" "$theme" "$size"

@@ -5,6 +5,7 @@
 //! [`edit::history::Edit`]s, or ask for [`edit::command::Command`]s, which [`shell::obey`] carries out in one place.
 //! Nothing is computed here: every figure comes from `crestline_plan`.
 
+pub mod bands;
 pub mod choices;
 pub mod edit;
 pub mod fields;

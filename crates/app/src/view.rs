@@ -4,6 +4,7 @@ use std::collections::BTreeSet;
 
 use eframe::egui::Key;
 
+use crate::bands::state::Trust;
 use crate::choices::study::Study;
 use crate::fields::draft::Drafts;
 use crate::hints::card::About;
@@ -22,6 +23,8 @@ pub enum Page {
     FrettedNotes,
     /// Every way to make saddle and nut, and figures for setting out.
     Compare,
+    /// How far the setbacks can be trusted, and what to measure next.
+    HowSure,
     /// The drawing as it prints, and its files.
     Sheets,
     /// Tuner readings, and what they say of the instrument.
@@ -32,12 +35,19 @@ pub enum Page {
 
 impl Page {
     /// All pages in the order of their tabs.
-    pub const ALL: [Self; 6] =
-        [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets, Self::Diagnosis, Self::Help];
+    pub const ALL: [Self; 7] = [
+        Self::Saddle,
+        Self::FrettedNotes,
+        Self::Compare,
+        Self::HowSure,
+        Self::Sheets,
+        Self::Diagnosis,
+        Self::Help,
+    ];
 
     /// The pages that have a tab; Help stands in a menu.
-    pub const TABS: [Self; 5] =
-        [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::Sheets, Self::Diagnosis];
+    pub const TABS: [Self; 6] =
+        [Self::Saddle, Self::FrettedNotes, Self::Compare, Self::HowSure, Self::Sheets, Self::Diagnosis];
 
     /// The word on its tab.
     #[must_use]
@@ -46,6 +56,7 @@ impl Page {
             Self::Saddle => "Saddle",
             Self::FrettedNotes => "Fretted notes",
             Self::Compare => "Compare",
+            Self::HowSure => "How sure",
             Self::Sheets => "Sheets",
             Self::Diagnosis => "Diagnosis",
             Self::Help => "Help",
@@ -59,6 +70,7 @@ impl Page {
             Self::Saddle => "Where each string's crest must stand so that the fretted notes are in tune.",
             Self::FrettedNotes => "How far each fretted note is off, on every string and at every fret.",
             Self::Compare => "What each way of making saddle and nut can reach, and figures for setting out.",
+            Self::HowSure => "How far the setbacks can be trusted, and what to measure to trust them more.",
             Self::Sheets => "The drawing as it prints, at full size.",
             Self::Diagnosis => "What tuner readings say about an instrument that exists.",
             Self::Help => "What the program computes, how far it can be trusted, and where it comes from.",
@@ -68,7 +80,8 @@ impl Page {
     /// The digit of its key, by its place among the tabs.
     #[must_use]
     pub fn digit(self) -> Option<Key> {
-        const DIGITS: [Key; 6] = [Key::Num1, Key::Num2, Key::Num3, Key::Num4, Key::Num5, Key::Num6];
+        const DIGITS: [Key; 7] =
+            [Key::Num1, Key::Num2, Key::Num3, Key::Num4, Key::Num5, Key::Num6, Key::Num7];
         let place = Self::ALL.into_iter().position(|page| page == self)?;
         DIGITS.get(place).copied()
     }
@@ -83,6 +96,8 @@ pub enum Group {
     Instrument,
     /// The strings.
     Strings,
+    /// Other sets of strings and tunings that the saddle must suit.
+    Alternatives,
     /// Pressing, supports and slip.
     Pressing,
     /// The saddle.
@@ -97,10 +112,11 @@ pub enum Group {
 
 impl Group {
     /// All groups.
-    pub const ALL: [Self; 8] = [
+    pub const ALL: [Self; 9] = [
         Self::About,
         Self::Instrument,
         Self::Strings,
+        Self::Alternatives,
         Self::Pressing,
         Self::Saddle,
         Self::Nut,
@@ -115,6 +131,7 @@ impl Group {
             Self::About => "Plan",
             Self::Instrument => "Instrument and neck",
             Self::Strings => "Strings",
+            Self::Alternatives => "Other strings and tunings",
             Self::Pressing => "Pressing and supports",
             Self::Saddle => "Saddle",
             Self::Nut => "Nut",
@@ -130,7 +147,8 @@ impl Group {
         match head {
             "instrument" => Self::Instrument,
             "strings" | "reference_hz" => Self::Strings,
-            "pressing" | "supports" | "slip" | "tolerances" => Self::Pressing,
+            "alternatives" | "strings_weight" => Self::Alternatives,
+            "pressing" | "supports" | "slip" => Self::Pressing,
             "saddle" | "as_built" => Self::Saddle,
             "nut" => Self::Nut,
             "fit" | "targets" => Self::Fit,
@@ -255,6 +273,8 @@ pub struct View {
     pub study: Study,
     /// What is shown of the sheets.
     pub preview: Preview,
+    /// How sure the setbacks are.
+    pub trust: Trust,
     /// Readings and diagnosis.
     pub repair: Repair,
     /// What has just been done.
@@ -273,7 +293,14 @@ impl View {
             card: true,
             about: None,
             string: 0,
-            folded: BTreeSet::from([Group::About, Group::Pressing, Group::Nut, Group::Fit, Group::Sheet]),
+            folded: BTreeSet::from([
+                Group::About,
+                Group::Alternatives,
+                Group::Pressing,
+                Group::Nut,
+                Group::Fit,
+                Group::Sheet,
+            ]),
             drafts: Drafts::default(),
             going_to: None,
             errors: ErrorChoice::default(),
@@ -282,6 +309,7 @@ impl View {
             nut_camera: Camera::default(),
             study: Study::default(),
             preview: Preview::default(),
+            trust: Trust::default(),
             repair: Repair::default(),
             message: None,
         }

@@ -30,6 +30,7 @@ pub const EXAMPLES: &[Example] = examples! {
     "tenor_ukulele": "tenor ukulele, 432 mm scale, high G",
     "fanned_eight": "eight-string with a fanned neck, 648 to 711 mm, and a zero fret",
     "steel_six_sharp": "steel-string acoustic in for repair, with tuner readings",
+    "steel_six_tunings": "steel-string acoustic, one saddle for three tunings, with tolerances",
 };
 
 /// The example of this name.

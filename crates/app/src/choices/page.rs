@@ -3,7 +3,7 @@
 use eframe::egui::{Frame, Margin, RichText, ScrollArea, Stroke, Ui};
 
 use super::study::Study;
-use super::{setting_out, string_plot, styles};
+use super::{sets, setting_out, string_plot, styles};
 use crate::edit::command::Command;
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, size};
@@ -46,6 +46,11 @@ pub fn show(
                 0 => {
                     commands.extend(styles::show(ui, palette, outcome, &figures.comparison, working));
                     ui.add_space(size::WIDE_GAP);
+                    let alternatives = &outcome.solution.report.alternatives;
+                    if !alternatives.is_empty() {
+                        sets::show(ui, palette, alternatives);
+                        ui.add_space(size::WIDE_GAP);
+                    }
                     string_plot::show(ui, palette, &figures.comparison, outcome.plan.nut.style);
                 }
                 _ => commands.extend(setting_out::show(ui, palette, figures, string, &mut step)),

@@ -2,7 +2,7 @@
 
 use std::path::PathBuf;
 
-use crestline_plan::{EXAMPLES, kinds};
+use crestline_plan::{EXAMPLES, Tolerances, kinds};
 use crestline_sheets::Format;
 
 use super::command::Command;
@@ -45,7 +45,7 @@ pub fn offers(desk: &Desk, view: &View, recent: &[PathBuf]) -> Vec<Offer> {
     all.into_iter().map(|command| Offer { name: name(&command, desk), command }).collect()
 }
 
-/// Steps back and forth, and what can be done with the chosen string.
+/// Steps back and forth, and what can be done with the chosen string and the tolerances.
 fn changes(desk: &Desk, view: &View) -> Vec<Command> {
     let (string, count) = (view.string, desk.plan.strings.len());
     let possible = [
@@ -55,6 +55,8 @@ fn changes(desk: &Desk, view: &View) -> Vec<Command> {
         (Command::RemoveString(string), count > 1),
         (Command::MoveStringUp(string), string > 0),
         (Command::MoveStringDown(string), string + 1 < count),
+        (Command::TakeTolerances, desk.plan.tolerances != Some(Tolerances::default())),
+        (Command::LeaveOutTolerances, desk.plan.tolerances.is_some()),
     ];
     let spread = Spread::ALL.map(|of| (Command::Spread(of), count > 2));
     possible.into_iter().chain(spread).filter(|(_, can)| *can).map(|(command, _)| command).collect()
@@ -115,6 +117,8 @@ mod tests {
             | Command::MoveStringUp(_)
             | Command::MoveStringDown(_)
             | Command::ChooseString(_)
+            | Command::TakeTolerances
+            | Command::LeaveOutTolerances
             | Command::ShowPage(_)
             | Command::ShowInputs(_)
             | Command::Fold(_)
@@ -151,6 +155,8 @@ mod tests {
             Command::MoveStringUp(1),
             Command::MoveStringDown(1),
             Command::ChooseString(3),
+            Command::TakeTolerances,
+            Command::LeaveOutTolerances,
             Command::TakeStyle(SaddleStyle::Straight, NutStyle::Plain, None),
             Command::ShowPage(Page::Compare),
             Command::ShowInputs(false),
@@ -166,9 +172,10 @@ mod tests {
         ]
     }
 
-    /// A desk with steps both ways, and a view on its second string.
+    /// A desk with steps both ways and tolerances of its own, and a view on its second string.
     fn busy() -> (Desk, View) {
         let mut desk = Desk::new(read(example("steel_six").unwrap().text).unwrap(), None);
+        desk.plan.tolerances = Some(Tolerances { limit_cents: 3.0, ..Tolerances::default() });
         for relief_mm in [0.2, 0.3] {
             desk.plan.instrument.relief_mm = relief_mm;
             desk.settle(&Edit::whole("Relief"));

@@ -34,6 +34,10 @@ pub enum Command {
     FillReadings(Filling),
     /// Take the instrument that the diagnosis found into the plan.
     TakeFitted,
+    /// Take the usual tolerances into the plan.
+    TakeTolerances,
+    /// Leave the tolerances out of the plan.
+    LeaveOutTolerances,
     /// Type the path in the window instead of waiting for a file dialog.
     TypePath,
     /// Close the window.
@@ -104,6 +108,8 @@ impl Command {
             Self::ImportReadingsFrom(path) => format!("Import readings from {}", path.display()),
             Self::FillReadings(_) => "Paste readings".into(),
             Self::TakeFitted => "Take the fitted instrument into the plan".into(),
+            Self::TakeTolerances => "Take the usual tolerances into the plan".into(),
+            Self::LeaveOutTolerances => "Leave the tolerances out of the plan".into(),
             Self::TypePath => "Type the path here instead".into(),
             Self::Quit => "Quit".into(),
             Self::Undo => "Undo".into(),

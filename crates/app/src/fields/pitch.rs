@@ -43,6 +43,13 @@ pub fn pitch(ui: &mut Ui, form: &mut Form, spec: &Spec, value: &mut Pitch) -> Re
     number::typed(ui, form, spec, &shown, read, |new| *value = new)
 }
 
+/// The field for a pitch that may be left empty.
+pub fn optional(ui: &mut Ui, form: &mut Form, spec: &Spec, value: &mut Option<Pitch>) -> Response {
+    let shown = value.as_ref().map(shown).unwrap_or_default();
+    let read = |text: &str| if text.trim().is_empty() { Ok(None) } else { read(text).map(Some) };
+    number::typed(ui, form, spec, &shown, read, |new| *value = new)
+}
+
 #[cfg(test)]
 mod tests {
     #![allow(clippy::unwrap_used)]

@@ -1,6 +1,7 @@
 //! The inputs beside the results, in the groups in which a builder thinks of them.
 
 mod about;
+mod alternatives;
 mod fit;
 mod group;
 mod instrument;
@@ -47,6 +48,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, around: &Surroundings
                 make::follow(&before, plan);
             }
         });
+        group::show(ui, form, folded, Group::Alternatives, |ui, form| alternatives::show(ui, form, plan));
         group::show(ui, form, folded, Group::Saddle, |ui, form| saddle::show(ui, form, plan));
         group::show(ui, form, folded, Group::Nut, |ui, form| nut::show(ui, form, plan));
         group::show(ui, form, folded, Group::Pressing, |ui, form| pressing::show(ui, form, plan));

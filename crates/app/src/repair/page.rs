@@ -13,6 +13,7 @@ use crate::edit::command::Command;
 use crate::edit::desk::Outcome;
 use crate::fields::form::Form;
 use crate::results::notices;
+use crate::results::sides::{Side, columns};
 use crate::theme::{Palette, size};
 
 /// Room in which readings stand beside what comes of them, points.
@@ -190,29 +191,6 @@ impl Found {
         form.commands.extend(notices::show(ui, form.palette, &placed));
         caution(ui, form.palette);
     }
-}
-
-/// The sides of a page.
-#[derive(Clone, Copy, PartialEq)]
-enum Side {
-    Left,
-    Right,
-}
-
-/// Two columns of the same width with a gap between.
-fn columns(ui: &mut Ui, mut contents: impl FnMut(&mut Ui, Side)) {
-    const BETWEEN: f32 = 2.0 * size::WIDE_GAP;
-    let width = 0.5 * (ui.available_width() - BETWEEN);
-    ui.horizontal_top(|ui| {
-        ui.spacing_mut().item_spacing.x = BETWEEN;
-        for side in [Side::Left, Side::Right] {
-            ui.vertical(|ui| {
-                ui.set_width(width);
-                ui.spacing_mut().item_spacing.x = size::GAP;
-                contents(ui, side);
-            });
-        }
-    });
 }
 
 fn caution(ui: &mut Ui, palette: &Palette) {

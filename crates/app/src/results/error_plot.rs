@@ -2,16 +2,27 @@
 
 use crestline_plan::{FretReport, StringReport};
 use eframe::egui::{Checkbox, Color32, RichText, Ui, Vec2, Vec2b, WidgetInfo, accesskit};
-use egui_plot::{HLine, Line, LineStyle, Plot, PlotBounds, PlotPoints, PlotUi, Points, Span};
+use egui_plot::{FilledArea, HLine, Line, LineStyle, Plot, PlotBounds, PlotPoints, PlotUi, Points, Span};
 
 use super::axes::{Along, with_axes};
 use super::figures;
 use super::hover;
+use crate::bands::on_plots::{Ends, OnPlots};
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, marker, size};
 
 /// The least height of the plot's scale, cents to either side.
 const LEAST_CENTS: f64 = 3.0;
+
+/// What the plot is of.
+pub struct Shown<'a> {
+    /// The plan and what comes of it.
+    pub outcome: &'a Outcome,
+    /// How far it can be trusted, where that is to be shown.
+    pub bands: Option<&'a OnPlots>,
+    /// The chosen string, 0 first.
+    pub chosen: usize,
+}
 
 /// Which errors are shown.
 #[derive(Debug, Clone, PartialEq)]
@@ -47,8 +58,15 @@ const IDEAL: Kind = Kind { style: LineStyle::Dashed { length: 9.0 }, of: |fret| 
 const BUILT: Kind = Kind { style: LineStyle::Solid, of: |fret| Some(fret.built_cents) };
 const AS_IT_IS: Kind = Kind { style: LineStyle::Dashed { length: 3.0 }, of: |fret| fret.as_built_cents };
 
-/// The choices above the plot.
-pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize, choice: &mut ErrorChoice) {
+/// The choices above the plot; `on_plots` says whether it shows bands, where the plan has tolerances.
+pub fn choices(
+    ui: &mut Ui,
+    palette: &Palette,
+    shown: &Shown<'_>,
+    choice: &mut ErrorChoice,
+    on_plots: &mut bool,
+) {
+    let (outcome, chosen) = (shown.outcome, shown.chosen);
     ui.horizontal_wrapped(|ui| {
         ui.label(RichText::new(format!("String {}:", chosen + 1)).color(palette.string(chosen)).strong());
         ui.add(Checkbox::new(&mut choice.none, "no setback ····"));
@@ -56,6 +74,11 @@ pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize,
         ui.add(Checkbox::new(&mut choice.built, "built ──"));
         if outcome.plan.as_built.is_some() {
             ui.add(Checkbox::new(&mut choice.as_built, "now ┄┄"));
+        }
+        if outcome.plan.tolerances.is_some() {
+            let help = "Between its edges lie nine of ten instruments that the tolerances allow for, and in plan nine \
+                        of ten ideal crests.";
+            ui.add(Checkbox::new(on_plots, "90 % bands ▒")).on_hover_text(help);
         }
         ui.add_space(size::GAP);
         ui.add(Checkbox::new(&mut choice.others, "other strings"));
@@ -66,28 +89,31 @@ pub fn choices(ui: &mut Ui, palette: &Palette, outcome: &Outcome, chosen: usize,
 pub fn show(
     ui: &mut Ui,
     palette: &'static Palette,
-    outcome: &Outcome,
-    chosen: usize,
+    shown: &Shown<'_>,
     choice: &mut ErrorChoice,
     height: f32,
 ) {
+    let (outcome, chosen) = (shown.outcome, shown.chosen);
     let strings = &outcome.solution.report.strings;
     let curves = curves(strings, chosen, choice);
-    let whole = whole(outcome, &curves);
+    let band = if choice.built { band(shown) } else { Vec::new() };
+    let whole = whole(outcome, &curves, &band);
     let bounds = choice.looking.unwrap_or(whole);
     let plot = fret_plot("errors of the fretted notes", palette).height(height);
-    let shown = plot.show(ui, |plot| {
+    let painted = plot.show(ui, |plot| {
         plot.set_plot_bounds(bounds);
         frame(plot, palette, outcome.plan.fit.frets, &bounds);
+        area(plot, palette.string(chosen), &band);
         for curve in &curves {
             draw(plot, palette, curve);
         }
     });
-    let response = hover::errors(shown.response, &shown.transform, palette, strings.get(chosen));
-    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(strings, chosen)));
+    let response =
+        hover::errors(painted.response, &painted.transform, palette, strings.get(chosen), shown.bands);
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(shown)));
     let zoomed = response.contains_pointer() && ui.input(|i| i.zoom_delta() != 1.0);
     if response.dragged() || zoomed {
-        choice.looking = Some(*shown.transform.bounds());
+        choice.looking = Some(*painted.transform.bounds());
     }
     if response.double_clicked() {
         choice.looking = None;
@@ -172,26 +198,52 @@ fn draw(plot: &mut PlotUi<'_>, palette: &Palette, curve: &Curve) {
     );
 }
 
-/// All curves with some air, and at least a few cents to either side.
-fn whole(outcome: &Outcome, curves: &[Curve]) -> PlotBounds {
+/// The bands of the chosen string's errors as built: fret and ends.
+fn band(shown: &Shown<'_>) -> Vec<(f64, Ends)> {
+    let Some(bands) = shown.bands else { return Vec::new() };
+    let Some(string) = shown.outcome.solution.report.strings.get(shown.chosen) else { return Vec::new() };
+    let of = |(index, fret): (usize, &FretReport)| {
+        Some((f64::from(fret.fret), bands.error_cents(shown.chosen, index)?))
+    };
+    string.frets.iter().enumerate().filter_map(of).collect()
+}
+
+/// The bands as an area behind the curves; a note that buzzes parts it.
+fn area(plot: &mut PlotUi<'_>, colour: Color32, band: &[(f64, Ends)]) {
+    for piece in band.chunk_by(|a, b| b.0 - a.0 < 1.5) {
+        let frets: Vec<f64> = piece.iter().map(|(fret, _)| *fret).collect();
+        let edge = |side: usize| -> Vec<f64> { piece.iter().map(|(_, ends)| ends[side]).collect() };
+        let area = FilledArea::new("", &frets, &edge(0), &edge(1));
+        plot.add(area.fill_color(colour.gamma_multiply(0.22)).allow_hover(false));
+    }
+}
+
+/// All curves and bands with some air, and at least a few cents to either side.
+fn whole(outcome: &Outcome, curves: &[Curve], band: &[(f64, Ends)]) -> PlotBounds {
     let frets = f64::from(outcome.plan.instrument.frets);
     let cents = curves.iter().flat_map(|curve| curve.points.iter().map(|point| point[1]));
+    let cents = cents.chain(band.iter().flat_map(|(_, ends)| *ends));
     let (low, high) = cents.fold((-LEAST_CENTS, LEAST_CENTS), |(low, high), v| (low.min(v), high.max(v)));
     let air = 0.06 * (high - low);
     PlotBounds::from_min_max([0.4, low - air], [frets + 0.6, high + air])
 }
 
-fn in_words(strings: &[StringReport], chosen: usize) -> String {
-    let Some(string) = strings.get(chosen) else { return "Errors of the fretted notes.".to_owned() };
-    let fret = |f: &FretReport| {
+fn in_words(shown: &Shown<'_>) -> String {
+    let string = shown.outcome.solution.report.strings.get(shown.chosen);
+    let Some(string) = string else { return "Errors of the fretted notes.".to_owned() };
+    let fret = |(index, f): (usize, &FretReport)| {
+        let band = shown.bands.and_then(|bands| bands.error_cents(shown.chosen, index));
+        let band = band.map_or_else(String::new, |[low, high]| {
+            format!(" (90 % from {} to {})", figures::cents(low), figures::cents(high))
+        });
         format!(
-            " Fret {}: {}, without setback {}.",
+            " Fret {}: {}{band}, without setback {}.",
             f.fret,
             figures::cents(f.built_cents),
             figures::cents(f.none_cents)
         )
     };
-    let frets: String = string.frets.iter().map(fret).collect();
+    let frets: String = string.frets.iter().enumerate().map(fret).collect();
     format!(
         "Errors of the fretted notes of string {} in cents with the built setbacks.{frets}",
         string.string

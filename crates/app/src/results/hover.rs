@@ -5,6 +5,7 @@ use eframe::egui::{Response, RichText, Ui};
 use egui_plot::{PlotPoint, PlotTransform};
 
 use super::figures::cents;
+use crate::bands::on_plots::OnPlots;
 use crate::edit::desk::Outcome;
 use crate::theme::Palette;
 use crate::units::LengthUnit;
@@ -20,18 +21,23 @@ pub fn fret(response: &Response, transform: &PlotTransform, frets: usize) -> Opt
     (x >= 1.0 && x <= frets as f64).then_some(x as usize)
 }
 
-/// The errors of the chosen string at the fret under the pointer.
+/// The errors of the chosen string at the fret under the pointer, with their band where there is one.
 pub fn errors(
     response: Response,
     transform: &PlotTransform,
     palette: &Palette,
     string: Option<&StringReport>,
+    bands: Option<&OnPlots>,
 ) -> Response {
     let note = string.and_then(|s| s.frets.get(fret(&response, transform, s.frets.len())? - 1));
     let (Some(string), Some(note)) = (string, note) else { return response };
     let mut lines =
         vec![("no setback", note.none_cents), ("ideal", note.ideal_cents), ("built", note.built_cents)];
     lines.extend(note.as_built_cents.map(|now| ("as it is now", now)));
+    let band = bands.and_then(|b| b.error_cents(string.string as usize - 1, note.fret as usize - 1));
+    if let Some([low, high]) = band {
+        lines.extend([("built, 90 % from", low), ("to", high)]);
+    }
     tip(response, palette, &format!("String {}, fret {}, cents", string.string, note.fret), &lines)
 }
 

@@ -3,7 +3,9 @@
 use crestline_plan::estimate_notes;
 use eframe::egui::{Align, Button, Frame, Layout, Margin, Panel, RichText, ScrollArea, Stroke, Ui, Vec2};
 
+use super::error_plot::Shown;
 use super::{error_plot, layout_plot, notices, nut_plot, schedule, split_plot, table};
+use crate::bands::on_plots::OnPlots;
 use crate::edit::command::Command;
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, size};
@@ -103,7 +105,9 @@ fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &m
         });
     });
     let setbacks = LengthUnit::of(ui.ctx()).named("setbacks");
-    let words = format!("╌ nominal   ○ ideal   ● crest   {setbacks}");
+    let has_bands = view.trust.on_plots && outcome.plan.tolerances.is_some();
+    let bands = if has_bands { "├┤ 90 % of ideal   " } else { "" };
+    let words = format!("╌ nominal   ○ ideal   {bands}● crest   {setbacks}");
     ui.label(RichText::new(words).small().color(palette.quiet));
     if layout_plot::nut_is_moved(&outcome.solution.layout) {
         let width = 0.4 * ui.available_width();
@@ -116,16 +120,20 @@ fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &m
             nut_plot::show(ui, palette, outcome, view.string, &mut view.nut_camera);
         });
     }
-    layout_plot::show(ui, palette, outcome, view.string, &mut view.saddle_camera);
+    let bands = OnPlots::of(ui.ctx(), outcome, &mut view.trust);
+    let shown = Shown { outcome, bands: bands.as_ref(), chosen: view.string };
+    layout_plot::show(ui, palette, &shown, &mut view.saddle_camera);
     commands
 }
 
 fn curves(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) {
     let split = (0.38 * ui.available_height()).max(110.0);
     title(ui, "Errors of the fretted notes");
-    error_plot::choices(ui, palette, outcome, view.string, &mut view.errors);
+    let bands = OnPlots::of(ui.ctx(), outcome, &mut view.trust);
+    let shown = Shown { outcome, bands: bands.as_ref(), chosen: view.string };
+    error_plot::choices(ui, palette, &shown, &mut view.errors, &mut view.trust.on_plots);
     let room = (ui.available_height() - split - 66.0).max(90.0);
-    error_plot::show(ui, palette, outcome, view.string, &mut view.errors, room);
+    error_plot::show(ui, palette, &shown, &mut view.errors, room);
     title(ui, "Where the error comes from");
     split_plot::legend(ui, palette, view.string);
     split_plot::show(ui, palette, outcome, view.string, ui.available_height().max(80.0));

@@ -6,9 +6,10 @@ use egui_plot::{LineStyle, Plot, PlotBounds, PlotUi};
 
 use super::axes::{Along, with_axes};
 use super::camera::Camera;
+use super::error_plot::Shown;
 use super::hover;
 use super::plan_items::{PlanView, at_x, line, mark, outline, text};
-use crate::edit::desk::Outcome;
+use crate::bands::on_plots::{Ends, OnPlots};
 use crate::theme::Palette;
 use crate::units::LengthUnit;
 
@@ -20,23 +21,24 @@ const ROOM_ACROSS_MM: f64 = 5.0;
 const STRING_WIDTH: f32 = 1.2;
 
 /// The plot, as large as the room that is left.
-pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, chosen: usize, camera: &mut Camera) {
+pub fn show(ui: &mut Ui, palette: &'static Palette, shown: &Shown<'_>, camera: &mut Camera) {
+    let (outcome, chosen) = (shown.outcome, shown.chosen);
     let layout = &outcome.solution.layout;
-    let whole = whole(outcome);
+    let whole = whole(shown);
     let looking = *camera;
     let datum_x = layout.datum_x_mm;
     let unit = LengthUnit::of(ui.ctx());
     let plot = plan_plot("saddle in plan", palette, datum_x, unit).height(ui.available_height());
-    let shown = plot.show(ui, |plot| {
+    let painted = plot.show(ui, |plot| {
         let rect = plot.response().rect;
         let bounds = looking.bounds(rect, &whole);
         plot.set_plot_bounds(bounds);
         let mm_per_point = bounds.width() / f64::from(rect.width().max(1.0));
-        draw(plot, &PlanView { palette, outcome, chosen, unit, bounds, mm_per_point });
+        draw(plot, &PlanView { palette, outcome, chosen, unit, bounds, mm_per_point }, shown.bands);
     });
-    let response = hover::crest(shown.response, &shown.transform, palette, outcome);
-    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(outcome, unit)));
-    camera.follow(ui, &response, &shown.transform, &whole);
+    let response = hover::crest(painted.response, &painted.transform, palette, outcome);
+    response.widget_info(|| WidgetInfo::labeled(accesskit::Role::Image, true, in_words(shown, unit)));
+    camera.follow(ui, &response, &painted.transform, &whole);
 }
 
 /// A plot for a plan view: drag pans, the wheel zooms, and the axis counts from the datum.
@@ -57,7 +59,7 @@ pub fn plan_plot<'a>(
     with_axes(plot, palette, Along::From(datum_x, unit), ["", ""])
 }
 
-fn draw(plot: &mut PlotUi<'_>, d: &PlanView<'_>) {
+fn draw(plot: &mut PlotUi<'_>, d: &PlanView<'_>, bands: Option<&OnPlots>) {
     let layout = &d.outcome.solution.layout;
     let p = d.palette;
     for blank in &layout.blanks {
@@ -80,6 +82,9 @@ fn draw(plot: &mut PlotUi<'_>, d: &PlanView<'_>) {
     }
     crest_lines(plot, d);
     for (index, string) in layout.strings.iter().enumerate() {
+        if let Some(ends) = bands.and_then(|bands| bands.setback_mm(index)) {
+            whisker(plot, d, index, string, ends);
+        }
         crest(plot, d, index, string);
     }
 }
@@ -134,6 +139,25 @@ fn travel(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &String
     }
 }
 
+/// The band in which the ideal crest lies, as a line along the string with ends across.
+fn whisker(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &StringLine, ends_mm: Ends) {
+    let ends = ends_mm.map(|setback_mm| along(string, setback_mm));
+    let colour = d.palette.string(index);
+    line(plot, &ends, colour, 2.6, LineStyle::Solid);
+    let tick = 5.0 * d.mm_per_point;
+    for end in ends {
+        let across = [Point { x: end.x, y: end.y - tick }, Point { x: end.x, y: end.y + tick }];
+        line(plot, &across, colour, 1.6, LineStyle::Solid);
+    }
+}
+
+/// The place of a crest with this setback along the string.
+fn along(string: &StringLine, setback_mm: f64) -> Point {
+    let (dx, dy) = (string.saddle.x - string.nut.x, string.saddle.y - string.nut.y);
+    let by = setback_mm / dx.hypot(dy).max(f64::MIN_POSITIVE);
+    Point { x: string.saddle.x + by * dx, y: string.saddle.y + by * dy }
+}
+
 /// The ideal crest hollow, the existing one as a ring, and the built one filled with its setback beside it.
 fn crest(plot: &mut PlotUi<'_>, d: &PlanView<'_>, index: usize, string: &StringLine) {
     let colour = d.palette.string(index);
@@ -166,16 +190,27 @@ fn beyond(a: Point, b: Point, by_mm: f64) -> [Point; 2] {
 }
 
 /// What must be in view.
-fn whole(outcome: &Outcome) -> PlotBounds {
+fn whole(shown: &Shown<'_>) -> PlotBounds {
+    let outcome = shown.outcome;
     let layout = &outcome.solution.layout;
     let mut points: Vec<Point> = layout.saddle_line.to_vec();
     points.extend(layout.blanks.iter().flatten());
     points.extend(layout.strings.iter().flat_map(|s| [s.crest, s.ideal_crest, s.saddle]));
     points.extend(layout.strings.iter().filter_map(|s| s.as_built));
+    points.extend(whiskers(shown).flatten());
     if matches!(outcome.plan.saddle.style, SaddleStyle::Separate) {
         points.extend(layout.strings.iter().flat_map(|s| s.travel));
     }
     around(&points, [ROOM_MM, 0.5])
+}
+
+/// The ends of all whiskers.
+fn whiskers<'a>(shown: &'a Shown<'_>) -> impl Iterator<Item = [Point; 2]> + 'a {
+    let strings = shown.outcome.solution.layout.strings.iter().enumerate();
+    strings.filter_map(|(index, string)| {
+        let ends_mm = shown.bands?.setback_mm(index)?;
+        Some(ends_mm.map(|setback_mm| along(string, setback_mm)))
+    })
 }
 
 /// The box around points, with room before, behind and across.
@@ -192,16 +227,20 @@ pub fn around(points: &[Point], room_mm: [f64; 2]) -> PlotBounds {
 }
 
 /// The plot's figures in words.
-fn in_words(outcome: &Outcome, unit: LengthUnit) -> String {
-    let setback = |s: &crestline_plan::StringReport| {
+fn in_words(shown: &Shown<'_>, unit: LengthUnit) -> String {
+    let setback = |(index, s): (usize, &crestline_plan::StringReport)| {
+        let ends = shown.bands.and_then(|bands| bands.setback_mm(index));
+        let ends = ends.map_or_else(String::new, |[low, high]| {
+            format!(" (90 % from {} to {})", unit.figure(low), unit.words(high))
+        });
         format!(
-            " String {}: setback {}, ideal {}.",
+            " String {}: setback {}, ideal {}{ends}.",
             s.string,
             unit.words(s.built.saddle_setback_mm),
             unit.words(s.ideal.saddle_setback_mm)
         )
     };
-    let strings: String = outcome.solution.report.strings.iter().map(setback).collect();
+    let strings: String = shown.outcome.solution.report.strings.iter().enumerate().map(setback).collect();
     format!("Saddle in plan.{strings}")
 }
 

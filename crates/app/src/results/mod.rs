@@ -13,5 +13,7 @@ pub mod notices;
 pub mod nut_plot;
 pub mod plan_items;
 pub mod schedule;
+pub mod sides;
+pub mod sides;
 pub mod split_plot;
 pub mod table;

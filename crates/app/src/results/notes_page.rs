@@ -6,9 +6,10 @@ use eframe::egui::{
     StrokeKind, Ui, Vec2, WidgetInfo, accesskit, pos2,
 };
 
-use super::error_plot;
+use super::error_plot::{self, Shown};
 use super::figures::{cents, fixed, newtons};
 use super::marks;
+use crate::bands::on_plots::OnPlots;
 use crate::edit::command::Command;
 use crate::edit::desk::Outcome;
 use crate::theme::{Palette, size};
@@ -48,9 +49,11 @@ pub fn show(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mu
                 .show_separator_line(false)
                 .frame(Frame::new())
                 .show(ui, |ui| {
-                    error_plot::choices(ui, palette, outcome, view.string, &mut view.errors);
+                    let bands = OnPlots::of(ui.ctx(), outcome, &mut view.trust);
+                    let shown = Shown { outcome, bands: bands.as_ref(), chosen: view.string };
+                    error_plot::choices(ui, palette, &shown, &mut view.errors, &mut view.trust.on_plots);
                     let room = ui.available_height();
-                    error_plot::show(ui, palette, outcome, view.string, &mut view.errors, room);
+                    error_plot::show(ui, palette, &shown, &mut view.errors, room);
                 });
         }
         ScrollArea::both().auto_shrink([false, false]).show(ui, |ui| {

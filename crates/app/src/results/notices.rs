@@ -77,7 +77,8 @@ pub fn show(ui: &mut Ui, palette: &Palette, notices: &[Notice]) -> Vec<Command> 
 }
 
 /// The text with a capital at its start.
-fn sentence(text: &str) -> String {
+#[must_use]
+pub fn sentence(text: &str) -> String {
     let mut letters = text.chars();
     letters.next().map_or_else(String::new, |first| first.to_uppercase().chain(letters).collect())
 }

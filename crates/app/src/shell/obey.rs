@@ -2,7 +2,7 @@
 
 use std::path::{Path, PathBuf};
 
-use crestline_plan::{Kind, example, read_draft};
+use crestline_plan::{Kind, Tolerances, example, read_draft};
 use crestline_sheets::{Format, export};
 use eframe::egui::{Context, ViewportCommand};
 
@@ -96,6 +96,8 @@ fn arrange(window: &mut Window, command: Command) {
             plan.saddle.split_after = split_after.or(plan.saddle.split_after);
             window.desk.settle(&Edit::whole("Take saddle and nut"));
         }
+        Command::TakeTolerances => set_tolerances(window, "Take tolerances", Some(Tolerances::default())),
+        Command::LeaveOutTolerances => set_tolerances(window, "Leave out tolerances", None),
         Command::FillReadings(filling) => readings::fill(window, &filling),
         Command::TakeFitted => readings::take_fitted(window),
         Command::ChooseString(index) => view.string = index,
@@ -134,6 +136,12 @@ fn change_strings(
     choose_string(window, choose);
 }
 
+fn set_tolerances(window: &mut Window, name: &str, tolerances: Option<Tolerances>) {
+    window.desk.plan.tolerances = tolerances;
+    window.desk.settle(&Edit::whole(name));
+    window.view.drafts.clear();
+}
+
 fn choose_string(window: &mut Window, index: usize) {
     window.view.string = index.min(window.desk.plan.strings.len().saturating_sub(1));
 }
@@ -141,6 +149,12 @@ fn choose_string(window: &mut Window, index: usize) {
 fn go_to(window: &mut Window, path: String) {
     if path.starts_with("readings") {
         go_to_reading(window, &path);
+        return;
+    }
+    if path.starts_with("tolerances") {
+        window.view.page = Page::HowSure;
+        window.view.trust.shows_tolerances = true;
+        window.view.going_to = Some(path);
         return;
     }
     window.view.folded.remove(&Group::of_path(&path));
@@ -223,6 +237,7 @@ pub fn fresh(window: &mut Window) {
     window.view.saddle_camera.reset();
     window.view.nut_camera.reset();
     window.view.errors.looking = None;
+    window.view.trust.fresh();
     window.view.repair.fresh();
     window.view.message = None;
 }

@@ -16,6 +16,7 @@ use super::options::Options;
 use super::picker::Picker;
 use super::readings::READINGS_ENDING;
 use super::{bar, disk, foot, recover};
+use crate::bands::page as bands_page;
 use crate::choices;
 use crate::edit::command::Command;
 use crate::edit::desk::Desk;
@@ -223,8 +224,8 @@ impl Window {
             self.view.about = about;
             ui.ctx().request_repaint();
         }
-        // A path that no field has shown by now has none.
-        self.view.going_to = None;
+        // A path that no field has shown by now has none, but for those of fields on a page.
+        self.view.going_to.take_if(|path| !path.starts_with("tolerances"));
         self.settle(ui.ctx(), edit, left);
         commands
     }
@@ -237,6 +238,18 @@ impl Window {
         let mut form = Form::new(faults, drafts, going_to, palette, *unit);
         repair_page::show(ui, &mut form, plan, outcome, *string, repair);
         let Form { edit, left, commands, .. } = form;
+        self.settle(ui.ctx(), edit, left);
+        commands
+    }
+
+    /// The page with the tolerances, which are mended there even before there is a result.
+    fn how_sure(&mut self, ui: &mut Ui, palette: &'static Palette) -> Vec<Command> {
+        let (plan, faults, outcome) = self.desk.parts();
+        let View { drafts, going_to, string, trust, unit, .. } = &mut self.view;
+        let mut form = Form::new(faults, drafts, going_to, palette, *unit);
+        bands_page::show(ui, &mut form, plan, outcome, *string, trust);
+        let Form { edit, left, commands, .. } = form;
+        self.view.going_to = None;
         self.settle(ui.ctx(), edit, left);
         commands
     }
@@ -269,6 +282,10 @@ impl Window {
                 &self.view.drafts,
                 outcome.is_some(),
             ));
+            if self.view.page == Page::HowSure {
+                commands.extend(self.how_sure(ui, palette));
+                return;
+            }
             let Some(outcome) = outcome else {
                 ui.label(
                     RichText::new("The saddle appears here as soon as the plan can be solved.")
@@ -286,7 +303,7 @@ impl Window {
                 Page::FrettedNotes => notes_page::show(ui, palette, outcome, view),
                 Page::Compare => choices::page::show(ui, palette, outcome, view.string, &mut view.study),
                 Page::Sheets => papers::page::show(ui, palette, outcome, &mut view.preview),
-                Page::Diagnosis | Page::Help => Vec::new(),
+                Page::HowSure | Page::Diagnosis | Page::Help => Vec::new(),
             });
         });
         commands

@@ -8,6 +8,7 @@ use std::fs::{self, File};
 use std::io::{BufReader, BufWriter};
 use std::path::{Path, PathBuf};
 use std::rc::Rc;
+use std::time::Duration;
 
 use crestline_plan::{example, read};
 use eframe::egui::{Color32, TexturesDelta, Theme};
@@ -61,10 +62,26 @@ fn picture(page: Page, theme: &'static str) -> Canvas {
     let mut opened: Harness<'_, Window> =
         builder.build_eframe(move |creation| Window::new(&creation.egui_ctx, plan, None, &options));
     opened.run();
+    come_to_an_end(&mut opened, page);
     let ground = Palette::of(opened.ctx.theme()).ground;
     let blank = Canvas::new(SIZE[0], SIZE[1], ground);
     let shapes = opened.output().shapes.clone();
     keeper.0.borrow().paint(&opened.ctx, shapes, 1.0, blank)
+}
+
+/// Waits for the work that a page does beside the window and that its picture shows the end of.
+fn come_to_an_end(opened: &mut Harness<'_, Window>, page: Page) {
+    const TURNS: usize = 6000;
+    let is_done = |window: &Window| page != Page::HowSure || window.view.trust.sampling.shares().is_some();
+    for _ in 0..TURNS {
+        if is_done(opened.state()) {
+            opened.run();
+            return;
+        }
+        std::thread::sleep(Duration::from_millis(20));
+        opened.run();
+    }
+    panic!("the page {} never came to an end", page.name());
 }
 
 fn kept(page: Page, theme: &str) -> PathBuf {

@@ -14,6 +14,5 @@ pub mod nut_plot;
 pub mod plan_items;
 pub mod schedule;
 pub mod sides;
-pub mod sides;
 pub mod split_plot;
 pub mod table;

@@ -46,8 +46,7 @@ fn answer(found: &Found) -> String {
     let uncertainty = &found.uncertainty;
     let [first, last] = found.plan().fit.frets;
     format!(
-        "Every note of every string stays within {} cents with a chance of {}, and those of frets {first} to {last} \
-         with a chance of {}.",
+        "Chance that every note stays within {} cents: {}; that those of frets {first} to {last} do: {}.",
         parse::shown(uncertainty.limit_cents),
         chance(uncertainty.chance_within),
         chance(uncertainty.chance_within_fit),

@@ -23,7 +23,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, is_open: &mut bool) {
             "The plan is then as if all its figures were exact, and this page goes by the usual tolerances.";
         button(ui, form, Command::LeaveOutTolerances, plan.tolerances.is_some(), help);
         let state = match (&plan.tolerances, is_usual) {
-            (None, _) => "none in the plan: the usual ones are shown",
+            (None, _) => "none in the plan",
             (Some(_), true) => "in the plan, as usual",
             (Some(_), false) => "in the plan, changed",
         };

@@ -34,11 +34,14 @@ pub fn show(
         ScrollArea::vertical().auto_shrink([false, false]).show(ui, |ui| {
             if let Some(outcome) = outcome {
                 trust.sampling.follow(ui.ctx(), &outcome.plan, true);
-                headline::show(ui, form, plan, &outcome.plan, &mut trust.sampling);
+                ui.push_id("headline", |ui| {
+                    headline::show(ui, form, plan, &outcome.plan, &mut trust.sampling)
+                });
                 ui.add_space(size::GAP);
             }
-            // Above what comes of them, so that they stay in place when that appears.
-            tolerances::show(ui, form, plan, &mut trust.shows_tolerances);
+            // Above what comes of them, so that they stay in place when that appears; and with names of their own, so that
+            // a click or the focus stays with its widget while the words above grow.
+            ui.push_id("tolerances", |ui| tolerances::show(ui, form, plan, &mut trust.shows_tolerances));
             if let Some(found) = outcome.and_then(|outcome| Found::of(outcome, string, trust)) {
                 ui.add_space(size::WIDE_GAP);
                 found.show(ui, form, trust);

@@ -82,6 +82,14 @@ fn the_page_says_how_sure_the_setbacks_are_and_everything_on_it_has_a_name() {
     click(&mut opened, "Tolerances");
     opened.check_accessibility();
     assert_eq!(says(&opened, "String 5: core diameter 0.003 mm."), 1);
+    // Room for 0.0005, the finest default in inches, at some nine points a figure: nothing of a value is cut off.
+    const ROOM: f32 = 54.0;
+    let fields: Vec<_> = opened.get_all_by_role(Role::TextInput).collect();
+    let mut narrow = fields.iter().filter(|field| {
+        let label = field.accesskit_node().label().unwrap_or_default();
+        label.starts_with("Standard deviation") && field.rect().width() < ROOM
+    });
+    assert!(narrow.next().is_none(), "a field cuts its value off");
 }
 
 #[test]

@@ -286,13 +286,15 @@ pub fn sample(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
 
 /// Width of a field in a table.
 const NARROW: f32 = 60.0;
+/// Least width of a column: a field, which would else be cut to what a table gives it, and its margins.
+const COLUMN: f32 = NARROW + 10.0;
 /// Room in which two shared fields stand side by side, points.
 const TWO_ABREAST: f32 = 560.0;
 
 /// The standard deviations that all strings share.
 pub fn shared(ui: &mut Ui, form: &mut Form, tolerances: &mut Tolerances) {
     let abreast = if ui.available_width() >= TWO_ABREAST { 2 } else { 1 };
-    Grid::new("shared tolerances").spacing([10.0, 4.0]).show(ui, |ui| {
+    Grid::new("shared tolerances").min_col_width(COLUMN).spacing([10.0, 4.0]).show(ui, |ui| {
         for line in SHARED.chunks(abreast) {
             for shared in line {
                 ui.label(shared.name);
@@ -313,7 +315,7 @@ pub fn shared(ui: &mut Ui, form: &mut Form, tolerances: &mut Tolerances) {
 /// The standard deviations of the kinds of string.
 pub fn of_kinds(ui: &mut Ui, form: &mut Form, tolerances: &mut Tolerances) {
     ScrollArea::horizontal().id_salt("kinds of string").auto_shrink([false, true]).show(ui, |ui| {
-        Grid::new("tolerances of strings").spacing([10.0, 4.0]).show(ui, |ui| {
+        Grid::new("tolerances of strings").min_col_width(COLUMN).spacing([10.0, 4.0]).show(ui, |ui| {
             ui.label("");
             for (_, head, ..) in KINDS {
                 ui.label(RichText::new(head).small().color(form.palette.quiet));

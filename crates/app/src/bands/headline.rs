@@ -28,15 +28,9 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, solved: &Plan, sampli
         (true, None) => "Instruments are drawn that differ as the tolerances say …".to_owned(),
     };
     ui.add(Label::new(RichText::new(words).size(size::HEADING).strong()).wrap());
-    if let Some(found) = found.filter(|_| refused.is_empty()) {
-        let mut words = sample_words(&found.uncertainty, plan.tolerances.is_none());
-        if !found.plan().alternatives.is_empty() {
-            words.push_str(
-                " Of the sets of strings that the saddle must suit, this page is about the plan's own.",
-            );
-        }
-        ui.add(Label::new(RichText::new(words).small().color(form.palette.quiet)).wrap());
-    }
+    // The line is there before the first answer too, so that nothing below it jumps.
+    let words = sample_words(found.map(|found| &*found.uncertainty), found.map_or(solved, Found::plan));
+    ui.add(Label::new(RichText::new(words).small().color(form.palette.quiet)).wrap());
     progress(ui, form, solved, sampling);
     fields::sample(ui, form, plan);
 }
@@ -73,17 +67,24 @@ pub fn per_cent(part: f64) -> String {
     }
 }
 
-fn sample_words(uncertainty: &Uncertainty, is_usual: bool) -> String {
-    let left_out = match uncertainty.left_out {
+/// What the sample is of: so many instruments so far of this plan.
+fn sample_words(uncertainty: Option<&Uncertainty>, plan: &Plan) -> String {
+    let (samples, left_out) = uncertainty.map_or((0, 0), |found| (found.samples, found.left_out));
+    let left_out = match left_out {
         0 => String::new(),
         n => format!(" {n} of them cannot be worked out and are left out."),
     };
-    let whose =
-        if is_usual { "the usual tolerances, since the plan has none" } else { "the plan's tolerances" };
+    let whose = match plan.tolerances {
+        None => "the usual tolerances, since the plan has none",
+        Some(_) => "the plan's tolerances",
+    };
+    let sets = match plan.alternatives.len() {
+        0 => "",
+        _ => " Of the sets of strings that the saddle must suit, this page is about the plan's own.",
+    };
     format!(
-        "Of {} instruments with saddle and nut as built, drawn by {whose}.{left_out} The chance can be trusted no \
-         further than they can.",
-        uncertainty.samples
+        "Of {samples} instruments with saddle and nut as built, drawn by {whose}.{left_out} The chance can be trusted \
+         no further than they can.{sets}"
     )
 }
 

@@ -19,7 +19,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
         "Setbacks are then those that suit all sets together; Compare shows what each set keeps.",
     );
     if !plan.alternatives.is_empty() {
-        row(ui, "Weight of the plan's own", |ui| {
+        row(ui, "Plan's own weight", |ui| {
             let spec = Spec::new("strings_weight", "Weight of the plan's own strings", 0.5, WEIGHT);
             number::number(ui, form, &spec, &mut plan.strings_weight);
         });
@@ -86,8 +86,9 @@ fn one(
 
 /// Room for the button that removes, points.
 const REMOVE: f32 = 84.0;
-/// Width of a pitch.
-const PITCH: f32 = 66.0;
+/// Width of a pitch, and how many stand side by side.
+const PITCH: f32 = 56.0;
+const ABREAST: usize = 4;
 
 /// A pitch a string; an empty field leaves the string at its own.
 fn tuning(
@@ -98,16 +99,19 @@ fn tuning(
     pitches: &mut [Option<Pitch>],
     strings: &[PlanString],
 ) {
-    ui.horizontal_wrapped(|ui| {
-        for (index, (value, string)) in pitches.iter_mut().zip(strings).enumerate() {
-            let own = pitch::shown(&string.pitch);
-            let help = "Empty where the string keeps its own pitch.";
-            let name = format!("{called}: pitch of string {}", index + 1);
-            let spec = Spec::new(format!("{path}.pitches[{index}]"), name, 0.0, help).words();
-            ui.label(RichText::new((index + 1).to_string()).color(form.palette.quiet));
-            pitch::optional(ui, form, &spec.width(PITCH).hint(&own), value);
-        }
-    });
+    let mut fields: Vec<_> = pitches.iter_mut().zip(strings).enumerate().collect();
+    for line in fields.chunks_mut(ABREAST) {
+        ui.horizontal(|ui| {
+            for (index, (value, string)) in line {
+                let own = pitch::shown(&string.pitch);
+                let help = "Empty where the string keeps its own pitch.";
+                let name = format!("{called}: pitch of string {}", *index + 1);
+                let spec = Spec::new(format!("{path}.pitches[{index}]"), name, 0.0, help).words();
+                ui.label(RichText::new((*index + 1).to_string()).color(form.palette.quiet));
+                pitch::optional(ui, form, &spec.width(PITCH).hint(&own), value);
+            }
+        });
+    }
 }
 
 /// A string's pitch and gauge.

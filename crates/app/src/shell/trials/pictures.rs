@@ -72,7 +72,12 @@ fn picture(page: Page, theme: &'static str) -> Canvas {
 /// Waits for the work that a page does beside the window and that its picture shows the end of.
 fn come_to_an_end(opened: &mut Harness<'_, Window>, page: Page) {
     const TURNS: usize = 6000;
-    let is_done = |window: &Window| page != Page::HowSure || window.view.trust.sampling.shares().is_some();
+    let is_done = |window: &Window| match page {
+        Page::Compare => !window.view.study.is_working(),
+        Page::HowSure => window.view.trust.sampling.shares().is_some(),
+        Page::Diagnosis => !window.view.repair.inquiry.is_working(),
+        Page::Saddle | Page::FrettedNotes | Page::Sheets | Page::Help => true,
+    };
     for _ in 0..TURNS {
         if is_done(opened.state()) {
             opened.run();

@@ -83,5 +83,5 @@ CONTROL
 (cd "$root" && find usr -type f -print0 | sort -z | xargs -0 md5sum > DEBIAN/md5sums)
 mkdir -p "$folder"
 package=$folder/crestline_${version}_$architecture.deb
-dpkg-deb --root-owner-group --build "$root" "$package" >/dev/null
+dpkg-deb --root-owner-group -z"${COMPRESSION:-6}" --build "$root" "$package" >/dev/null
 echo "$package"

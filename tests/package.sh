@@ -13,7 +13,13 @@ fail() { echo "package: $*" >&2; exit 1; }
 export COMPRESSION=1
 package=$(bash "$assets/deb.sh" "$program" "$folder" | tail -1)
 again=$(bash "$assets/deb.sh" "$program" "$folder/again" | tail -1)
-cmp "$package" "$again" || fail "the same program gave two different packages"
+if ! cmp "$package" "$again"; then
+  for asked in control md5sums; do
+    diff <(dpkg-deb --info "$package" "$asked") <(dpkg-deb --info "$again" "$asked") || true
+  done
+  diff <(dpkg-deb --contents "$package") <(dpkg-deb --contents "$again") || true
+  fail "the same program gave two different packages"
+fi
 
 desktop-file-validate "$assets/crestline.desktop"
 # A name by a registered domain is asked for, and the project has none.

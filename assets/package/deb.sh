@@ -59,6 +59,9 @@ rm "$root/copyright"
 put 644 "$root/changelog.gz" usr/share/doc/crestline/changelog.gz
 rm "$root/changelog.gz"
 
+# What the files take on a disk of 1 kB blocks, and 1 kB for a folder: `du` would answer for the disk at hand.
+installed_size=$(find "$root/usr" -type f -printf '%s\n' -o -printf '1\n' | awk '{ kb += int(($1 + 1023) / 1024) } END { print kb }')
+
 # The newest C library that the program asks for.
 glibc=$(objdump -T "$root/usr/bin/crestline" | grep -o 'GLIBC_[0-9.]*' | sort -uV | tail -1 | cut -d_ -f2)
 mkdir "$root/DEBIAN"
@@ -67,7 +70,7 @@ Package: crestline
 Version: $version
 Architecture: $architecture
 Maintainer: The Crestline developers <crestline@crestline.invalid>
-Installed-Size: $(du -k -s "$root/usr" | cut -f1)
+Installed-Size: $installed_size
 Depends: libc6 (>= $glibc), libgcc-s1
 Recommends: libgl1, libegl1, libx11-6, libxcursor1, libxi6, libxkbcommon0, libxkbcommon-x11-0
 Suggests: xdg-desktop-portal, zenity
@@ -81,6 +84,8 @@ Description: planner for compensated saddles of fretted string instruments
  readings what is wrong with an instrument.
 CONTROL
 (cd "$root" && find usr -type f -print0 | sort -z | xargs -0 md5sum > DEBIAN/md5sums)
+# dpkg-deb only turns back the times of files that are newer than the day of the package.
+find "$root" -exec touch --no-dereference --date "@$SOURCE_DATE_EPOCH" {} +
 mkdir -p "$folder"
 package=$folder/crestline_${version}_$architecture.deb
 dpkg-deb --root-owner-group -z"${COMPRESSION:-6}" --build "$root" "$package" >/dev/null

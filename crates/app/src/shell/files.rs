@@ -5,8 +5,10 @@ use std::path::{Path, PathBuf};
 use crestline_cli::files::{read_plan_text, replace};
 use crestline_plan::Plan;
 
-/// Ending of plan files.
+/// Ending of plan files that are read.
 pub const PLAN_ENDING: &str = "json";
+/// Ending of plan files that are written first here; the desktop knows plans by it.
+pub const NEW_PLAN_ENDING: &str = "crestline.json";
 
 /// Reads a plan file. A plan with values out of range is read as well: its fields are then marked.
 ///
@@ -46,11 +48,11 @@ pub fn with_ending(path: PathBuf, ending: &str) -> PathBuf {
     if path.extension().is_some() { path } else { path.with_extension(ending) }
 }
 
-/// A name for a new file beside the plan, made of the plan's file name or its title.
+/// A name for a new file, made of the plan's file name or its title; for a plan that has a file, that file itself.
 #[must_use]
 pub fn suggested(plan_path: Option<&Path>, title: &str, ending: &str) -> PathBuf {
     if let Some(path) = plan_path {
-        return path.with_extension(ending);
+        return if ending == NEW_PLAN_ENDING { path.to_owned() } else { beside(path, ending) };
     }
     let plain: String =
         title.chars().map(|c| if c.is_alphanumeric() { c.to_ascii_lowercase() } else { '-' }).collect();
@@ -59,20 +61,37 @@ pub fn suggested(plan_path: Option<&Path>, title: &str, ending: &str) -> PathBuf
     PathBuf::from(if stem.is_empty() { "plan".to_owned() } else { stem }).with_extension(ending)
 }
 
+/// The plan's path with another ending in place of its own, which may have two parts.
+fn beside(path: &Path, ending: &str) -> PathBuf {
+    let name = path.file_name().map(|name| name.to_string_lossy().into_owned()).unwrap_or_default();
+    match name.strip_suffix(&format!(".{NEW_PLAN_ENDING}")) {
+        Some(stem) if !stem.is_empty() => path.with_file_name(format!("{stem}.{ending}")),
+        _ => path.with_extension(ending),
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
 
     #[test]
     fn names_are_made_of_the_title() {
-        assert_eq!(suggested(None, "Small guitar, No. 3", "json"), PathBuf::from("small-guitar-no-3.json"));
+        assert_eq!(
+            suggested(None, "Small guitar, No. 3", NEW_PLAN_ENDING),
+            PathBuf::from("small-guitar-no-3.crestline.json")
+        );
         assert_eq!(suggested(None, "../..", "svg"), PathBuf::from("plan.svg"));
         assert_eq!(suggested(Some(Path::new("/a/b.json")), "x", "svg"), PathBuf::from("/a/b.svg"));
+        let plan = Path::new("/a/no.3.crestline.json");
+        assert_eq!(suggested(Some(plan), "x", "svg"), PathBuf::from("/a/no.3.svg"));
+        assert_eq!(suggested(Some(plan), "x", NEW_PLAN_ENDING), plan);
+        assert_eq!(suggested(Some(Path::new("/a/b.json")), "x", NEW_PLAN_ENDING), PathBuf::from("/a/b.json"));
     }
 
     #[test]
     fn an_ending_is_added_only_where_there_is_none() {
         assert_eq!(with_ending(PathBuf::from("a"), "json"), PathBuf::from("a.json"));
+        assert_eq!(with_ending(PathBuf::from("a"), NEW_PLAN_ENDING), PathBuf::from("a.crestline.json"));
         assert_eq!(with_ending(PathBuf::from("a.txt"), "json"), PathBuf::from("a.txt"));
     }
 }

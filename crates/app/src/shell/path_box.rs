@@ -97,7 +97,7 @@ impl PathBox {
         if self.error.is_some() {
             return None;
         }
-        let path = if self.purpose.writes() { with_ending(path, self.purpose.ending()) } else { path };
+        let path = if self.purpose.writes() { with_ending(path, self.purpose.new_ending()) } else { path };
         Some(Reply::Propose(self.purpose, path))
     }
 

@@ -56,13 +56,22 @@ impl Purpose {
         }
     }
 
-    /// The ending of its files.
+    /// The ending of the files that it is about.
     #[must_use]
     pub fn ending(self) -> &'static str {
         match self {
             Self::Open | Self::Save => super::files::PLAN_ENDING,
             Self::Write(format) => format.ending(),
             Self::Readings => super::readings::READINGS_ENDING,
+        }
+    }
+
+    /// The ending that a new file gets.
+    #[must_use]
+    pub fn new_ending(self) -> &'static str {
+        match self {
+            Self::Save => super::files::NEW_PLAN_ENDING,
+            other => other.ending(),
         }
     }
 

@@ -23,7 +23,7 @@ const fn section(heading: &'static str, paragraphs: &'static [&'static str]) -> 
 }
 
 /// The sections in reading order.
-pub const SECTIONS: [Section; 6] = [
+pub const SECTIONS: [Section; 7] = [
     section(
         "What is computed",
         &[
@@ -57,6 +57,18 @@ pub const SECTIONS: [Section; 6] = [
         ],
     ),
     section(
+        "How sure a setback is",
+        &[
+            "No figure of a plan is known exactly. The page How sure draws some thousands of instruments that differ from \
+             the plan as its tolerances say, works each of them out, and gives the range that nine in ten of the ideal \
+             setbacks fall in: the 90 % band. It also says which figure to measure next to narrow it. The ± in the schedule \
+             and the drawing is half of such a band, worked out to first order without drawing instruments.",
+            "A band is worth what the tolerances are worth. Those that the program starts from are estimates and common \
+             practice; put your own in their place. What the model leaves out is in no band, so that the truth can lie \
+             outside one more often than one time in ten.",
+        ],
+    ),
+    section(
         "What it leaves out",
         &[
             "The body and the neck do not move: a strong resonance near a note can shift it by some cents. Frets are lines \
@@ -64,7 +76,7 @@ pub const SECTIONS: [Section; 6] = [
              not considered; nor are heat and damp. Strings differ from one set to the next. For these reasons the plan \
              brings an instrument close, and the last adjustment is made by ear or tuner on the instrument itself.",
             "The arithmetic itself is checked against an independent computation of whole plans: ideal setbacks agree to \
-             0.00001 mm, built ones to 0.0002 mm. That says nothing about an instrument; it says that no error of \
+             0.0001 mm, built ones to 0.0002 mm. That says nothing about an instrument; it says that no error of \
              practical size comes from the arithmetic.",
         ],
     ),

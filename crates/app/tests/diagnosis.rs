@@ -274,6 +274,23 @@ fn other_priors_give_another_diagnosis_and_can_be_restored() {
 }
 
 #[test]
+fn readings_and_priors_say_how_they_are_found() {
+    let mut opened = on_page(sharp());
+    enter(&mut opened, "Reading of string 1, fret 12");
+    assert_eq!(says(&opened, "Tune the open string first."), 1);
+    opened.get_by_label("What is held probable before reading").click_accesskit();
+    opened.run();
+    let fields: Vec<_> = opened.get_all_by_role(Role::TextInput).collect();
+    let priors = fields.iter().map(|field| field.accesskit_node());
+    let words: Vec<_> = priors
+        .filter(|node| node.label().unwrap_or_default().starts_with("Standard deviation"))
+        .map(|node| node.description().unwrap_or_default())
+        .collect();
+    assert_eq!(words.len(), 12);
+    assert!(words.iter().all(|words| words.contains("Usual: ")), "{words:?}");
+}
+
+#[test]
 fn a_note_read_twice_is_shown_as_its_mean() {
     let mut twice = steel_six();
     let one = |cents| Reading { string: 1, fret: 7, kind: ReadingKind::Fretted, cents };

@@ -5,7 +5,7 @@ mod common;
 
 use std::time::Duration;
 
-use common::{Opened, open, order, plan, says, steel_six, type_into};
+use common::{Opened, field, open, order, plan, says, steel_six, type_into};
 use crestline_plan::{OtherStrings, Pitch, Plan, Tolerances, check, example, read, uncertainty};
 use crestline_window::edit::command::Command;
 use crestline_window::view::{Group, Page};
@@ -93,6 +93,29 @@ fn the_page_says_how_sure_the_setbacks_are_and_everything_on_it_has_a_name() {
 }
 
 #[test]
+fn every_tolerance_says_how_it_is_found_and_what_is_usual() {
+    let mut opened = on_page(tunings(FEW));
+    click(&mut opened, "Tolerances");
+    let fields: Vec<_> = opened.get_all_by_role(Role::TextInput).collect();
+    let mut told = 0;
+    for field in &fields {
+        let label = field.accesskit_node().label().unwrap_or_default();
+        if !label.starts_with("Standard deviation") {
+            continue;
+        }
+        let words = field.accesskit_node().description().unwrap_or_default();
+        assert!(words.contains("Usual: ") && words.contains("Allowed: 0 to "), "{label}: {words}");
+        told += 1;
+    }
+    // 13 that all strings share, and 8 of each of three kinds of string.
+    assert_eq!(told, 13 + 3 * 8);
+    // The card is about the field with the focus; the plan's own relief has another range.
+    field(&opened, "Standard deviation: Relief, mm").focus();
+    opened.run();
+    assert_eq!(says(&opened, "Usual: 0.02 to 0.1 mm. Allowed: 0 to 0.5 mm."), 1);
+}
+
+#[test]
 fn the_list_of_what_to_measure_is_ranked_by_its_gain() {
     let opened = on_page(tunings(FEW));
     let gains: Vec<f64> = opened
@@ -171,13 +194,13 @@ fn a_tolerance_out_of_range_is_marked_and_its_fault_leads_to_its_field() {
     click(&mut opened, "Tolerances");
     let name = "Standard deviation: Press depth, of it";
     type_into(&mut opened, name, "2");
-    assert!(common::field(&opened, name).accesskit_node().data().invalid().is_some());
+    assert!(field(&opened, name).accesskit_node().data().invalid().is_some());
     assert!(says(&opened, "allowed: 0 to 1") >= 1);
     order(&mut opened, Command::ShowPage(Page::Saddle));
     click(&mut opened, "Tolerances, pressing, depth fraction: 2; allowed: 0 to 1. Go to the field");
     opened.run();
     assert_eq!(opened.state().view.page, Page::HowSure);
-    assert!(common::field(&opened, name).is_focused());
+    assert!(field(&opened, name).is_focused());
 }
 
 #[test]

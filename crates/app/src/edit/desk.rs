@@ -31,6 +31,7 @@ pub struct Desk {
     outcome: Option<Outcome>,
     changed: bool,
     revision: u64,
+    steps: u64,
 }
 
 impl Desk {
@@ -47,6 +48,7 @@ impl Desk {
             outcome: None,
             changed: false,
             revision: 0,
+            steps: 0,
         };
         desk.solve();
         desk
@@ -55,7 +57,7 @@ impl Desk {
     /// Puts another plan on the desk; its history starts anew.
     pub fn replace(&mut self, plan: Plan, path: Option<PathBuf>) {
         let revision = self.revision + 1;
-        *self = Self { revision, ..Self::new(plan, path) };
+        *self = Self { revision, steps: self.steps, ..Self::new(plan, path) };
     }
 
     /// The plan to edit, beside its faults and the last good result.
@@ -68,7 +70,8 @@ impl Desk {
         if self.plan == self.settled {
             return;
         }
-        self.history.record(&self.settled, &self.plan, edit);
+        let is_new = self.history.record(&self.settled, &self.plan, edit);
+        self.steps += u64::from(is_new);
         self.follow();
     }
 
@@ -92,6 +95,7 @@ impl Desk {
     fn take(&mut self, plan: Option<Plan>) -> bool {
         let Some(plan) = plan else { return false };
         self.plan = plan;
+        self.steps += 1;
         self.follow();
         true
     }
@@ -131,6 +135,12 @@ impl Desk {
     #[must_use]
     pub fn revision(&self) -> u64 {
         self.revision
+    }
+
+    /// How many steps have been made, taken back or done again since the window opened.
+    #[must_use]
+    pub fn steps(&self) -> u64 {
+        self.steps
     }
 
     /// The file that the plan is kept in.

@@ -38,8 +38,9 @@ pub struct History {
 }
 
 impl History {
-    /// Notes an edit that made `now` of `before`. A gesture that ends where it began leaves no step.
-    pub fn record(&mut self, before: &Plan, now: &Plan, edit: &Edit) {
+    /// Notes an edit that made `now` of `before`; true where it begins a step. A gesture that ends where it began
+    /// leaves no step.
+    pub fn record(&mut self, before: &Plan, now: &Plan, edit: &Edit) -> bool {
         self.undone.clear();
         let goes_on = edit.gesture.is_some() && edit.gesture == self.open;
         self.open = edit.gesture;
@@ -48,12 +49,13 @@ impl History {
                 self.done.pop();
                 self.open = None;
             }
-            return;
+            return false;
         }
         self.done.push(Step { name: edit.name.clone(), plan: before.clone() });
         if self.done.len() > KEPT {
             self.done.remove(0);
         }
+        true
     }
 
     /// Ends the gesture that is going on, so that the next change is a step of its own.

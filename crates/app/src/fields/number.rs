@@ -271,7 +271,6 @@ fn text_box(ui: &mut Ui, form: &Form, spec: &Spec, id: Id, text: &mut String, wr
 
 /// Names the field for screen readers and says there what is wrong.
 pub fn describe(response: &Response, spec: &Spec, error: Option<&str>, unit: LengthUnit) {
-    let help = card::in_words(&spec.path, spec.help, unit);
     response.ctx.accesskit_node_builder(response.id, |node| {
         node.set_label(spec.name.clone());
         match error {
@@ -279,8 +278,12 @@ pub fn describe(response: &Response, spec: &Spec, error: Option<&str>, unit: Len
                 node.set_invalid(accesskit::Invalid::True);
                 node.set_description(error.to_owned());
             }
-            None if !help.is_empty() => node.set_description(help),
-            None => {}
+            None => {
+                let help = card::in_words(&spec.path, spec.help, unit);
+                if !help.is_empty() {
+                    node.set_description(help);
+                }
+            }
         }
     });
 }

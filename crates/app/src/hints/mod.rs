@@ -4,6 +4,7 @@ pub mod card;
 mod parts;
 mod pen;
 mod sketch;
+mod spreads;
 mod topics;
 
 pub use sketch::Sketch;

@@ -6,13 +6,14 @@
 use crestline_plan::limits::{self, Range};
 
 use super::Sketch;
+use super::spreads::{READING, SPREADS};
 use crate::units::LengthUnit;
 
 /// What there is to say about a quantity.
 #[derive(Debug, Clone, Copy)]
 pub struct Topic {
     /// The end of its path in the plan.
-    path: &'static str,
+    pub(super) path: &'static str,
     /// One sentence on how it is measured or found.
     pub how: &'static str,
     /// What is usual.
@@ -49,14 +50,20 @@ fn words(range: Range, unit: LengthUnit) -> String {
 /// The topic of the field at a path, if there is one.
 #[must_use]
 pub fn topic(path: &str) -> Option<&'static Topic> {
-    TOPICS.iter().find(|topic| {
+    if path == READING.path {
+        return Some(&READING);
+    }
+    // A standard deviation is another quantity than the one that it is of.
+    let is_spread = ["tolerances.", "priors."].iter().any(|head| path.starts_with(head));
+    let table = if is_spread { SPREADS } else { TOPICS };
+    table.iter().find(|topic| {
         path.strip_suffix(topic.path).is_some_and(|before| before.is_empty() || before.ends_with('.'))
     })
 }
 
-const MM: &str = "mm";
+pub(super) const MM: &str = "mm";
 
-const fn usual(low: f64, high: f64, unit: &'static str) -> Option<Range> {
+pub(super) const fn usual(low: f64, high: f64, unit: &'static str) -> Option<Range> {
     Some(Range::new(low, high, unit))
 }
 
@@ -119,12 +126,20 @@ mod tests {
         assert_eq!(topic("strings[11].action_mm.twelfth").unwrap().sketch, Some(Sketch::ActionTwelfth));
         assert_eq!(topic("instrument.relief_mm").unwrap().sketch, Some(Sketch::Relief));
         assert!(topic("title").is_none());
-        assert!(topic("priors.relief_mm").is_none(), "a prior is another quantity");
+        for (path, usual) in [("priors.relief_mm", 0.2), ("tolerances.neck.relief_mm", 0.1)] {
+            let topic = topic(path).unwrap();
+            assert!(
+                topic.usual.unwrap().high <= usual && topic.sketch.is_none(),
+                "{path} is another quantity"
+            );
+        }
+        assert_eq!(topic("tolerances.wound.measured_mass_fraction").unwrap().path, "measured_mass_fraction");
+        assert_eq!(topic("tolerances.slip.head").unwrap().path, "tolerances.slip.head");
     }
 
     #[test]
     fn usual_ranges_lie_within_the_allowed_ones() {
-        for topic in TOPICS {
+        for topic in TOPICS.iter().chain(SPREADS) {
             let (Some(usual), Some(allowed)) = (topic.usual, topic.allowed) else { continue };
             assert_eq!(usual.unit, allowed.unit, "{}", topic.path);
             assert!(

@@ -13,6 +13,7 @@ use super::steer::{self, Field};
 use crate::edit::command::Command;
 use crate::fields::form::Form;
 use crate::fields::number::{self, Spec};
+use crate::hints::card::About;
 use crate::results::figures::{cents, fixed};
 use crate::results::marks;
 use crate::theme::size;
@@ -180,6 +181,10 @@ impl Grid<'_> {
         steer::note_length(ui.ctx(), id, &text);
         let response =
             number::typed(ui, form, &spec, &shown, block::cents, |cents| place.put(readings, cents));
+        if response.has_focus() {
+            form.about =
+                Some(About { path: "readings".into(), name: spec.name.clone(), what: spec.help.into() });
+        }
         if response.gained_focus() {
             repair.entered = Some(id);
             response.scroll_to_me(None);

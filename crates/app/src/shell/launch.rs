@@ -14,6 +14,7 @@ use eframe::{NativeOptions, Renderer};
 
 use super::files;
 use super::options::{LEAST_SIZE, Options, PaintedBy};
+use super::timing::Timing;
 use super::window::Window;
 use crate::painter;
 
@@ -109,7 +110,7 @@ impl Start {
     fn window(self, ctx: &Context) -> Window {
         ctx.options_mut(|o| o.fallback_theme = Theme::Light);
         let mut window = Window::new(ctx, self.plan, self.path, &self.options);
-        window.tell_first_frame = self.options.timing.then_some(self.began);
+        window.timing = self.options.timing.then(|| Timing::new(self.began));
         if self.options.painter == PaintedBy::ProcessorInstead {
             window.view.say("There is no OpenGL here; the processor paints the window. Everything works, a little slower.");
         }

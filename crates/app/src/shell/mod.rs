@@ -13,6 +13,7 @@ pub mod path_box;
 pub mod picker;
 pub mod readings;
 pub mod recover;
+pub mod timing;
 pub mod window;
 
 #[cfg(test)]

@@ -6,7 +6,7 @@
 //! `CRESTLINE_STATE` is the folder that remembers what outlives the window, its last arrangement among it, which
 //! stands behind the other variables.
 //! `CRESTLINE_PAINTER` is `processor` to do without OpenGL.
-//! With `CRESTLINE_TIMING` set, the time to the first frame is told on standard error. What is not understood is passed over.
+//! With `CRESTLINE_TIMING` set, the time to the first frame and the steps done so far are told on standard error. What is not understood is passed over.
 
 use std::path::PathBuf;
 

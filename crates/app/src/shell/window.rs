@@ -1,13 +1,11 @@
 //! The window: one frame after the other.
 
 use std::collections::VecDeque;
-use std::io::Write;
 use std::path::PathBuf;
-use std::time::Instant;
 
 use crestline_plan::Plan;
 use eframe::egui::{
-    CentralPanel, Color32, Context, Event, Frame, Margin, Panel, RichText, Ui, ViewportCommand,
+    CentralPanel, Color32, Context, Event, Frame, Label, Margin, Panel, RichText, Ui, ViewportCommand,
 };
 
 use super::ask::{self, Question};
@@ -15,6 +13,7 @@ use super::obey;
 use super::options::Options;
 use super::picker::Picker;
 use super::readings::READINGS_ENDING;
+use super::timing::Timing;
 use super::{bar, disk, foot, recover};
 use crate::bands::page as bands_page;
 use crate::choices;
@@ -23,7 +22,7 @@ use crate::edit::desk::Desk;
 use crate::edit::history::Edit;
 use crate::fields::form::Form;
 use crate::help;
-use crate::hints::card;
+use crate::hints::card::{self, About};
 use crate::inputs::{self, Surroundings};
 use crate::keep::autosave::Autosave;
 use crate::keep::found::Found;
@@ -63,11 +62,10 @@ pub struct Window {
     pub watch: Option<Watch>,
     /// The folder for what outlives the window.
     pub state: Option<PathBuf>,
-    /// Since when the first frame has been waited for, where its time is to be told.
-    pub tell_first_frame: Option<Instant>,
+    /// What is told to those who measure the window, where they ask for it.
+    pub timing: Option<Timing>,
     inputs_width: Option<f32>,
     context: Context,
-    frames: u64,
     title: String,
 }
 
@@ -91,10 +89,9 @@ impl Window {
             recent: Recent::read(options.state.as_deref()),
             watch: None,
             state: options.state.clone(),
-            tell_first_frame: None,
+            timing: None,
             inputs_width: options.inputs_width,
             context: ctx.clone(),
-            frames: 0,
             title: String::new(),
         };
         recover::look_around(&mut window);
@@ -145,7 +142,9 @@ impl Window {
         self.keep(&ctx);
         self.guard_closing(&ctx);
         self.follow_title(&ctx);
-        self.tell_timing(&ctx);
+        if let Some(timing) = &mut self.timing {
+            timing.frame(&ctx, self.desk.steps());
+        }
     }
 
     /// Keeps unsaved work, and looks after the plan's file when the user comes back to the window.
@@ -162,19 +161,6 @@ impl Window {
         recover::ask_next(self);
         if comes_back || self.question.is_some() != asked {
             ctx.request_repaint();
-        }
-    }
-
-    /// Tells the time to the first frame at the beginning of the second, when the first has been painted.
-    fn tell_timing(&mut self, ctx: &Context) {
-        self.frames += 1;
-        let Some(began) = self.tell_first_frame else { return };
-        if self.frames == 1 {
-            ctx.request_repaint();
-        } else {
-            self.tell_first_frame = None;
-            // Whoever asked for it has closed standard error where this fails.
-            let _ = writeln!(std::io::stderr(), "first frame after {:.3} s", began.elapsed().as_secs_f64());
         }
     }
 
@@ -220,10 +206,7 @@ impl Window {
             Form::new(faults, &mut self.view.drafts, &mut self.view.going_to, palette, self.view.unit);
         inputs::show(ui, &mut form, plan, &around);
         let Form { edit, left, commands, about, .. } = form;
-        if about.is_some() && about != self.view.about {
-            self.view.about = about;
-            ui.ctx().request_repaint();
-        }
+        self.tell_about(ui.ctx(), about);
         // A path that no field has shown by now has none, but for those of fields on a page.
         self.view.going_to.take_if(|path| !path.starts_with("tolerances"));
         self.settle(ui.ctx(), edit, left);
@@ -237,7 +220,8 @@ impl Window {
         let View { drafts, going_to, string, repair, unit, .. } = &mut self.view;
         let mut form = Form::new(faults, drafts, going_to, palette, *unit);
         repair_page::show(ui, &mut form, plan, outcome, *string, repair);
-        let Form { edit, left, commands, .. } = form;
+        let Form { edit, left, commands, about, .. } = form;
+        self.tell_about(ui.ctx(), about);
         self.settle(ui.ctx(), edit, left);
         commands
     }
@@ -248,10 +232,19 @@ impl Window {
         let View { drafts, going_to, string, trust, unit, .. } = &mut self.view;
         let mut form = Form::new(faults, drafts, going_to, palette, *unit);
         bands_page::show(ui, &mut form, plan, outcome, *string, trust);
-        let Form { edit, left, commands, .. } = form;
+        let Form { edit, left, commands, about, .. } = form;
+        self.tell_about(ui.ctx(), about);
         self.view.going_to = None;
         self.settle(ui.ctx(), edit, left);
         commands
+    }
+
+    /// Takes the field with the focus for the one that the card is about.
+    fn tell_about(&mut self, ctx: &Context, about: Option<About>) {
+        if about.is_some() && about != self.view.about {
+            self.view.about = about;
+            ctx.request_repaint();
+        }
     }
 
     /// Notes what fields have changed.
@@ -274,6 +267,7 @@ impl Window {
                 help::page::show(ui, palette);
                 return;
             }
+            ui.add(Label::new(RichText::new(self.view.page.meaning()).small().color(palette.quiet)).wrap());
             let outcome = self.desk.outcome();
             commands.extend(notices::stale(
                 ui,

@@ -2,13 +2,14 @@
 
 use std::path::PathBuf;
 
-use crestline_plan::{EXAMPLES, Tolerances, kinds};
+use crestline_plan::{EXAMPLES, Scale, Tolerances, kinds};
 use crestline_sheets::Format;
 
 use super::command::Command;
 use super::desk::Desk;
 use super::spread::Spread;
 use super::strings::MOST_STRINGS;
+use crate::fields::form::place_in_words;
 use crate::view::{Group, Page, ThemeChoice, View};
 
 /// A command with the words by which it is found.
@@ -32,6 +33,7 @@ pub fn offers(desk: &Desk, view: &View, recent: &[PathBuf]) -> Vec<Offer> {
     all.extend(Page::ALL.map(Command::ShowPage));
     all.extend(changes(desk, view));
     all.extend((0..desk.plan.strings.len()).map(Command::ChooseString));
+    all.extend(fields(desk, view).into_iter().map(Command::GoTo));
     all.extend(Group::ALL.map(Command::Fold));
     all.push(Command::ShowInputs(!view.inputs));
     all.push(Command::ShowCard(!view.card));
@@ -62,6 +64,38 @@ fn changes(desk: &Desk, view: &View) -> Vec<Command> {
     possible.into_iter().chain(spread).filter(|(_, can)| *can).map(|(command, _)| command).collect()
 }
 
+/// Paths of the fields that every plan has, and those of the chosen string.
+fn fields(desk: &Desk, view: &View) -> Vec<String> {
+    const SHARED: [&str; 15] = [
+        "title",
+        "instrument.frets",
+        "instrument.relief_mm",
+        "instrument.fret_height_mm",
+        "reference_hz",
+        "saddle.thickness_mm",
+        "saddle.edge_margin_mm",
+        "saddle.travel_mm[0]",
+        "saddle.travel_mm[1]",
+        "pressing.finger_fraction",
+        "pressing.depth_mm",
+        "supports.nut",
+        "supports.saddle",
+        "slip.head",
+        "tolerances.limit_cents",
+    ];
+    const OF_STRING: [&str; 4] = ["name", "pitch", "core.diameter_mm", "action_mm.twelfth"];
+    let scale = match desk.plan.instrument.scale {
+        Scale::Single(_) => ["instrument.scale_mm"].as_slice(),
+        Scale::Fanned(_) => &["instrument.scale_mm.treble", "instrument.scale_mm.bass"],
+    };
+    let shared = scale.iter().chain(&SHARED).map(|path| (*path).to_owned());
+    // Over a zero fret nobody measures a gap at fret 1.
+    let first = (!desk.plan.instrument.zero_fret).then_some("action_mm.first");
+    let of_string = OF_STRING.into_iter().chain(first);
+    let of_string = of_string.map(|path| format!("strings[{}].{path}", view.string));
+    shared.chain(of_string).collect()
+}
+
 /// The name in the list, where no menu or heading says what the word is about.
 fn name(command: &Command, desk: &Desk) -> String {
     let plain = command.name();
@@ -70,6 +104,7 @@ fn name(command: &Command, desk: &Desk) -> String {
         Command::Undo => about(desk.history().undo_name()),
         Command::Redo => about(desk.history().redo_name()),
         Command::ShowPage(page) => format!("Go to the page {}", page.name()),
+        Command::GoTo(path) => format!("Go to the field: {}", place_in_words(path)),
         Command::Fold(group) => format!("Open or fold the group {}", group.name()),
         Command::NewFromExample(name) => format!("New from example: {}", name.replace('_', " ")),
         _ => plain,
@@ -95,7 +130,6 @@ mod tests {
             Command::ImportReadingsFrom(_) => Some("comes of a file that was chosen or dropped"),
             Command::FillReadings(_) => Some("comes of what is pasted into the table"),
             Command::TakeFitted => Some("its button stands beside the instrument that was fitted"),
-            Command::GoTo(_) => Some("leads from a message to its field"),
             Command::TakeStyle(..) => Some("its button stands in the row of the table that it takes"),
             Command::FindCommand => Some("it is the list"),
             Command::NewFromExample(_)
@@ -122,6 +156,7 @@ mod tests {
             | Command::ShowPage(_)
             | Command::ShowInputs(_)
             | Command::Fold(_)
+            | Command::GoTo(_)
             | Command::Theme(_)
             | Command::LargerText
             | Command::SmallerText
@@ -161,7 +196,7 @@ mod tests {
             Command::ShowPage(Page::Compare),
             Command::ShowInputs(false),
             Command::Fold(Group::Nut),
-            Command::GoTo("fit".into()),
+            Command::GoTo("instrument.relief_mm".into()),
             Command::Theme(ThemeChoice::Dark),
             Command::LargerText,
             Command::SmallerText,

@@ -66,7 +66,7 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
 fn supports(ui: &mut Ui, form: &mut Form, supports: &mut Supports) {
     let mut preset = Preset([supports.nut, supports.fret, supports.saddle]);
     ui.label("Supports");
-    if choice::buttons(ui, form, "supports", "Supports", &PRESETS, &mut preset) {
+    if choice::buttons(ui, form, "supports.preset", "Supports", &PRESETS, &mut preset) {
         let [nut, fret, saddle] = preset.0;
         *supports = Supports { nut, fret, saddle };
     }

@@ -203,6 +203,7 @@ fn new_from_example(window: &mut Window, name: &str) {
 fn new_from_kind(window: &mut Window, id: &str) {
     let Some(kind) = Kind::of(id) else { return };
     window.desk.replace(kind.plan(), None);
+    window.watch_file();
     fresh(window);
     window
         .view
@@ -302,7 +303,7 @@ fn ask_for_drawing(window: &mut Window, ctx: &Context, format: Format) {
 
 /// Asks for a path: by the system's dialog, or in the window where there is none.
 fn pick(window: &mut Window, ctx: &Context, purpose: Purpose) {
-    let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
+    let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.new_ending());
     window.picker = Picker::open(ctx, purpose, &suggested);
     if window.picker.is_none() {
         ask_in_window(window, purpose);
@@ -318,7 +319,7 @@ pub fn take_answer(window: &mut Window, ctx: &Context) {
     match answer {
         Answer::Path(path) => {
             // The dialog has asked about a file that exists, but not about one that gets its ending here.
-            let whole = with_ending(path.clone(), purpose.ending());
+            let whole = with_ending(path.clone(), purpose.new_ending());
             let reply =
                 if whole == path { Reply::Use(purpose, path) } else { Reply::Propose(purpose, whole) };
             take_reply(window, ctx, reply);
@@ -330,7 +331,7 @@ pub fn take_answer(window: &mut Window, ctx: &Context) {
 
 /// Asks for a path by the window's own field.
 fn ask_in_window(window: &mut Window, purpose: Purpose) {
-    let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.ending());
+    let suggested = files::suggested(window.desk.path(), &window.desk.plan.title, purpose.new_ending());
     window.question = Some(Question::Path(PathBox::new(purpose, &suggested)));
 }
 
@@ -366,6 +367,7 @@ fn without_saving(window: &mut Window, ctx: &Context, next: Command) {
             ctx.send_viewport_cmd(ViewportCommand::Close);
         }
         Command::NewFromExample(name) => new_from_example(window, name),
+        Command::NewFromKind(id) => new_from_kind(window, id),
         Command::Open => pick(window, ctx, Purpose::Open),
         Command::OpenFile(path) => open(window, &path),
         other => obey(window, ctx, other),

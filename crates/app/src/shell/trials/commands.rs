@@ -1,10 +1,13 @@
 //! Every command by its name and by its key.
 
+use crestline_plan::{example, read};
 use eframe::egui::accesskit::Role;
 use eframe::egui::{Key, Modifiers};
 use egui_kittest::kittest::{NodeT, Queryable};
 
-use super::{Opened, open, steel_six};
+use super::{Opened, open, order, steel_six};
+use crate::edit::catalogue::offers;
+use crate::edit::command::Command;
 use crate::view::Page;
 
 fn find(opened: &mut Opened, text: &str) {
@@ -46,6 +49,30 @@ fn a_command_is_found_by_part_of_its_name_and_done_without_a_mouse() {
     assert_eq!(opened.query_all_by_label_contains("No command has this").count(), 1);
     press(&mut opened, Key::Enter);
     assert!(opened.state().question.is_some(), "Enter on nothing does nothing");
+}
+
+/// Whatever page is shown and however many groups are folded away.
+#[test]
+fn every_field_that_the_list_offers_is_gone_to() {
+    for name in ["steel_six", "fanned_eight"] {
+        let plan = read(example(name).unwrap().text).unwrap();
+        let mut opened = open(plan, None, None);
+        order(&mut opened, Command::ShowInputs(false));
+        order(&mut opened, Command::ChooseString(2));
+        let window = opened.state();
+        let offered = offers(&window.desk, &window.view, &[]);
+        let fields: Vec<_> =
+            offered.into_iter().filter(|offer| matches!(offer.command, Command::GoTo(_))).collect();
+        assert!(fields.len() > 15, "{}", fields.len());
+        let mut reached = std::collections::BTreeSet::new();
+        for offer in &fields {
+            order(&mut opened, offer.command.clone());
+            let focused = opened.query_all_by(|node| node.is_focused() && node.role() == Role::TextInput);
+            let label = focused.filter_map(|node| node.accesskit_node().label()).next();
+            assert!(reached.insert(label.clone()), "{}: {label:?} has the focus", offer.name);
+        }
+        assert!(!reached.contains(&None));
+    }
 }
 
 #[test]

@@ -112,6 +112,25 @@ fn a_plan_that_was_in_no_file_comes_back_and_so_does_one_that_is_opened_later() 
 }
 
 #[test]
+fn another_plan_takes_the_place_of_changes_that_are_given_up() {
+    for command in [Command::NewFromKind("mandolin"), Command::NewFromExample("mandolin")] {
+        let (_folder, path) = saved();
+        let mut opened = open(steel_six(), Some(&path), None);
+        change_relief(&mut opened, 0.4);
+        order(&mut opened, command.clone());
+        press(&mut opened, "Do not save");
+        assert!(opened.state().question.is_none(), "{command:?} asks again");
+        let desk = &opened.state().desk;
+        assert_eq!((desk.path(), desk.is_changed()), (None, false));
+        assert_eq!(desk.plan.strings.len(), 8, "four pairs");
+        // The file of the plan before is another's business now.
+        written_elsewhere(&path, 0.3);
+        come_back(&mut opened);
+        assert!(opened.state().question.is_none());
+    }
+}
+
+#[test]
 fn changes_that_are_given_up_leave_no_copy() {
     let (folder, path) = saved();
     let mut opened = open(steel_six(), Some(&path), None);

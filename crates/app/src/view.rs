@@ -71,7 +71,9 @@ impl Page {
             Self::FrettedNotes => "How far each fretted note is off, on every string and at every fret.",
             Self::Compare => "What each way of making saddle and nut can reach, and figures for setting out.",
             Self::HowSure => "How far the setbacks can be trusted, and what to measure to trust them more.",
-            Self::Sheets => "The drawing as it prints, at full size.",
+            Self::Sheets => {
+                "The drawing as it prints, at full size. Measure the check line of a print before you cut."
+            }
             Self::Diagnosis => "What tuner readings say about an instrument that exists.",
             Self::Help => "What the program computes, how far it can be trusted, and where it comes from.",
         }

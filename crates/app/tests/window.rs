@@ -12,7 +12,7 @@ use crestline_window::shell::obey::take_reply;
 use crestline_window::shell::picker::Purpose;
 use crestline_window::view::{Group, Page};
 use eframe::egui::accesskit::Role;
-use eframe::egui::{Key, Modifiers};
+use eframe::egui::{Key, Modifiers, Vec2};
 use egui_kittest::kittest::{NodeT, Queryable};
 
 fn answer(opened: &mut Opened, reply: Reply) {
@@ -45,6 +45,26 @@ fn every_widget_has_a_name_with_all_groups_open_and_for_every_string() {
     for string in 0..6 {
         order(&mut opened, Command::ChooseString(string));
         opened.check_accessibility();
+    }
+}
+
+/// 640 points are a window of 1280 pixels with text at twice its size.
+#[test]
+fn the_switch_of_units_stays_in_the_bar_whatever_the_width() {
+    let mut opened = open(steel_six(), None);
+    for width in (640..=1600).step_by(80) {
+        let width = width as f32;
+        for page in [Page::Saddle, Page::FrettedNotes] {
+            opened.set_size(Vec2::new(width, 400.0));
+            order(&mut opened, Command::ShowPage(page));
+            let switch = opened.get_by_label("Unit of lengths: millimetres").rect();
+            let tabs = opened.query_all_by(|node| node.role() == Role::Tab);
+            let behind = tabs.map(|tab| tab.rect().right()).fold(0.0, f32::max);
+            assert!(
+                switch.right() <= width && switch.left() >= behind,
+                "{width}: {switch:?}, tabs to {behind}"
+            );
+        }
     }
 }
 

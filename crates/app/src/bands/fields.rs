@@ -263,27 +263,47 @@ pub fn edit(plan: &mut Plan, fields: impl FnOnce(&mut Tolerances)) {
 /// The limit for the chance, and how the sample is drawn.
 pub fn sample(ui: &mut Ui, form: &mut Form, plan: &mut Plan) {
     edit(plan, |tolerances| {
-        ui.horizontal_wrapped(|ui| {
-            ui.label("Limit");
-            let help = "How far from true a note may be and still count as in tune.";
-            let limit = Spec::new("tolerances.limit_cents", "Limit, cents", 0.5, help).width(NARROW);
-            number::number(ui, form, &limit, &mut tolerances.limit_cents);
-            unit(ui, form, "cents");
-            ui.add_space(size::GAP);
-            ui.label("Instruments");
-            let help = "How many instruments are drawn: four times as many halve the sample's own scatter.";
-            let samples = Spec::new("tolerances.samples", "Number of instruments", 64.0, help).width(NARROW);
-            number::whole(ui, form, &samples, &mut tolerances.samples);
-            ui.add_space(size::GAP);
-            ui.label("Seed");
-            let help = "The same seed draws the same instruments on every machine.";
-            let seed = Spec::new("tolerances.seed", "Seed of the draws", 1.0, help).width(NARROW);
-            number::whole(ui, form, &seed, &mut tolerances.seed);
-        });
+        if ui.available_width() >= IN_A_ROW {
+            ui.horizontal(|ui| {
+                limit(ui, form, tolerances);
+                ui.add_space(size::GAP);
+                draws(ui, form, tolerances);
+                ui.add_space(size::GAP);
+                seed(ui, form, tolerances);
+            });
+        } else {
+            ui.horizontal(|ui| limit(ui, form, tolerances));
+            ui.horizontal(|ui| draws(ui, form, tolerances));
+            ui.horizontal(|ui| seed(ui, form, tolerances));
+        }
     });
     faults(ui, form, &["tolerances.limit_cents", "tolerances.samples", "tolerances.seed"]);
 }
 
+fn limit(ui: &mut Ui, form: &mut Form, tolerances: &mut Tolerances) {
+    ui.label("Limit");
+    let help = "How far from true a note may be and still count as in tune.";
+    let limit = Spec::new("tolerances.limit_cents", "Limit, cents", 0.5, help).width(NARROW);
+    number::number(ui, form, &limit, &mut tolerances.limit_cents);
+    unit(ui, form, "cents");
+}
+
+fn draws(ui: &mut Ui, form: &mut Form, tolerances: &mut Tolerances) {
+    ui.label("Instruments");
+    let help = "How many instruments are drawn: four times as many halve the sample's own scatter.";
+    let samples = Spec::new("tolerances.samples", "Number of instruments", 64.0, help).width(NARROW);
+    number::whole(ui, form, &samples, &mut tolerances.samples);
+}
+
+fn seed(ui: &mut Ui, form: &mut Form, tolerances: &mut Tolerances) {
+    ui.label("Seed");
+    let help = "The same seed draws the same instruments on every machine.";
+    let seed = Spec::new("tolerances.seed", "Seed of the draws", 1.0, help).width(NARROW);
+    number::whole(ui, form, &seed, &mut tolerances.seed);
+}
+
+/// Room in which the three fields of the sample stand in one row, points.
+const IN_A_ROW: f32 = 430.0;
 /// Width of a field in a table.
 const NARROW: f32 = 60.0;
 /// Least width of a column: a field, which would else be cut to what a table gives it, and its margins.

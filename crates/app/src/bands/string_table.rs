@@ -3,7 +3,7 @@
 use std::borrow::Cow;
 
 use crestline_plan::{Band, StringUncertainty, Uncertainty};
-use eframe::egui::{RichText, ScrollArea, Ui};
+use eframe::egui::{RichText, Ui};
 
 use super::headline::per_cent;
 use crate::fields::parse;
@@ -29,12 +29,7 @@ pub fn show(ui: &mut Ui, palette: &Palette, uncertainty: &Uncertainty, chosen: u
     let columns = columns(uncertainty, has_nut);
     let rows: Vec<Row> =
         uncertainty.strings.iter().map(|string| row(&columns, string, has_nut, unit)).collect();
-    let mut clicked = None;
-    ScrollArea::horizontal().id_salt("bands").auto_shrink([false, true]).show(ui, |ui| {
-        ui.set_min_width(LEAST_WIDTH);
-        clicked = table::show(ui, palette, &columns, &rows, chosen);
-    });
-    clicked
+    table::sideways(ui, "bands", LEAST_WIDTH, |ui| table::show(ui, palette, &columns, &rows, chosen))
 }
 
 fn columns(uncertainty: &Uncertainty, has_nut: bool) -> Vec<Column> {

@@ -17,6 +17,9 @@ use crate::units::LengthUnit;
 const SLIP_MM: f64 = 0.1;
 const SLIP_INCHES: f64 = 0.005;
 
+/// The least width in which the figures of a table stand apart, points.
+const LEAST_WIDTH: f32 = 580.0;
+
 fn column(head: impl Into<Cow<'static, str>>) -> Column {
     Column::figures(head, 1.0)
 }
@@ -37,13 +40,13 @@ pub fn show(
     ui.label(RichText::new("Setting out in steps").heading());
     steps(ui, step);
     cost(ui, palette, figures);
-    ui.push_id("rounded", |ui| chosen = rounded(ui, palette, figures, string));
+    table::sideways(ui, "rounded", LEAST_WIDTH, |ui| chosen = rounded(ui, palette, figures, string));
     ui.add_space(size::WIDE_GAP);
     ui.label(RichText::new(format!("Crests and slot from {}", datum_words(figures.bench.datum))).heading());
     let words = "x along the centre line away from the nut, y toward string 1, z above the crowns of the first and \
                  last fret. The break is where the crest stands on the blank's top, from its face on the nut's side.";
     ui.label(RichText::new(words).small().color(palette.quiet));
-    ui.push_id("bench", |ui| {
+    table::sideways(ui, "bench", LEAST_WIDTH, |ui| {
         let clicked = bench(ui, palette, figures, string);
         chosen = chosen.or(clicked);
     });

@@ -6,6 +6,7 @@ use eframe::egui::{Button, Grid, RichText, Sense, Stroke, Ui, Vec2, WidgetInfo, 
 use crate::edit::command::Command;
 use crate::edit::desk::Outcome;
 use crate::results::figures::fixed;
+use crate::results::table;
 use crate::theme::{Palette, size};
 
 /// Length of the longest bar, points.
@@ -24,7 +25,6 @@ pub fn show(
     comparison: &Comparison,
     working: bool,
 ) -> Vec<Command> {
-    let mut commands = Vec::new();
     ui.label(RichText::new("What each way to make it leaves of the errors").heading());
     let words = "All strings and the frets of the fit. Differences of a cent or two are hard to hear: \
                  weigh them against the work.";
@@ -34,6 +34,11 @@ pub fn show(
             .small()
             .color(palette.quiet),
     );
+    table::sideways(ui, "styles", 0.0, |ui| rows(ui, palette, outcome, comparison))
+}
+
+fn rows(ui: &mut Ui, palette: &Palette, outcome: &Outcome, comparison: &Comparison) -> Vec<Command> {
+    let mut commands = Vec::new();
     let most = comparison.rows.iter().map(|row| row.max_cents).fold(1.0, f64::max);
     Grid::new("styles").striped(true).min_row_height(ROW).spacing([12.0, 3.0]).show(ui, |ui| {
         for head in ["Saddle", "Nut", "RMS\ncents", "Worst\ncents", "string,\nfret", "", "Fits", ""] {

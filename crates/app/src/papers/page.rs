@@ -15,6 +15,10 @@ use crate::theme::{Palette, size};
 
 /// Room left around a sheet that is shown whole, points.
 const ROUND_ABOUT: f32 = 12.0;
+/// The least room in which the sheet stands below its buttons without being scrolled to, points.
+const LEAST_ROOM: Vec2 = Vec2::new(500.0, 420.0);
+/// Height of the part with the sheet where it is scrolled to, points.
+const SCROLLED_SHEET: f32 = 340.0;
 
 /// The page.
 pub fn show(
@@ -30,21 +34,29 @@ pub fn show(
         .inner_margin(Margin::symmetric(8, 6));
     frame.show(ui, |ui| {
         ui.set_min_size(ui.available_size());
-        ui.horizontal_wrapped(|ui| {
-            ui.label(RichText::new("Sheets as they print").heading());
-            ui.label(
-                RichText::new("True size on paper. Measure the check line of a print before you cut.")
-                    .small()
-                    .color(palette.quiet),
-            );
+        let room = ui.available_size();
+        if room.x >= LEAST_ROOM.x && room.y >= LEAST_ROOM.y {
+            head(ui, outcome, preview, &mut commands);
+            sheet(ui, palette, outcome, preview);
+            return;
+        }
+        // The sheet keeps its height and is scrolled to.
+        ScrollArea::vertical().id_salt("page").auto_shrink([false, false]).show(ui, |ui| {
+            head(ui, outcome, preview, &mut commands);
+            let part = Vec2::new(ui.available_width(), SCROLLED_SHEET);
+            ui.allocate_ui(part, |ui| sheet(ui, palette, outcome, preview));
         });
-        writing(ui, &mut commands);
-        parts(ui, outcome, preview);
-        looking(ui, outcome, preview);
-        ui.add_space(size::GAP);
-        sheet(ui, palette, outcome, preview);
     });
     commands
+}
+
+/// Everything above the sheet.
+fn head(ui: &mut Ui, outcome: &Outcome, preview: &mut Preview, commands: &mut Vec<Command>) {
+    ui.label(RichText::new("Sheets as they print").heading());
+    writing(ui, commands);
+    parts(ui, outcome, preview);
+    looking(ui, outcome, preview);
+    ui.add_space(size::GAP);
 }
 
 /// Buttons that write files.

@@ -1,7 +1,9 @@
 //! The page `Saddle`: plan view, errors and their parts, schedule and notices.
 
 use crestline_plan::estimate_notes;
-use eframe::egui::{Align, Button, Frame, Layout, Margin, Panel, RichText, ScrollArea, Stroke, Ui, Vec2};
+use eframe::egui::{
+    Align, Button, Frame, Label, Layout, Margin, Panel, RichText, ScrollArea, Stroke, Ui, Vec2,
+};
 
 use super::error_plot::Shown;
 use super::{error_plot, layout_plot, notices, nut_plot, schedule, split_plot, table};
@@ -86,7 +88,6 @@ fn title(ui: &mut Ui, text: &str) {
 fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut View) -> Vec<Command> {
     let mut commands = Vec::new();
     ui.horizontal(|ui| {
-        title(ui, "Saddle in plan");
         ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
             let whole = view.saddle_camera.shows_whole() && view.nut_camera.shows_whole();
             let button = Button::new(RichText::new("Show all").small());
@@ -102,6 +103,10 @@ fn plan_view(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &m
                     view.saddle_camera.zoom_later(steps);
                 }
             }
+            // Last, so that it ends before the buttons where there is little room.
+            ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
+                ui.add(Label::new(RichText::new("Saddle in plan").heading()).truncate());
+            });
         });
     });
     let setbacks = LengthUnit::of(ui.ctx()).named("setbacks");
@@ -142,12 +147,10 @@ fn curves(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &mut 
 /// The schedule, which scrolls sideways where it is too narrow, and what is to be said below it.
 fn bottom(ui: &mut Ui, palette: &'static Palette, outcome: &Outcome, view: &View) -> Vec<Command> {
     let mut commands = Vec::new();
-    ScrollArea::horizontal().id_salt("schedule").auto_shrink([false, true]).show(ui, |ui| {
-        ui.set_min_width(schedule::LEAST_WIDTH);
-        if let Some(string) = schedule::show(ui, palette, outcome, view.string) {
-            commands.push(Command::ChooseString(string));
-        }
+    let clicked = table::sideways(ui, "schedule", schedule::LEAST_WIDTH, |ui| {
+        schedule::show(ui, palette, outcome, view.string)
     });
+    commands.extend(clicked.map(Command::ChooseString));
     schedule::foot(ui, palette, outcome);
     let mut said = outcome.solution.report.notices.clone();
     said.extend(estimate_notes(&outcome.plan));

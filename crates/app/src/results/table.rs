@@ -2,7 +2,9 @@
 
 use std::borrow::Cow;
 
-use eframe::egui::{Align2, Color32, Rect, Sense, Stroke, StrokeKind, Ui, Vec2, WidgetInfo, accesskit, pos2};
+use eframe::egui::{
+    Align2, Color32, Rect, ScrollArea, Sense, Stroke, StrokeKind, Ui, Vec2, WidgetInfo, accesskit, pos2,
+};
 
 use super::marks;
 use crate::theme::{Palette, size};
@@ -60,6 +62,16 @@ pub struct Row {
     pub cells: Vec<Cell>,
     /// The row in words.
     pub words: String,
+}
+
+/// Contents that scroll sideways where there is less room than `least`, points.
+pub fn sideways<R>(ui: &mut Ui, name: &str, least: f32, contents: impl FnOnce(&mut Ui) -> R) -> R {
+    let area = ScrollArea::horizontal().id_salt(name).auto_shrink([false, true]);
+    let shown = area.show(ui, |ui| {
+        ui.set_min_width(least);
+        contents(ui)
+    });
+    shown.inner
 }
 
 /// The table; says which row has been clicked.

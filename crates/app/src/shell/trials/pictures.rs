@@ -1,4 +1,4 @@
-//! A picture of every page, light and dark, painted by the processor and compared with the one that is kept.
+//! A picture of every page, light, dark and with text at twice its size, painted by the processor and compared with the one that is kept.
 //!
 //! `CRESTLINE_UPDATE_PICTURES=1 cargo test -p crestline pictures` makes them anew; look at them before they are
 //! committed.
@@ -45,7 +45,22 @@ impl TestRenderer for Keeper {
     }
 }
 
-fn picture(page: Page, theme: &'static str) -> Canvas {
+/// How a page is looked at.
+#[derive(Debug, Clone, Copy, PartialEq)]
+struct Look {
+    theme: &'static str,
+    /// Scale of all text.
+    zoom: f32,
+}
+
+/// Light, dark, and with text at twice its size.
+const LOOKS: [Look; 3] = [
+    Look { theme: "light", zoom: 1.0 },
+    Look { theme: "dark", zoom: 1.0 },
+    Look { theme: "light", zoom: 2.0 },
+];
+
+fn picture(page: Page, Look { theme, zoom }: Look) -> Canvas {
     let name = if page == Page::Diagnosis { "steel_six_sharp" } else { "steel_six" };
     let plan = read(example(name).unwrap().text).unwrap();
     let options = Options::read(|variable| match variable {
@@ -53,9 +68,10 @@ fn picture(page: Page, theme: &'static str) -> Canvas {
         "CRESTLINE_THEME" => Some(theme.to_owned()),
         _ => None,
     });
+    let options = Options { zoom, ..options };
     let keeper = Keeper::default();
     let builder = Harness::builder()
-        .with_size(SIZE.map(|side| side as f32))
+        .with_size(SIZE.map(|side| side as f32 / zoom))
         .with_max_steps(FRAMES)
         .with_theme(if theme == "dark" { Theme::Dark } else { Theme::Light })
         .renderer(keeper.clone());
@@ -66,7 +82,7 @@ fn picture(page: Page, theme: &'static str) -> Canvas {
     let ground = Palette::of(opened.ctx.theme()).ground;
     let blank = Canvas::new(SIZE[0], SIZE[1], ground);
     let shapes = opened.output().shapes.clone();
-    keeper.0.borrow().paint(&opened.ctx, shapes, 1.0, blank)
+    keeper.0.borrow().paint(&opened.ctx, shapes, zoom, blank)
 }
 
 /// Waits for the work that a page does beside the window and that its picture shows the end of.
@@ -89,8 +105,9 @@ fn come_to_an_end(opened: &mut Harness<'_, Window>, page: Page) {
     panic!("the page {} never came to an end", page.name());
 }
 
-fn kept(page: Page, theme: &str) -> PathBuf {
-    let name = format!("{}-{theme}.png", Options::page_word(page));
+fn kept(page: Page, Look { theme, zoom }: Look) -> PathBuf {
+    let zoom = if zoom == 1.0 { String::new() } else { format!("-{:.0}", 100.0 * zoom) };
+    let name = format!("{}-{theme}{zoom}.png", Options::page_word(page));
     Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/pictures").join(name)
 }
 
@@ -130,8 +147,8 @@ fn pages_look_as_they_did() {
     let update = std::env::var_os("CRESTLINE_UPDATE_PICTURES").is_some();
     let mut changed = Vec::new();
     for page in Page::ALL {
-        for theme in ["light", "dark"] {
-            let (now, path) = (picture(page, theme), kept(page, theme));
+        for look in LOOKS {
+            let (now, path) = (picture(page, look), kept(page, look));
             if update {
                 write(&path, &now);
                 continue;
@@ -160,7 +177,7 @@ fn pages_look_as_they_did() {
 /// The comparison sees a word that moves by one pixel.
 #[test]
 fn a_small_change_is_seen() {
-    let now = picture(Page::Help, "light");
+    let now = picture(Page::Help, LOOKS[0]);
     let mut moved = now.clone();
     for y in 100..120 {
         let row = moved.row(y, [0, SIZE[0]]);

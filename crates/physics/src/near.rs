@@ -27,7 +27,8 @@ const TWELFTH: usize = 11;
 pub struct NearFit {
     /// What is made small.
     pub rule: FitRule,
-    /// Indices of the frets that count, fret 1 is 0.
+    /// Indices of the frets that count, fret 1 is 0. With the rule `Twelfth` they place the nut edge, and fret 12 the crest,
+    /// whether it is among them or not.
     pub frets: Vec<usize>,
     /// Whether the nut edge is free too. With the rule `Minimax` it keeps its place all the same.
     pub nut_moves: bool,
@@ -56,7 +57,7 @@ impl NearFit {
             FitRule::LeastSquares if self.nut_moves => self.both(string, &frets, start),
             FitRule::LeastSquares => self.crest(string, &frets, start, least_squares),
             FitRule::Minimax => self.crest(string, &frets, start, least_worst),
-            FitRule::Twelfth if !frets.contains(&TWELFTH) => Ok(start),
+            FitRule::Twelfth if !sounds(&TWELFTH) => Ok(start),
             FitRule::Twelfth => {
                 let nut = if self.nut_moves { self.both(string, &frets, start)? } else { start };
                 self.crest(string, &[TWELFTH], nut, least_squares)

@@ -38,8 +38,20 @@ fn solving(criterion: &mut Criterion) {
 }
 
 fn comparing(criterion: &mut Criterion) {
-    let checked = plan(6, 20, FitRule::LeastSquares);
-    criterion.bench_function("compare, 6 strings", |bench| bench.iter(|| compare(&checked).unwrap()));
+    let mut group = criterion.benchmark_group("compare");
+    for strings in [1, 3, 6, 12] {
+        let checked = plan(strings, 20, FitRule::LeastSquares);
+        group.bench_with_input(BenchmarkId::new("strings", strings), &checked, |bench, checked| {
+            bench.iter(|| compare(checked).unwrap());
+        });
+    }
+    for frets in [12, 24, 36] {
+        let checked = plan(6, frets, FitRule::LeastSquares);
+        group.bench_with_input(BenchmarkId::new("frets", frets), &checked, |bench, checked| {
+            bench.iter(|| compare(checked).unwrap());
+        });
+    }
+    group.finish();
 }
 
 criterion_group!(benches, solving, comparing);

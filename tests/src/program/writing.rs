@@ -16,7 +16,7 @@ use super::{assert_quiet_end, example, plan_in, program};
 const READINGS: &str = "1,12,fretted,4.0\n1,7,fretted,2.5\n2,12,fretted,5.5\n6,12,fretted,7.0\n";
 
 /// Commands that print their result; PLAN and READINGS stand for files.
-const PRINTING: [&[&str]; 18] = [
+const PRINTING: [&[&str]; 22] = [
     &["solve", "PLAN"],
     &["solve", "PLAN", "--frets"],
     &["solve", "PLAN", "--json"],
@@ -26,10 +26,14 @@ const PRINTING: [&[&str]; 18] = [
     &["compare", "PLAN", "--json"],
     &["diagnose", "PLAN", "--readings", "READINGS"],
     &["diagnose", "PLAN", "--readings", "READINGS", "--json"],
+    &["supports", "PLAN", "--readings", "READINGS"],
+    &["supports", "PLAN", "--readings", "READINGS", "--json"],
     &["bench", "PLAN"],
     &["bench", "PLAN", "--json"],
     &["workshop", "PLAN"],
     &["workshop", "PLAN", "--json"],
+    &["uncertainty", "PLAN", "--samples", "64"],
+    &["uncertainty", "PLAN", "--samples", "64", "--json"],
     &["sheet", "PLAN", "-o", "-", "--format", "svg"],
     &["sheet", "PLAN", "-o", "-", "--format", "pdf"],
     &["schedule", "PLAN"],
@@ -38,12 +42,13 @@ const PRINTING: [&[&str]; 18] = [
 ];
 
 /// Commands that write a file, with the ending of its name.
-const WRITING: [(&[&str], &str); 5] = [
+const WRITING: [(&[&str], &str); 6] = [
     (&["sheet", "PLAN"], "svg"),
     (&["sheet", "PLAN"], "pdf"),
     (&["sheet", "PLAN"], "dxf"),
     (&["schedule", "PLAN"], "csv"),
     (&["example", "fanned_eight"], "json"),
+    (&["supports", "PLAN", "--readings", "READINGS"], "json"),
 ];
 
 /// A folder with a plan and a table of readings.

@@ -1,13 +1,12 @@
 //! Modes of stiff strings against a table worked out in many digits from the boundary determinant
 //! (`tests/reference/modes.py`, which shares no code with this crate).
-#![allow(clippy::unwrap_used, missing_docs)]
 
 use crestline_physics::PhysicsError;
 use crestline_physics::mode::{
     Ends, SpeakingString, bending_length_mm, closed_form_ratio, inharmonicity, mode_ratio,
 };
 
-const TABLE: &str = include_str!("../../../tests/reference/modes.csv");
+const TABLE: &str = include_str!("../../../../tests/reference/modes.csv");
 /// The root is found to 1e-15 of itself; a slack bar's determinant loses two or three digits more.
 const RELATIVE: f64 = 2e-13;
 /// The tension goes with the square of the frequency, and stiff ends take a large part of it.

@@ -2,9 +2,6 @@
 //! parts of every note's error, and setbacks of every rule and style, each at the functions of this crate.
 //!
 //! Every seventh of its plans is read here, enough for all rules, styles and necks; the tests of the whole read them all.
-#![allow(clippy::unwrap_used, missing_docs)]
-
-mod read;
 
 use crestline_physics::fit::{FitRule, FitString, NutShape, SaddleShape, built_setbacks, ideal_setbacks};
 use crestline_physics::mode::{bending_length_mm, inharmonicity};
@@ -12,7 +9,7 @@ use crestline_physics::near::NearFit;
 use crestline_physics::{Contacts, Note};
 use serde_json::Value;
 
-use read::{Instrument, number, numbers, results};
+use super::read::{Instrument, number, numbers, results};
 
 /// The results hold twelve digits.
 const RELATIVE: f64 = 1e-9;

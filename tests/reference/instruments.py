@@ -1,4 +1,4 @@
-"""Synthetic instruments with tuner readings and a hidden truth: `python3 instruments.py [FIRST LAST]` (default 1 300).
+"""Synthetic instruments with tuner readings and a hidden truth: `python3 instruments.py [FIRST LAST]` (default 601 1200).
 
 Writes instruments/FFF-LLL.json, fifty to a file, an array with one object a line. Each comes from its own
 random sequence, so that a file made again is the same. See "Synthetic instruments" in README.md.
@@ -12,10 +12,13 @@ import sys
 import numpy as np
 from scipy.special import ndtr, ndtri
 
+import detectability
 import faults
 import neck
 import nominal
 import plans
+from detectability import (ACTION_MM, AS_BUILT_MM, CREST_MM, NOISE_CENTS, NUT_MM, PRESS_FACTOR, RELIEF_MM, SLOT_MM,
+                           STIFFNESS)
 
 SEED = 20240903
 HERE = pathlib.Path(__file__).parent
@@ -24,10 +27,9 @@ PER_FILE = 50
 KINDS = ["sound", "saddle", "nut_slots", "fret", "sound", "dead_string", "mixture", "saddle", "sound", "fret", "nut_slots",
          "sound", "dead_string", "saddle", "mixture"]
 FRET_SETS = [[1, 2, 3, 5, 7, 9, 10, 12, 14, 15]] * 4 + [[1, 2, 3, 5, 7, 9, 12, 14]]
-# Standard deviations of what a repairer cannot know.
-CREST_MM, AS_BUILT_MM, NUT_MM, STIFFNESS, SLOT_MM, ACTION_MM, RELIEF_MM = 2.0, 0.3, 0.5, 0.15, 0.1, 0.15, 0.1
-PRESS_FACTOR, FRET_MM, ROUGH_FRET_MM = 1.6, 0.03, 0.08
-NOISE_CENTS, TUNING_CENTS = 1.0, 0.5
+# Frets lie closer than a repairer may count on, but for mixtures; strings are tuned before they are read.
+FRET_MM, ROUGH_FRET_MM = 0.03, 0.08
+TUNING_CENTS = 0.5
 SOUND_CENTS = 1.0
 # So far from the best nut edge (on a 648 mm scale) the saddle alone still brings an instrument near SOUND_CENTS.
 GOOD_NUT_MM = 0.3
@@ -169,6 +171,7 @@ def attempt(draw, number, kind):
     plan["readings"] = readings(draw, true, tuning, truth, kind == "dead_string" or mixed and draw.chance(0.2))
     if draw.chance(0.5):
         plan["as_built"] = {"saddle_setback_mm": near(draw, crest), "nut_setback_mm": near(draw, nut)}
+    detectability.add(plan, hidden, frets, nut, crest, truth)
     truth["strings"] = cures(true, hidden, tuning, errors)
     return {"origin": f"tests/reference/instruments.py, seed {SEED}, instrument {number}", "plan": plan, "truth": truth}
 
@@ -249,7 +252,7 @@ def tidy(value, key=""):
 
 def main():
     """Writes the files that hold instruments FIRST to LAST."""
-    first, last = (int(a) for a in sys.argv[1:3]) if len(sys.argv) > 2 else (1, 300)
+    first, last = (int(a) for a in sys.argv[1:3]) if len(sys.argv) > 2 else (601, 1200)
     os.makedirs(HERE / "instruments", exist_ok=True)
     for start in range(first, last + 1, PER_FILE):
         stop = min(start + PER_FILE - 1, last)

@@ -12,6 +12,7 @@ import sys
 import numpy as np
 from scipy.optimize import least_squares
 
+import detectability
 import faults
 import fretting
 import neck
@@ -22,6 +23,10 @@ HERE = pathlib.Path(__file__).parent / "instruments"
 ROUNDED_CENTS = 0.02
 # An optimum made from rounded figures.
 ROUNDED_MM = 0.01
+# Expected statistics of faults are linear: what draws of whole instruments may differ by in their mean and in their spread of 1, for the
+# curvature of the model and three standard deviations of so many draws (0.21 and 0.15).
+DRAWS = 200
+DRAWN_Z = 0.25
 # The finite elements' own error.
 ELEMENTS_CENTS = 1e-3
 
@@ -88,6 +93,65 @@ def second_mode_by_elements():
                for e in (0.003, 0.01, 0.03) for left, right in ((0.0, 0.0), (0.5, 0.5), (1.0, 1.0), (0.0, 1.0)))
 
 
+def statistics_by_draws(item, rng):
+    """What the test of an instrument's fault makes of drawn instruments with it, less what is expected."""
+    truth, plan = item["truth"], item["plan"]
+    names = ("axial_factor", "bending_factor", "slot_height_mm", "action_mm", "nut_setback_mm", "crest_setback_mm")
+    own = {name: np.array([string[name] for string in truth["strings"]]) for name in names}
+    nut, crest = own.pop("nut_setback_mm"), own.pop("crest_setback_mm")
+    shared = {"press_depth_mm": truth["press_depth_mm"], "relief_mm": truth["relief_mm"],
+              "fret_shift_mm": np.array(truth["fret_shift_mm"])}
+    state = detectability.State(plan, own | shared, truth["measured_frets"], nut, crest)
+    scatter = detectability.Scatter(state, truth)
+    if truth["bad_fret"]:
+        without, slot, stated = detectability.without_shift(state, truth["bad_fret"]["fret"]), None, truth["bad_fret"]
+        here = state.sounds()
+    else:
+        stated = truth["high_slots"][0]
+        slot = stated["string"] - 1
+        without = detectability.with_slot_right(state, slot)
+        here = scatter.of(state.sounds(), slot)
+    calm = without.sounds()
+    change = (here - (calm if slot is None else scatter.of(calm, slot))).ravel()
+    covariance = scatter.without_fault(slot)
+    pull = np.linalg.solve(covariance, change) / detectability.expected(change, covariance)
+    found = []
+    while len(found) < DRAWS:
+        try:
+            found.append(pull @ (drawn_readings(state, scatter, truth, slot, rng) - calm).ravel() - stated["expected_z"])
+        except (faults.Unfit, ValueError):
+            continue
+    return np.array(found)
+
+
+def drawn_readings(state, scatter, truth, slot, rng):
+    """Readings of an instrument like this one, all that is not known drawn anew; a tested slot stands as it is."""
+    other = state
+    for name in (*detectability.OWN, "press_depth_mm", "relief_mm", "fret_shift_mm"):
+        by = rng.standard_normal(np.shape(state.figures[name]))
+        if name == "slot_height_mm":
+            by[scatter.high] *= detectability.HIGH_SLOT_MM / detectability.SLOT_MM
+            if slot is not None:
+                by[slot] = 0.0
+        if name == "relief_mm" and state.figures[name] + by * detectability.RELIEF_MM < 0.0:
+            raise faults.Unfit("a neck bent backward")
+        other = other.moved(name, by)
+    sounds = other.sounds()
+    tuned = detectability.TUNING_CENTS * rng.standard_normal((len(sounds), 1)) * np.ones(sounds.shape)
+    tuned[:, -2] = 0.0
+    noise = np.sqrt(scatter.noise(truth, state.frets, sounds.shape))
+    return sounds + tuned + noise * rng.standard_normal(sounds.shape)
+
+
+def statistics(items):
+    """Largest difference of a mean from what is stated, and of a spread from 1, over some frets and single slots."""
+    rng = np.random.default_rng(5)
+    frets = [x for x in items if x["truth"]["kind"] == "fret" and not x["truth"]["outlier"]][:4]
+    slots = [x for x in items if x["truth"]["kind"] == "nut_slots" and len(x["truth"]["high_slots"]) == 1][:4]
+    drawn = [statistics_by_draws(item, rng) for item in frets + slots]
+    return max(abs(d.mean()) for d in drawn), max(abs(d.std() - 1.0) for d in drawn)
+
+
 def leftovers(items):
     """Readings less all that is known of them, with the false notes taken off: the noise, by kind of reading."""
     noise = {"fretted": [], "open": [], "octave_harmonic": []}
@@ -145,6 +209,8 @@ def main():
     figures = [("errors, cents", errors_again(items), ROUNDED_CENTS), ("best moves, mm", moved, ROUNDED_MM),
                ("rms after the moves, cents", left, ROUNDED_CENTS),
                ("second mode, cents", second_mode_by_elements(), ELEMENTS_CENTS)]
+    off, wide = statistics(items)
+    figures += [("expected statistics, mean of draws", off, DRAWN_Z), ("expected statistics, spread of draws", wide, DRAWN_Z)]
     worst_sound = max(np.abs(s["errors_cents"]).max() for x in items if x["truth"]["kind"] == "sound" for s in x["truth"]["strings"])
     figures.append(("worst note of a sound instrument, cents", worst_sound, 1.0))
     for name, value, limit in figures:

@@ -12,7 +12,9 @@
 //! Theory, ch. 3). Single unknowns trade against each other; a move of the crest is worked out from all of them
 //! together, so that its standard deviation is that of what they agree on.
 
+mod candidates;
 mod causes;
+mod chance;
 mod fixities;
 mod foresight;
 mod moves;
@@ -20,6 +22,7 @@ mod outliers;
 mod posterior;
 mod priors;
 mod search;
+mod suspects;
 mod unknowns;
 
 pub use causes::{Cause, CauseShare};

@@ -29,8 +29,8 @@ pub(super) struct Found {
     /// Their slopes.
     pub slopes: Vec<DMatrix<f64>>,
     pub covariance: DMatrix<f64>,
-    /// Logarithm of the evidence, up to what is the same for all priors of the same strings.
-    pub evidence: f64,
+    /// Minus the logarithm of the posterior density, up to what is the same for all priors of the same strings.
+    pub cost: f64,
     pub settled: bool,
 }
 
@@ -73,12 +73,8 @@ impl Unknowns<'_> {
         }
         let slopes = self.all_slopes(&here.at)?;
         let (normal, _) = self.normal(&here, &slopes, 1.0, true);
-        let lost = PhysicsError::NotSettled { what: "covariance", iterations: 1, reached: f64::MAX };
-        let factor = cholesky(normal).ok_or(lost)?;
-        let half_log_determinant: f64 = factor.l_dirty().diagonal().iter().map(|value| value.ln()).sum();
-        let evidence = -here.cost - half_log_determinant;
-        let covariance = factor.inverse();
-        Ok(Found { at: here.at, errors: here.errors, slopes, covariance, evidence, settled })
+        let covariance = inverse(normal)?;
+        Ok(Found { at: here.at, errors: here.errors, slopes, covariance, cost: here.cost, settled })
     }
 
     /// Steps down until at rest; false where the steps do not suffice.

@@ -134,24 +134,35 @@ fn found_right_nut_mm(string: usize) -> f64 {
 
 #[test]
 fn an_error_that_falls_away_after_the_first_frets_is_the_nut_slot() {
-    // A string lifted by x more than it needs over the distance S to the fret is longer by ((h + x)² − h²)/(2S),
-    // and sharp by 866·EA/T of that over L (866 = 600/ln 2): the classic estimate by two right triangles.
-    let (height_mm, lift_mm) = (0.4, 0.7);
-    let (axial_n, mass, frequency_hz) = SET[1];
-    let tension_n = mass * (2.0 * 0.65 * frequency_hz).powi(2);
-    let sharp = |fret: usize| {
-        let reach_mm = 650.0 * fret_fraction((fret + 1) as f64);
-        let longer_mm =
-            ((height_mm + lift_mm) * (height_mm + lift_mm) - height_mm * height_mm) / (2.0 * reach_mm);
-        865.6 * axial_n / tension_n * longer_mm / 650.0
-    };
     // Told from a nut edge by the first frets alone, so it takes a tuner that reads to a third of a cent.
     let priors = Priors { reading_cents: 0.3, ..Priors::default() };
-    let strings = read(6, |string, fret| if string == 1 { sharp(fret) } else { 0.0 });
+    let strings =
+        read(6, |string, fret| if string == 1 { sharp_by_height_cents(string, fret, 0.7) } else { 0.0 });
     let found = diagnose(&strings, &priors).unwrap();
     assert_eq!(largest_cause(&found, 1), Cause::NutSlot, "{:?}", found.strings[1].causes);
     assert!(found.strings[1].is_slot_high);
     assert!(found.strings.iter().filter(|string| string.is_slot_high).count() == 1);
+}
+
+/// A string lifted by x over fret 1 is longer by ((h + x)² − h²)/(2S) when pressed at the distance S, and sharp by
+/// 866·EA/T of that over L (866 = 600/ln 2): the classic estimate by two right triangles.
+fn sharp_by_height_cents(string: usize, fret: usize, lift_mm: f64) -> f64 {
+    let height_mm = 0.4;
+    let (axial_n, mass, frequency_hz) = SET[string];
+    let tension_n = mass * (2.0 * 0.65 * frequency_hz).powi(2);
+    let reach_mm = 650.0 * fret_fraction((fret + 1) as f64);
+    let longer_mm =
+        ((height_mm + lift_mm) * (height_mm + lift_mm) - height_mm * height_mm) / (2.0 * reach_mm);
+    865.6 * axial_n / tension_n * longer_mm / 650.0
+}
+
+#[test]
+fn a_nut_too_high_as_a_whole_is_no_fret_out_of_place() {
+    // All strings sharp at fret 1, which a fret too near the bridge would be too; but the next frets are sharp as well.
+    let found = found(&read(6, |string, fret| sharp_by_height_cents(string, fret, 0.7)));
+    assert!(found.frets.is_empty(), "{:?}", found.frets);
+    let high = found.strings.iter().filter(|string| string.is_slot_high).count();
+    assert!(2 * high > found.strings.len(), "{high}");
 }
 
 #[test]

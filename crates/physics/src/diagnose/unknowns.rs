@@ -18,8 +18,9 @@ pub(super) const SLOT: usize = 4;
 pub(super) const ACTION: usize = 5;
 pub(super) const TUNING: usize = 6;
 pub(super) const OWN: usize = 7;
-/// The shared unknowns: press depth, relief, the three end fixities where they are looked for, then the frets.
-const SHARED: usize = 2;
+/// The shared unknowns: press depth, relief, how high the nut's slots are as a whole, the three end fixities where they
+/// are looked for, then the frets.
+const SHARED: usize = 3;
 
 /// Where the plan presses to no depth at all a factor says nothing; a finger that only just seats the string.
 const LEAST_PRESS_DEPTH_MM: f64 = 0.02;
@@ -39,6 +40,8 @@ pub(super) struct Unknowns<'a> {
     pub fret_sd_mm: Vec<f64>,
     /// Prior standard deviation of each string's height over fret 1, mm.
     pub slot_sd_mm: Vec<f64>,
+    /// Prior standard deviation of what the heights over fret 1 have in common, mm; 0 where each is its own.
+    pub slots_sd_mm: f64,
     /// Noise of each string's readings, cents.
     pub noise_cents: Vec<f64>,
     /// Indices of the frets that each string was pressed to.
@@ -65,6 +68,7 @@ impl<'a> Unknowns<'a> {
             frets,
             fret_sd_mm,
             slot_sd_mm: vec![priors.slot_mm; strings.len()],
+            slots_sd_mm: 0.0,
             noise_cents: vec![priors.reading_cents; strings.len()],
             pressed,
         }
@@ -92,6 +96,10 @@ impl<'a> Unknowns<'a> {
 
     pub fn relief_column(&self) -> usize {
         self.press_column() + 1
+    }
+
+    pub fn slots_column(&self) -> usize {
+        self.press_column() + 2
     }
 
     pub fn fret_column(&self, place: usize) -> usize {
@@ -166,7 +174,8 @@ impl<'a> Unknowns<'a> {
         setup.properties.axial_stiffness_n *= own(AXIAL).exp();
         setup.properties.bending_stiffness_n_mm2 *= own(BENDING).exp();
         if let NutHeight::GapAtFirst(gap_mm) = setup.nut_height {
-            setup.nut_height = NutHeight::GapAtFirst((gap_mm + own(SLOT)).max(0.0));
+            let all_mm = self.slots_sd_mm * at[self.slots_column()];
+            setup.nut_height = NutHeight::GapAtFirst((gap_mm + own(SLOT) + all_mm).max(0.0));
         }
         setup.gap_at_twelfth_mm = (setup.gap_at_twelfth_mm + own(ACTION)).max(0.0);
         setup.frequency_hz *= (own(TUNING) / 1200.0).exp2();
@@ -235,7 +244,8 @@ impl<'a> Unknowns<'a> {
         let columns: Vec<usize> = self.columns(string).collect();
         let mut slopes = DMatrix::zeros(here.len(), columns.len());
         let mut there = at.clone();
-        for (place, &column) in columns.iter().enumerate() {
+        let is_idle = |column| column == self.slots_column() && self.slots_sd_mm <= 0.0;
+        for (place, &column) in columns.iter().enumerate().filter(|&(_, &column)| !is_idle(column)) {
             // Away from a limit that the step would go through.
             let by = if at[column] + DIFFERENCE > self.highest(column) { -DIFFERENCE } else { DIFFERENCE };
             there[column] = at[column] + by;

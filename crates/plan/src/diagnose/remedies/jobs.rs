@@ -98,10 +98,8 @@ fn replace_strings(bench: &Bench) -> Result<Option<Job>, PhysicsError> {
 
 fn file_slots(bench: &Bench) -> Result<Option<Job>, PhysicsError> {
     let is_high = |string: &DiagnosedString| {
-        let slot = string.slot_higher_mm;
         let is_heard = share_cents(string, Cause::NutSlot) >= SLOT_HEARD_CENTS;
-        let is_sure = string.is_slot_high || counts(slot, HEIGHT_STEP_MM);
-        !string.is_suspect && slot.value > 0.0 && is_heard && is_sure
+        !string.is_suspect && string.is_slot_high && is_heard
     };
     let strings = strings_where(bench, is_high);
     if strings.is_empty() {

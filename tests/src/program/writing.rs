@@ -15,7 +15,7 @@ use super::{assert_quiet_end, example, plan_in, program};
 /// Readings of a steel six whose saddle is out, for `diagnose`.
 const READINGS: &str = "1,12,fretted,4.0\n1,7,fretted,2.5\n2,12,fretted,5.5\n6,12,fretted,7.0\n";
 
-/// Commands that print their result; PLAN and READINGS stand for files.
+/// Commands that print their result; PLAN, MEASURED (with contacts as built) and READINGS stand for files.
 const PRINTING: [&[&str]; 22] = [
     &["solve", "PLAN"],
     &["solve", "PLAN", "--frets"],
@@ -26,8 +26,8 @@ const PRINTING: [&[&str]; 22] = [
     &["compare", "PLAN", "--json"],
     &["diagnose", "PLAN", "--readings", "READINGS"],
     &["diagnose", "PLAN", "--readings", "READINGS", "--json"],
-    &["supports", "PLAN", "--readings", "READINGS"],
-    &["supports", "PLAN", "--readings", "READINGS", "--json"],
+    &["supports", "MEASURED", "--readings", "READINGS"],
+    &["supports", "MEASURED", "--readings", "READINGS", "--json"],
     &["bench", "PLAN"],
     &["bench", "PLAN", "--json"],
     &["workshop", "PLAN"],
@@ -48,13 +48,14 @@ const WRITING: [(&[&str], &str); 6] = [
     (&["sheet", "PLAN"], "dxf"),
     (&["schedule", "PLAN"], "csv"),
     (&["example", "fanned_eight"], "json"),
-    (&["supports", "PLAN", "--readings", "READINGS"], "json"),
+    (&["supports", "MEASURED", "--readings", "READINGS"], "json"),
 ];
 
-/// A folder with a plan and a table of readings.
+/// A folder with plans and a table of readings.
 struct Desk {
     folder: tempfile::TempDir,
     plan: PathBuf,
+    measured: PathBuf,
     readings: PathBuf,
 }
 
@@ -63,12 +64,17 @@ impl Desk {
         let folder = tempfile::tempdir().unwrap();
         let (plan, readings) = (plan_in(folder.path()), folder.path().join("readings.csv"));
         fs::write(&readings, READINGS).unwrap();
-        Self { folder, plan, readings }
+        let measured = folder.path().join("measured.json");
+        let mut built: serde_json::Value = serde_json::from_str(example("steel_six")).unwrap();
+        built["as_built"] = serde_json::json!({ "saddle_setback_mm": [1.0, 1.5, 0.5, 1.0, 1.5, 2.0], "nut_setback_mm": vec![0.0; 6] });
+        fs::write(&measured, built.to_string()).unwrap();
+        Self { folder, plan, measured, readings }
     }
 
     fn arguments<'a>(&'a self, words: &[&'a str]) -> Vec<&'a OsStr> {
         let file = |word: &&'a str| match *word {
             "PLAN" => self.plan.as_os_str(),
+            "MEASURED" => self.measured.as_os_str(),
             "READINGS" => self.readings.as_os_str(),
             word => OsStr::new(word),
         };
@@ -205,7 +211,7 @@ fn a_kill_of_any_command_that_writes_leaves_the_old_file_or_the_new_one() {
         }
         assert!(kept > 0, "{words:?}: the first kill comes before the end");
         assert_eq!(fs::read_to_string(&desk.plan).unwrap(), example("steel_six"), "{words:?}");
-        let known = [&target, &desk.plan, &desk.readings];
+        let known = [&target, &desk.plan, &desk.measured, &desk.readings];
         for path in names(desk.folder.path()) {
             let name = path.file_name().unwrap_or_default();
             assert!(

@@ -146,8 +146,10 @@ def drawn_readings(state, scatter, truth, slot, rng):
 def statistics(items):
     """Largest difference of a mean from what is stated, and of a spread from 1, over some frets and single slots."""
     rng = np.random.default_rng(5)
-    frets = [x for x in items if x["truth"]["kind"] == "fret" and not x["truth"]["outlier"]][:4]
-    slots = [x for x in items if x["truth"]["kind"] == "nut_slots" and len(x["truth"]["high_slots"]) == 1][:4]
+    # Draws about less relief would be cut off at a straight neck, and their mean with them.
+    free = [x for x in items if x["truth"]["relief_mm"] > 2.0 * detectability.RELIEF_MM]
+    frets = [x for x in free if x["truth"]["kind"] == "fret" and not x["truth"]["outlier"]][:4]
+    slots = [x for x in free if x["truth"]["kind"] == "nut_slots" and len(x["truth"]["high_slots"]) == 1][:4]
     drawn = [statistics_by_draws(item, rng) for item in frets + slots]
     return max(abs(d.mean()) for d in drawn), max(abs(d.std() - 1.0) for d in drawn)
 

@@ -206,7 +206,7 @@ pub struct FoundString {
     pub twelfth_mm: [f64; 2],
     /// How sharp the open string is tuned, cents.
     pub tuning_cents: [f64; 2],
-    /// Whether its nut slot is far too high.
+    /// Whether its nut slot is surely too high.
     pub slot_is_high: bool,
     /// One entry a fret that was read, in order.
     pub notes: Vec<FoundNote>,

@@ -135,7 +135,7 @@ pub struct DiagnosedString {
     pub causes: Vec<CauseShare>,
     /// Whether its readings are such as no setup explains, where the other strings' are.
     pub is_suspect: bool,
-    /// Whether the string lies far higher over fret 1 than expected.
+    /// Whether the string surely lies higher over fret 1 than expected.
     pub is_slot_high: bool,
     /// Which unknowns cannot be told apart.
     pub trades: Trades,

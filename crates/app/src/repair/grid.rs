@@ -7,7 +7,7 @@ use eframe::egui::{
 };
 
 use super::block::{self, Filling};
-use super::place::{Place, Sounded};
+use super::place::{Place, Shown, Sounded};
 use super::state::Repair;
 use super::steer::{self, Field};
 use crate::edit::command::Command;
@@ -36,7 +36,8 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, repair: &mut Repair, 
     let field = Field { columns: &columns, strings: plan.strings.len() };
     steer(ui, form, plan, field, repair);
     let room = (ui.available_width() - NAME) / columns.len() as f32 - GAP;
-    let grid = Grid { width: room.clamp(COLUMN[0], COLUMN[1]), columns: &columns, chosen };
+    let shown = Shown::of(&plan.readings);
+    let grid = Grid { width: room.clamp(COLUMN[0], COLUMN[1]), columns: &columns, chosen, shown };
     ScrollArea::horizontal().id_salt("readings").auto_shrink([false, true]).show(ui, |ui| {
         ui.spacing_mut().item_spacing = Vec2::splat(GAP);
         grid.heads(ui, form, repair.inquiry.suggested());
@@ -82,6 +83,7 @@ struct Grid<'a> {
     width: f32,
     columns: &'a [Sounded],
     chosen: usize,
+    shown: Shown,
 }
 
 impl Grid<'_> {
@@ -162,8 +164,7 @@ impl Grid<'_> {
         repair: &mut Repair,
         place: Place,
     ) {
-        let value = place.cents(readings);
-        let count = place.readings(readings).count();
+        let (value, count) = self.shown.at(place);
         let is_odd = value.is_some_and(is_odd);
         let several = format!("The mean of {count} readings; a new number takes the place of all of them");
         let spec = Spec {

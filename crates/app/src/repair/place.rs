@@ -1,5 +1,7 @@
 //! A cell of the grid, and what the plan's readings say there.
 
+use std::collections::BTreeMap;
+
 use crestline_plan::{Reading, ReadingKind};
 
 /// What is sounded in a column of the grid, in the order of the columns.
@@ -110,6 +112,30 @@ impl Place {
     }
 }
 
+/// What all cells show, looked up once for a whole grid.
+#[derive(Debug, Default)]
+pub struct Shown(BTreeMap<Place, (f64, usize)>);
+
+impl Shown {
+    /// Of a plan's readings.
+    #[must_use]
+    pub fn of(readings: &[Reading]) -> Self {
+        let mut shown = BTreeMap::new();
+        for reading in readings {
+            let (sum, count) = shown.entry(Place::of(reading)).or_insert((0.0, 0));
+            *sum += reading.cents;
+            *count += 1;
+        }
+        Self(shown)
+    }
+
+    /// The reading taken at a place, or the mean of several, cents; and how many there are.
+    #[must_use]
+    pub fn at(&self, place: Place) -> (Option<f64>, usize) {
+        self.0.get(&place).map_or((None, 0), |(sum, count)| (Some(sum / *count as f64), *count))
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -138,6 +164,8 @@ mod tests {
         let one = |cents| Reading { string: 1, fret: 3, kind: ReadingKind::Fretted, cents };
         let mut readings = vec![one(2.0), one(5.0)];
         assert_eq!(fretted(0, 3).cents(&readings), Some(3.5));
+        assert_eq!(Shown::of(&readings).at(fretted(0, 3)), (Some(3.5), 2));
+        assert_eq!(Shown::of(&readings).at(fretted(0, 4)), (None, 0));
         fretted(0, 3).put(&mut readings, Some(4.0));
         assert_eq!(readings, [one(4.0)]);
     }

@@ -269,6 +269,44 @@ mod tests {
     }
 
     #[test]
+    fn usual_strings_take_few_steps() {
+        // Newton's steps double the digits that are right: four from two right ones, or there is an error in the slope.
+        const STEPS: usize = 4;
+        for epsilon in [1e-4, 1e-3, 5e-3, 0.015] {
+            for (first, second) in [(0.5, 0.5), (0.3, 0.7), (1.0, 1.0), (0.0, 1.0)] {
+                let (ends, steps) = (Ends { first, second }, std::cell::Cell::new(0));
+                let alpha = |beta: f64| {
+                    steps.set(steps.get() + 1);
+                    beta.hypot(1.0 / epsilon)
+                };
+                let start = PI / (1.0 - (first + second) * epsilon);
+                assert!(far_ends_root(PI, start, ends, alpha, |_| epsilon, 1.0).is_some());
+                assert!(steps.get() <= STEPS, "{epsilon} {ends:?}: {} steps", steps.get());
+            }
+        }
+    }
+
+    #[test]
+    fn tensions_of_usual_strings_need_no_bracket() {
+        for (epsilon, is_quick) in [(1e-11, false), (1e-9, true), (2e-3, true), (0.017, true), (0.018, false)]
+        {
+            let string = SpeakingString {
+                length_mm: 600.0,
+                unit_mass_kg_per_m: 1e-3,
+                bending_stiffness_n_mm2: 80.0 * (600.0_f64 * epsilon).powi(2),
+                ends: Ends { first: 0.5, second: 0.4 },
+            };
+            let found = string.far_ends_tension(80.0);
+            assert_eq!(found.is_some(), is_quick, "{epsilon}");
+            if let Some((tension_n, ratio)) = found {
+                let flexible = (80.0 / tension_n).sqrt();
+                assert!((string.ratio(tension_n).unwrap() / flexible - 1.0).abs() < 1e-13, "{epsilon}");
+                assert!((ratio / flexible - 1.0).abs() < 1e-13, "{epsilon}");
+            }
+        }
+    }
+
+    #[test]
     fn a_bar_cannot_be_tuned_below_its_own_pitch() {
         let bar = SpeakingString {
             length_mm: 300.0,

@@ -128,3 +128,23 @@ fn a_bar_that_sounds_higher_when_slack_has_no_tension() {
     let (tension_n, _) = string(0.5 * limit).tension_for(100.0).unwrap();
     assert!((tension_n / flexible_n - 0.5).abs() < 1e-9, "{tension_n}: pinned, T = T_flexible·(1 − π²ε²)");
 }
+
+#[test]
+fn a_clamped_bar_is_refused_below_its_own_pitch_and_tuned_above_it() {
+    // A bar's own pitch is β²/(2πL²)·√(EI/μ), βL = 4.730040745 clamped at both ends and 3.926602312 pinned at one
+    // (from memory, sure; the table's ε = 150 has the same within 1e-5).
+    for (ends, beta) in [
+        (Ends { first: 1.0, second: 1.0 }, 4.730_040_745_f64),
+        (Ends { first: 0.0, second: 1.0 }, 3.926_602_312),
+    ] {
+        let bar =
+            SpeakingString { length_mm: 300.0, unit_mass_kg_per_m: 1e-3, bending_stiffness_n_mm2: 1e6, ends };
+        let own_hz = beta.powi(2) / (2.0 * std::f64::consts::PI * 0.3_f64.powi(2)) * (1.0_f64 / 1e-3).sqrt();
+        let low_hz = 0.999 * own_hz;
+        assert_eq!(bar.tension_for(low_hz), Err(PhysicsError::TooStiff { frequency_hz: low_hz }), "{ends:?}");
+        let (tension_n, ratio) = bar.tension_for(1.01 * own_hz).unwrap();
+        let back_hz = bar.frequency_hz(tension_n).unwrap();
+        assert!((back_hz / (1.01 * own_hz) - 1.0).abs() < RELATIVE, "{ends:?}: {back_hz} Hz");
+        assert!((bar.ratio(tension_n).unwrap() / ratio - 1.0).abs() < RELATIVE, "{ends:?}: {ratio}");
+    }
+}

@@ -12,7 +12,7 @@ use crestline_plan::{
 };
 use crestline_window::shell::options::Options;
 use crestline_window::shell::window::Window;
-use crestline_window::view::{Group, Page};
+use crestline_window::view::Page;
 use criterion::{Criterion, criterion_group, criterion_main};
 use eframe::egui::{Context, FullOutput, Pos2, RawInput, Rect, Vec2};
 
@@ -57,14 +57,16 @@ struct Opened {
 }
 
 impl Opened {
-    fn on(plan: &Plan, page: Page) -> Self {
+    /// The window as it opens, or with all groups of the inputs unfolded.
+    fn on(plan: &Plan, page: Page, unfolded: bool) -> Self {
         let ctx = Context::default();
         let mut window = Window::new(&ctx, plan.clone(), None, &Options::read(|_| None));
         window.view.page = page;
-        window.view.folded.clear();
-        window.view.folded.insert(Group::About);
-        window.view.trust.shows_tolerances = true;
-        window.view.repair.shows_priors = true;
+        if unfolded {
+            window.view.folded.clear();
+            window.view.trust.shows_tolerances = true;
+            window.view.repair.shows_priors = true;
+        }
         let mut opened = Self { ctx, window, time_s: 0.0 };
         opened.come_to_rest(page);
         opened
@@ -105,9 +107,10 @@ impl Opened {
 
 fn frames(criterion: &mut Criterion) {
     let plan = largest();
-    for page in Page::ALL {
-        let mut opened = Opened::on(&plan, page);
-        let mut group = criterion.benchmark_group(format!("frame, {}", page.name()));
+    for (page, unfolded) in Page::ALL.into_iter().flat_map(|page| [(page, false), (page, true)]) {
+        let mut opened = Opened::on(&plan, page, unfolded);
+        let state = if unfolded { "all unfolded" } else { "as it opens" };
+        let mut group = criterion.benchmark_group(format!("frame, {}, {state}", page.name()));
         group.bench_function("window and layout", |bench| bench.iter(|| opened.frame()));
         let shapes = opened.frame().shapes;
         group.bench_function("tessellation", |bench| {

@@ -1,5 +1,7 @@
 //! The grid of readings: strings by frets, made for fast typing.
 
+use std::cell::Cell;
+
 use crestline_plan::limits::USUAL_READING_CENTS;
 use crestline_plan::{Plan, Reading};
 use eframe::egui::{
@@ -8,6 +10,7 @@ use eframe::egui::{
 
 use super::block::{self, Filling};
 use super::place::{Place, Shown, Sounded};
+use super::resting;
 use super::state::Repair;
 use super::steer::{self, Field};
 use crate::edit::command::Command;
@@ -37,7 +40,13 @@ pub fn show(ui: &mut Ui, form: &mut Form, plan: &mut Plan, repair: &mut Repair, 
     steer(ui, form, plan, field, repair);
     let room = (ui.available_width() - NAME) / columns.len() as f32 - GAP;
     let shown = Shown::of(&plan.readings);
-    let grid = Grid { width: room.clamp(COLUMN[0], COLUMN[1]), columns: &columns, chosen, shown };
+    let grid = Grid {
+        width: room.clamp(COLUMN[0], COLUMN[1]),
+        columns: &columns,
+        chosen,
+        shown,
+        height: Cell::new(0.0),
+    };
     ScrollArea::horizontal().id_salt("readings").auto_shrink([false, true]).show(ui, |ui| {
         ui.spacing_mut().item_spacing = Vec2::splat(GAP);
         grid.heads(ui, form, repair.inquiry.suggested());
@@ -84,6 +93,8 @@ struct Grid<'a> {
     columns: &'a [Sounded],
     chosen: usize,
     shown: Shown,
+    /// Height of a cell, once one has been shown.
+    height: Cell<f32>,
 }
 
 impl Grid<'_> {
@@ -166,7 +177,10 @@ impl Grid<'_> {
     ) {
         let (value, count) = self.shown.at(place);
         let is_odd = value.is_some_and(is_odd);
-        let several = format!("The mean of {count} readings; a new number takes the place of all of them");
+        let several = match count > 1 {
+            true => format!("The mean of {count} readings; a new number takes the place of all of them"),
+            false => String::new(),
+        };
         let spec = Spec {
             help: match (count > 1, is_odd) {
                 (true, _) => &several,
@@ -179,9 +193,16 @@ impl Grid<'_> {
         let id = spec.id();
         let shown = shown(value, count);
         let text = form.drafts.get(&spec.path).map_or(shown.as_str(), |draft| draft.text.as_str()).to_owned();
-        steer::note_length(ui.ctx(), id, &text);
-        let response =
-            number::typed(ui, form, &spec, &shown, block::cents, |cents| place.put(readings, cents));
+        let response = match resting::place(ui, form, &spec, self.height.get()) {
+            Some(rect) => resting::show(ui, form, &spec, rect, &text),
+            None => number::typed(ui, form, &spec, &shown, block::cents, |cents| place.put(readings, cents)),
+        };
+        // The keys ask how long the text is that they walk in.
+        if response.has_focus() {
+            steer::note_length(ui.ctx(), id, &text);
+        }
+        // The first cell of all is always the field itself, and the others are as high.
+        self.height.set(response.rect.height());
         if response.has_focus() {
             form.about =
                 Some(About { path: "readings".into(), name: spec.name.clone(), what: spec.help.into() });
@@ -194,12 +215,10 @@ impl Grid<'_> {
             steer::choose_all(ui.ctx(), id, &text);
             repair.entered = None;
         }
-        let sign = if is_odd {
-            "?"
-        } else if count > 1 {
-            "×"
-        } else {
-            ""
+        let sign = match (is_odd, count > 1) {
+            (true, _) => "?",
+            (_, true) => "×",
+            _ => return,
         };
         let at = response.rect.left_center() + Vec2::new(5.0, 0.0);
         let font = FontId::proportional(size::TEXT);

@@ -14,5 +14,6 @@ pub mod page;
 pub mod place;
 pub mod priors;
 pub mod remedies;
+pub mod resting;
 pub mod state;
 pub mod steer;

@@ -313,3 +313,72 @@ fn check(setup: &StringSetup) -> Result<(), PhysicsError> {
     within("bending stiffness in N mm²", properties.bending_stiffness_n_mm2, 0.0, 1e12)?;
     Ok(())
 }
+
+#[cfg(test)]
+mod tests {
+    #![allow(clippy::unwrap_used)]
+    use super::*;
+    use crate::neck::fret_fraction;
+
+    /// A light string of 650 mm, level crowns, with these gaps over frets 1 and 12.
+    fn string(first_mm: f64, twelfth_mm: f64) -> FrettedString {
+        FrettedString::new(StringSetup {
+            properties: StringProperties {
+                unit_mass_kg_per_m: 4e-4,
+                axial_stiffness_n: 14_000.0,
+                bending_stiffness_n_mm2: 70.0,
+            },
+            frequency_hz: 330.0,
+            scale_mm: 650.0,
+            fret_mm: (1..=20).map(|fret| 650.0 * fret_fraction(f64::from(fret))).collect(),
+            relief_mm: 0.0,
+            nut_height: NutHeight::GapAtFirst(first_mm),
+            gap_at_twelfth_mm: twelfth_mm,
+            pressing: Pressing { finger_fraction: 0.5, depth_mm: 0.1 },
+            fixities: Fixities { nut: 0.5, fret: 0.5, saddle: 0.5 },
+            head: Tail::default(),
+            tail: Tail::default(),
+            target_octaves: (1..=20).map(|fret| f64::from(fret) / 12.0).collect(),
+        })
+        .unwrap()
+    }
+
+    #[test]
+    fn the_first_fret_that_the_open_string_lies_on_is_named() {
+        assert_eq!(string(0.4, 2.0).lies_on_fret(), None);
+        assert_eq!(string(0.0, 2.0).lies_on_fret(), Some(1));
+        // A line that falls from 0.5 mm over fret 1 to nothing over fret 12 lies below the crowns after it alone.
+        assert_eq!(string(0.5, 0.0).lies_on_fret(), Some(12));
+        // One that falls to nothing a little earlier would have to fall below them: 0.5 mm at fret 1, 0.01 at fret 12.
+        let reached = |fret: i32| 650.0 * fret_fraction(f64::from(fret));
+        let end_mm = reached(12) + 0.01 * (reached(12) - reached(1)) / 0.49;
+        let expected = (13..=20).find(|&fret| reached(fret) >= end_mm).unwrap();
+        assert_eq!(string(0.5, 0.01).lies_on_fret(), usize::try_from(expected).ok());
+    }
+
+    #[test]
+    fn contacts_stay_clear_of_the_finger_and_of_the_last_fret() {
+        let string = string(0.4, 2.0);
+        let open = |nut_setback_mm, saddle_setback_mm| {
+            string.open(Contacts { saddle_setback_mm, nut_setback_mm }).map(|open| open.length_mm)
+        };
+        let finger_mm = 0.5 * string.crowns()[0].s_mm;
+        assert!(open(finger_mm - 1e-3, 0.0).is_ok() && open(finger_mm + 1e-7, 0.0).is_err());
+        assert!(open(-649.0, 0.0).is_ok() && open(-651.0, 0.0).is_err());
+        let last_mm = string.crowns()[19].s_mm - 650.0;
+        assert!(open(0.0, last_mm + 1e-3).is_ok() && open(0.0, last_mm).is_err());
+        assert!(open(0.0, 649.0).is_ok() && open(0.0, 651.0).is_err());
+        // On a level line the speaking length is the distance of the contacts along it.
+        let slope = 1.6 / (string.crowns()[11].s_mm - string.crowns()[0].s_mm);
+        let along_mm = (650.0 + 2.0 - 0.5) * (1.0 + slope * slope).sqrt();
+        assert!((open(0.5, 2.0).unwrap() - along_mm).abs() < 1e-9);
+    }
+
+    #[test]
+    fn frets_that_are_not_there_are_refused() {
+        let string = string(0.4, 2.0);
+        let open = string.open(Contacts::default()).unwrap();
+        assert!(string.note(&open, 19).is_ok() && string.note(&open, 20).is_err());
+        assert_eq!(string.notes(Contacts::default()).unwrap().len(), 20);
+    }
+}

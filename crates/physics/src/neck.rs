@@ -190,7 +190,7 @@ fn fanned(shape: &NeckShape, scales_mm: [f64; 2], square_fret: f64) -> Result<Ne
     let mut run_x = [0.0; 2];
     for (run, (scale_mm, (nut_y, saddle_y))) in run_x.iter_mut().zip(scales_mm.into_iter().zip(outer_y)) {
         let across = saddle_y - nut_y;
-        within("scale in mm", scale_mm, across.abs() + f64::MIN_POSITIVE, 1e5)?;
+        within("scale in mm", scale_mm, across.abs().next_up(), 1e5)?;
         *run = (scale_mm * scale_mm - across * across).sqrt();
     }
     // The square fret gives x_treble − x_bass at the nut; x = 0 on the centre line gives the rest.
@@ -263,6 +263,42 @@ mod tests {
         assert!((neck.strings[0].line.scale_mm() - 648.0).abs() < 1e-10);
         assert!((neck.strings[7].line.scale_mm() - 711.0).abs() < 1e-10);
         assert!((neck.strings[0].fret_mm[11] - 324.0).abs() < 1e-10);
+    }
+
+    #[test]
+    fn a_fan_needs_two_strings_that_reach() {
+        let shape = |scales: [f64; 2], nut_y_mm: Vec<f64>, saddle_y_mm: Vec<f64>| NeckShape {
+            scale: NeckScale::Fanned { bass_mm: scales[1], treble_mm: scales[0], square_fret: 7.0 },
+            frets: 24,
+            nut_y_mm,
+            saddle_y_mm,
+        };
+        let refused = |shape: &NeckShape| match lay_out(shape) {
+            Err(PhysicsError::OutOfRange { name, value, .. }) => (name, value),
+            other => ("laid out", other.map_or(f64::NAN, |neck| neck.strings.len() as f64)),
+        };
+        let one = shape([648.0, 711.0], vec![0.0], vec![0.0]);
+        assert_eq!(refused(&one), ("number of strings on a fanned neck", 1.0));
+        let two = |scales| shape(scales, vec![20.0, -20.0], vec![30.0, -30.0]);
+        assert_eq!(refused(&two([648.0, 711.0])), ("laid out", 2.0));
+        assert_eq!(refused(&two([9.0, 711.0])), ("scale in mm", 9.0));
+        assert_eq!(refused(&two([648.0, 10.0])), ("scale in mm", 10.0));
+    }
+
+    #[test]
+    fn fret_lines_run_from_the_first_string_to_the_last() {
+        let shape = NeckShape {
+            scale: NeckScale::Single { scale_mm: 640.0, fret_positions_mm: None },
+            frets: 14,
+            nut_y_mm: vec![18.0, 0.0, -18.0],
+            saddle_y_mm: vec![26.0, 0.0, -26.0],
+        };
+        let neck = lay_out(&shape).unwrap();
+        assert_eq!(neck.frets.len(), 14);
+        // Fret 12 halves the strings.
+        let [treble, bass] = neck.frets[11];
+        assert!((treble.x_mm - 320.0).abs() < 1e-10 && (treble.y_mm - 22.0).abs() < 1e-10, "{treble:?}");
+        assert!((bass.x_mm - 320.0).abs() < 1e-10 && (bass.y_mm + 22.0).abs() < 1e-10, "{bass:?}");
     }
 
     #[test]

@@ -184,9 +184,8 @@ impl FrettedString {
         let nut = on_line(contacts.nut_setback_mm);
         let crest = on_line(setup.scale_mm + contacts.saddle_setback_mm);
         let length_mm = nut.distance_mm(crest);
-        let (tension_n, ratio) = self
-            .speaking(length_mm, setup.properties.unit_mass_kg_per_m, setup.fixities.nut)
-            .tension_for(setup.frequency_hz)?;
+        let (tension_n, ratio) =
+            self.speaking(length_mm, setup.fixities.nut).tension_for(setup.frequency_hz)?;
         let strain = tension_n / setup.properties.axial_stiffness_n;
         Ok(OpenString { nut, crest, length_mm, tension_n, strain, ratio })
     }
@@ -210,8 +209,8 @@ impl FrettedString {
         let tension_n = setup.properties.axial_stiffness_n * strain;
         let thinner = (1.0 + open.strain) / (1.0 + strain);
         let length_mm = right.last_support.distance_mm(open.crest);
-        let unit_mass = setup.properties.unit_mass_kg_per_m * thinner;
-        let ratio = self.speaking(length_mm, unit_mass, setup.fixities.fret).ratio(tension_n)?;
+        // The ratio knows no mass; that of the stretched string is in `mass_cents`.
+        let ratio = self.speaking(length_mm, setup.fixities.fret).ratio(tension_n)?;
         let rise = |from: SidePoint| (from.z_mm - finger.z_mm) / finger.distance_mm(from);
         let length_cents = 1200.0 * ((open.length_mm / length_mm).log2() - setup.target_octaves[index]);
         let tension_cents = 600.0 * (tension_n / open.tension_n).log2();
@@ -256,10 +255,11 @@ impl FrettedString {
         }
     }
 
-    fn speaking(&self, length_mm: f64, unit_mass_kg_per_m: f64, near_fixity: f64) -> SpeakingString {
+    /// A speaking length of this string as it is strung, whose nearer end is held so.
+    fn speaking(&self, length_mm: f64, near_fixity: f64) -> SpeakingString {
         SpeakingString {
             length_mm,
-            unit_mass_kg_per_m,
+            unit_mass_kg_per_m: self.setup.properties.unit_mass_kg_per_m,
             bending_stiffness_n_mm2: self.setup.properties.bending_stiffness_n_mm2,
             ends: Ends { first: near_fixity, second: self.setup.fixities.saddle },
         }

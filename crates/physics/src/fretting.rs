@@ -322,7 +322,11 @@ mod tests {
 
     /// A light string of 650 mm, level crowns, with these gaps over frets 1 and 12.
     fn string(first_mm: f64, twelfth_mm: f64) -> FrettedString {
-        FrettedString::new(StringSetup {
+        FrettedString::new(setup(first_mm, twelfth_mm)).unwrap()
+    }
+
+    fn setup(first_mm: f64, twelfth_mm: f64) -> StringSetup {
+        StringSetup {
             properties: StringProperties {
                 unit_mass_kg_per_m: 4e-4,
                 axial_stiffness_n: 14_000.0,
@@ -339,8 +343,40 @@ mod tests {
             head: Tail::default(),
             tail: Tail::default(),
             target_octaves: (1..=20).map(|fret| f64::from(fret) / 12.0).collect(),
-        })
-        .unwrap()
+        }
+    }
+
+    #[test]
+    fn what_is_out_of_range_is_refused_by_name() {
+        let spoils: [(&str, fn(&mut StringSetup)); 19] = [
+            ("frequency in Hz", |setup| setup.frequency_hz = 0.0),
+            ("scale in mm", |setup| setup.scale_mm = f64::NAN),
+            ("number of frets", |setup| setup.fret_mm.truncate(11)),
+            ("number of wanted intervals", |setup| setup.target_octaves.truncate(19)),
+            ("fret position in mm", |setup| setup.fret_mm[0] = 0.0),
+            ("fret position in mm", |setup| setup.fret_mm[5] = setup.fret_mm[4]),
+            ("fret position in mm", |setup| setup.fret_mm[19] = 650.1),
+            ("relief in mm", |setup| setup.relief_mm = -0.1),
+            ("gap over fret 1 in mm", |setup| setup.nut_height = NutHeight::GapAtFirst(-0.1)),
+            ("gap over fret 12 in mm", |setup| setup.gap_at_twelfth_mm = f64::INFINITY),
+            ("finger fraction", |setup| setup.pressing.finger_fraction = 0.0),
+            ("press depth in mm", |setup| setup.pressing.depth_mm = -0.1),
+            ("fixity", |setup| setup.fixities.nut = 1.1),
+            ("fixity", |setup| setup.fixities.saddle = -0.1),
+            ("slip", |setup| setup.tail.slip = 1.1),
+            ("afterlength in mm", |setup| setup.head.length_mm = -1.0),
+            ("wanted interval in octaves", |setup| setup.target_octaves[3] = -0.1),
+            ("unit mass in kg/m", |setup| setup.properties.unit_mass_kg_per_m = 0.0),
+            ("axial stiffness in N", |setup| setup.properties.axial_stiffness_n = 0.0),
+        ];
+        for (wanted, spoil) in spoils {
+            let mut setup = setup(0.4, 2.0);
+            spoil(&mut setup);
+            match FrettedString::new(setup) {
+                Err(PhysicsError::OutOfRange { name, .. }) => assert_eq!(name, wanted),
+                other => assert!(other.is_err(), "{wanted}: taken"),
+            }
+        }
     }
 
     #[test]

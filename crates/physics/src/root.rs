@@ -72,4 +72,37 @@ mod tests {
         let steep = bracketed("x", [0.0, 1.0], 0.5, true, 1e-15, |x| Ok((1e3 * (x - 0.3)).tanh())).unwrap();
         assert!((steep - 0.3).abs() < 1e-14);
     }
+
+    #[test]
+    fn smooth_functions_take_few_steps() {
+        // Bisection alone would take 49 evaluations from a bracket of 10 to 2e-14; the secant rule's order of 1.6 needs
+        // some ten from a start a few units off.
+        const EVALUATIONS: usize = 14;
+        let functions: [(fn(f64) -> f64, bool, f64); 4] = [
+            (|x| x.exp() - 2.0, true, 2.0_f64.ln()),
+            (|x| 2.0 - x.exp(), false, 2.0_f64.ln()),
+            (|x| (x - 1.5).atan(), true, 1.5),
+            (|x| x * x * x + x - 10.0, true, 2.0),
+        ];
+        for (number, (function, rising, root)) in functions.into_iter().enumerate() {
+            for start in [0.3, 1.2, 2.9] {
+                let mut evaluations = 0;
+                let found = bracketed("x", [-5.0, 5.0], start, rising, 2e-14, |x| {
+                    evaluations += 1;
+                    Ok(function(x))
+                });
+                let found = found.unwrap();
+                assert!((found - root).abs() < 4e-14, "{number} from {start}: {found}");
+                assert!(evaluations <= EVALUATIONS, "{number} from {start}: {evaluations} evaluations");
+            }
+        }
+    }
+
+    #[test]
+    fn a_root_at_the_start_or_at_an_end_is_found() {
+        let at =
+            |low: f64, high: f64, start: f64| bracketed("x", [low, high], start, true, 1e-15, Ok).unwrap();
+        assert_eq!(at(-1.0, 1.0, 0.0), 0.0);
+        assert!(at(0.0, 1.0, 0.7).abs() < 1e-14 && at(-1.0, 0.0, -0.7).abs() < 1e-14);
+    }
 }

@@ -348,7 +348,8 @@ mod tests {
 
     #[test]
     fn what_is_out_of_range_is_refused_by_name() {
-        let spoils: [(&str, fn(&mut StringSetup)); 19] = [
+        type Spoil = fn(&mut StringSetup);
+        let spoils: [(&str, Spoil); 19] = [
             ("frequency in Hz", |setup| setup.frequency_hz = 0.0),
             ("scale in mm", |setup| setup.scale_mm = f64::NAN),
             ("number of frets", |setup| setup.fret_mm.truncate(11)),

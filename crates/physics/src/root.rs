@@ -78,7 +78,8 @@ mod tests {
         // Bisection alone would take 49 evaluations from a bracket of 10 to 2e-14; the secant rule's order of 1.6 needs
         // some ten from a start a few units off.
         const EVALUATIONS: usize = 14;
-        let functions: [(fn(f64) -> f64, bool, f64); 4] = [
+        type Function = fn(f64) -> f64;
+        let functions: [(Function, bool, f64); 4] = [
             (|x| x.exp() - 2.0, true, 2.0_f64.ln()),
             (|x| 2.0 - x.exp(), false, 2.0_f64.ln()),
             (|x| (x - 1.5).atan(), true, 1.5),

@@ -8,7 +8,7 @@ use std::time::Duration;
 use common::{Opened, field, open, order, plan, says, steel_six};
 use crestline_plan::{Plan, Reading, ReadingKind, example, read};
 use crestline_window::edit::command::Command;
-use crestline_window::repair::place::{Place, Sounded};
+use crestline_window::repair::place::{Place, Shown, Sounded};
 use crestline_window::view::Page;
 use eframe::egui::accesskit::Role;
 use eframe::egui::{Event, Key, Modifiers};
@@ -65,7 +65,7 @@ fn focused(opened: &Opened) -> String {
 }
 
 fn cents(opened: &Opened, string: usize, sounded: Sounded) -> Option<f64> {
-    Place { string, sounded }.cents(&plan(opened).readings)
+    Shown::of(&plan(opened).readings).at(Place { string, sounded }).0
 }
 
 #[test]

@@ -197,13 +197,11 @@ impl Grid<'_> {
             Some(rect) => resting::show(ui, form, &spec, rect, &text),
             None => number::typed(ui, form, &spec, &shown, block::cents, |cents| place.put(readings, cents)),
         };
-        // The keys ask how long the text is that they walk in.
-        if response.has_focus() {
-            steer::note_length(ui.ctx(), id, &text);
-        }
         // The first cell of all is always the field itself, and the others are as high.
         self.height.set(response.rect.height());
         if response.has_focus() {
+            // The keys ask how long the text is that they walk in.
+            steer::note_length(ui.ctx(), id, &text);
             form.about =
                 Some(About { path: "readings".into(), name: spec.name.clone(), what: spec.help.into() });
         }

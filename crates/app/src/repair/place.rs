@@ -83,22 +83,6 @@ impl Place {
         format!("readings.string_{}.{}", self.string + 1, self.sounded.words().replace(' ', "_"))
     }
 
-    /// All readings taken here; a note may have been read several times.
-    pub fn readings(self, readings: &[Reading]) -> impl Iterator<Item = &Reading> {
-        readings.iter().filter(move |reading| Self::of(reading) == self)
-    }
-
-    /// The reading taken here, or the mean of several, cents.
-    #[must_use]
-    pub fn cents(self, readings: &[Reading]) -> Option<f64> {
-        let (mut sum, mut count) = (0.0, 0_u32);
-        for reading in self.readings(readings) {
-            sum += reading.cents;
-            count += 1;
-        }
-        (count > 0).then(|| sum / f64::from(count))
-    }
-
     /// Puts one reading here in place of those that are, or takes them away.
     pub fn put(self, readings: &mut Vec<Reading>, cents: Option<f64>) {
         let at = readings.iter().position(|reading| Self::of(reading) == self);
@@ -154,16 +138,15 @@ mod tests {
         let places: Vec<_> = readings.iter().map(Place::of).collect();
         assert_eq!(places, [fretted(0, 12), open, fretted(1, 5)]);
         fretted(0, 12).put(&mut readings, Some(7.0));
-        assert_eq!(fretted(0, 12).cents(&readings), Some(7.0));
+        assert_eq!(Shown::of(&readings).at(fretted(0, 12)).0, Some(7.0));
         fretted(0, 12).put(&mut readings, None);
-        assert_eq!((readings.len(), fretted(0, 12).cents(&readings)), (2, None));
+        assert_eq!((readings.len(), Shown::of(&readings).at(fretted(0, 12)).0), (2, None));
     }
 
     #[test]
     fn a_note_read_twice_shows_the_mean_and_is_replaced_as_one() {
         let one = |cents| Reading { string: 1, fret: 3, kind: ReadingKind::Fretted, cents };
         let mut readings = vec![one(2.0), one(5.0)];
-        assert_eq!(fretted(0, 3).cents(&readings), Some(3.5));
         assert_eq!(Shown::of(&readings).at(fretted(0, 3)), (Some(3.5), 2));
         assert_eq!(Shown::of(&readings).at(fretted(0, 4)), (None, 0));
         fretted(0, 3).put(&mut readings, Some(4.0));
